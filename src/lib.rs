@@ -1,0 +1,3 @@
+//! Brakewright computes disc brakes.
+
+pub mod calc;
