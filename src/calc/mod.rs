@@ -2,8 +2,11 @@
 //!
 //! It knows nothing of HTTP, JSON, clocks, files or logging, so it can be read, tested and trusted on its own.
 
+pub mod actuation;
 pub mod fault;
 pub mod finding;
 pub mod friction;
+pub mod machine;
 pub mod method;
+pub mod motion;
 pub mod quantity;
