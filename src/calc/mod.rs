@@ -6,4 +6,6 @@ pub mod fault;
 pub mod finding;
 pub mod friction;
 pub mod method;
+pub mod pad;
+pub mod pressure;
 pub mod quantity;
