@@ -2,5 +2,6 @@
 #![expect(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test fails by panicking")]
 #![allow(missing_docs, reason = "tests are named as sentences")]
 
+mod calc;
 mod published;
 mod support;

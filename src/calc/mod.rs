@@ -9,4 +9,6 @@ pub mod friction;
 pub mod machine;
 pub mod method;
 pub mod motion;
+pub mod pad;
+pub mod pressure;
 pub mod quantity;

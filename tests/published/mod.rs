@@ -1,1 +1,2 @@
 mod motion;
+mod pads;

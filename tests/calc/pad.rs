@@ -1,0 +1,1 @@
+//! Pads: what holds for every one of them.
