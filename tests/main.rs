@@ -2,6 +2,8 @@
 #![expect(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test fails by panicking")]
 #![allow(missing_docs, reason = "tests are named as sentences")]
 
+#![expect(clippy::unwrap_used, reason = "a test fails by panicking")]
+
 mod calc;
 mod published;
 mod support;

@@ -77,7 +77,7 @@ fn the_sector_of_ugural_example_13_6_gives_the_books_force_and_torque() {
 }
 
 /// Bhandari, Design of Machine Elements, example 12.12 (seen): 1500 N m from two pads, 100 to 150 mm,
-/// friction 0.35, mean pressure 2 MPa. Book, uniform pressure: 77.54316 deg, arm 126.6667 mm, 16917.29 N. The
+/// friction 0.35, mean pressure 2 N/mm². Book, uniform pressure: 77.54316 deg, arm 126.6667 mm, 16917.29 N. The
 /// wear value is recomputed (verified).
 #[test]
 fn the_sector_of_bhandari_example_12_12_needs_the_books_angle() {
@@ -116,7 +116,7 @@ fn the_button_of_shigley_example_16_4_has_the_exact_arm_not_the_tables() {
     close(torque.si() / POUND_FORCE_INCH, 127.0, 0.01);
 }
 
-/// Bhandari, example 12.13 (seen): 1500 N m from 3 calipers of 2 buttons, friction 0.35, mean pressure 2 MPa,
+/// Bhandari, example 12.13 (seen): 1500 N m from 3 calipers of 2 buttons, friction 0.35, mean pressure 2 N/mm²,
 /// R/e = 0.2. The book's 28.6256 mm comes from the table of 1972; the exact 28.37748 mm is verified.
 #[test]
 fn the_button_of_bhandari_example_12_13_has_the_exact_radius() {
@@ -146,7 +146,7 @@ fn the_arms_of_a_sector_differ_as_first_principles_say() {
 }
 
 /// Orthwein, Clutches and Brakes, ch. 3 (seen), and Shigley 16-5 (memory): at a given peak pressure and outer
-/// radius the torque under wear is greatest at r_i/r_o = 1/√3.
+/// radius the torque under wear is greatest at `r_i/r_o` = 1/√3.
 #[test]
 fn the_torque_under_wear_is_greatest_at_one_over_root_three() {
     let torque = |ratio: f64| {

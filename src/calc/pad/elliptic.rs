@@ -1,9 +1,10 @@
 //! Complete elliptic integrals by the arithmetic-geometric mean.
 //!
-//! Written here because no library serves: the crates that hold them need a Fortran or C++ compiler,
-//! an alpha release or a far newer toolchain, or give K and E only, from which D loses its digits for
-//! a small modulus. Source: Abramowitz & Stegun, Handbook of Mathematical Functions, section 17.6
-//! (from memory), checked in the tests against printed values and against quadrature.
+//! Written here rather than taken from a crate (`ellip` has K and D): those take m alone and lose the
+//! digits of 1 - m where a pad nearly reaches the axis, while these few lines take the complement, need
+//! no more than square roots and so answer the same bytes on every machine. Source: Abramowitz & Stegun,
+//! Handbook of Mathematical Functions, section 17.6 (from memory), checked in the tests against printed
+//! values and against quadrature by an outside library.
 
 use std::f64::consts::FRAC_PI_2;
 
@@ -34,7 +35,8 @@ pub fn complete(modulus: f64, complement: f64) -> CompleteIntegrals {
     let (mut arithmetic, mut geometric) = (1.0, complement);
     let (mut scaled_square, mut weight, mut sum) = (1.0, 1.0, 0.5);
     for _ in 0..STEPS {
-        (arithmetic, geometric) = ((arithmetic + geometric) / 2.0, (arithmetic * geometric).sqrt());
+        (arithmetic, geometric) =
+            (f64::midpoint(arithmetic, geometric), (arithmetic * geometric).sqrt());
         scaled_square =
             parameter * scaled_square * scaled_square / (16.0 * arithmetic * arithmetic);
         sum += weight * scaled_square;

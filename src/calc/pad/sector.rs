@@ -74,9 +74,12 @@ impl Pad {
             let holds = outer > inner;
             faults.require(holds, "outer_radius", FaultCode::NotAboveInnerRadius, detail);
         }
-        faults.positive("angle", angle);
-        let holds = !(angle.si() > TAU * (1.0 + FULL_TURN_ALLOWANCE));
-        faults.require(holds, "angle", FaultCode::OutOfRange, "must not be above 360 deg");
+        let below_full_turn = angle.si() <= TAU * (1.0 + FULL_TURN_ALLOWANCE);
+        if below_full_turn || angle.si().is_nan() {
+            faults.positive("angle", angle);
+        } else {
+            faults.add("angle", FaultCode::OutOfRange, "must not be above 360 deg");
+        }
         if !faults.is_empty() {
             return Err(faults);
         }
