@@ -2,8 +2,10 @@
 //!
 //! It knows nothing of HTTP, JSON, clocks, files or logging, so it can be read, tested and trusted on its own.
 
+pub mod disc;
 pub mod fault;
 pub mod finding;
 pub mod friction;
+pub mod heat;
 pub mod method;
 pub mod quantity;

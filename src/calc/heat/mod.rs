@@ -1,0 +1,4 @@
+//! Heat of one stop: what a disc takes up, how warm its body and its surface become.
+
+pub mod property;
+pub mod substance;

@@ -1,0 +1,2 @@
+mod disc;
+mod heat;
