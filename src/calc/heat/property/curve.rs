@@ -37,7 +37,7 @@ impl Curve {
     pub fn table(points: &[Point]) -> Result<Self, Faults> {
         let (&(start, below), &(_, above)) = ends(points)?;
         let mut faults = Faults::new();
-        points.iter().for_each(|&(_, value)| positive(&mut faults, value));
+        all_positive(&mut faults, points);
         let pieces = pairs(points).map(|(from, to)| Piece::line(from, to)).collect();
         Self::joined(faults, start, below, pieces, above)
     }
@@ -52,7 +52,7 @@ impl Curve {
         let mut faults = Faults::new();
         let detail = "a mean value needs a temperature above the base";
         faults.require(start > base, "", FaultCode::NotInOrder, detail);
-        points.iter().for_each(|&(_, value)| positive(&mut faults, value));
+        all_positive(&mut faults, points);
         let pieces = pairs(points).map(|(from, to)| local(base, from, to)).collect();
         Self::joined(faults, start, below, pieces, above)
     }
@@ -123,6 +123,12 @@ const FINITE: &str = "must be a finite number";
 fn positive(faults: &mut Faults, value: f64) {
     faults.positive("", value);
     faults.require(value < f64::INFINITY, "", FaultCode::OutOfRange, FINITE);
+}
+
+fn all_positive(faults: &mut Faults, points: &[Point]) {
+    for &(_, value) in points {
+        positive(faults, value);
+    }
 }
 
 fn ends<T>(list: &[T]) -> Result<(&T, &T), Faults> {
