@@ -2,8 +2,7 @@
 #![expect(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test fails by panicking")]
 #![allow(missing_docs, reason = "tests are named as sentences")]
 
-#![expect(clippy::unwrap_used, reason = "a test fails by panicking")]
-
 mod calc;
+mod data;
 mod published;
 mod support;

@@ -1,1 +1,3 @@
 mod pad;
+mod disc;
+mod heat;

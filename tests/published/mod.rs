@@ -1,2 +1,3 @@
 mod motion;
 mod pads;
+mod heat;

@@ -1,0 +1,239 @@
+//! The catalog of disc materials: typed access to `disc_materials.toml`.
+
+use std::sync::LazyLock;
+
+use serde::Deserialize;
+
+use crate::calc::disc::{CatalogOrigin, DiscMaterial};
+use crate::calc::fault::Faults;
+use crate::calc::heat::property::{Conductivity, Curve, Piece, Pole, SpecificHeat};
+use crate::calc::method::Provenance;
+use crate::calc::quantity::{MassDensity, Si, ThermodynamicTemperature, ZERO_CELSIUS};
+
+/// The table as it is reviewed.
+pub const TEXT: &str = include_str!("disc_materials.toml");
+
+static ROWS: LazyLock<Vec<DiscMaterialRow>> = LazyLock::new(|| parse(TEXT).unwrap_or_default());
+
+/// Members that a row may hold.
+const MEMBERS: [&str; 5] =
+    ["density", "specific_heat", "conductivity", "emissivity", "max_temperature"];
+
+/// How alike an identifier must be to be proposed instead of an unknown one, from 0 to 1.
+const ALIKE: f64 = 0.75;
+
+/// One material of the catalog.
+#[derive(Debug, Clone, PartialEq)]
+pub struct DiscMaterialRow {
+    /// Identifier, as in a request.
+    pub id: String,
+    /// Name for people.
+    pub name: String,
+    /// Who published the values.
+    pub source: String,
+    /// How they were found.
+    pub provenance: Provenance,
+    /// What to know about them.
+    pub note: String,
+    /// The material itself.
+    pub material: DiscMaterial,
+}
+
+/// Every material, in the order of the table. A test proves that the table can be read.
+#[must_use]
+pub fn all() -> &'static [DiscMaterialRow] {
+    &ROWS
+}
+
+/// The material with this identifier.
+#[must_use]
+pub fn find(id: &str) -> Option<&'static DiscMaterialRow> {
+    all().iter().find(|row| row.id == id)
+}
+
+/// The identifier most like `id`, if one is much like it.
+#[must_use]
+pub fn closest(id: &str) -> Option<&'static str> {
+    let alike = |row: &'static DiscMaterialRow| {
+        (strsim::normalized_damerau_levenshtein(id, &row.id), row.id.as_str())
+    };
+    let candidates = all().iter().map(alike).filter(|(alike, _)| *alike >= ALIKE);
+    candidates.max_by(|one, other| one.0.total_cmp(&other.0)).map(|(_, id)| id)
+}
+
+/// Reads a table of disc materials.
+///
+/// # Errors
+/// A sentence that names the row: unknown members or units, values without a physical meaning.
+pub fn parse(text: &str) -> Result<Vec<DiscMaterialRow>, String> {
+    let table: Table = toml::from_str(text).map_err(|error| error.to_string())?;
+    table.material.into_iter().map(Row::read).collect()
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct Table {
+    material: Vec<Row>,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct Row {
+    id: String,
+    name: String,
+    source: String,
+    provenance: String,
+    #[serde(default)]
+    from_memory: Vec<String>,
+    #[serde(default)]
+    seen: Vec<String>,
+    note: String,
+    density: Printed,
+    specific_heat: PrintedCurve,
+    conductivity: PrintedCurve,
+    emissivity: Option<f64>,
+    max_temperature: Option<Printed>,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct Printed {
+    value: f64,
+    unit: String,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct PrintedCurve {
+    unit: String,
+    value: Option<f64>,
+    table: Option<Vec<(f64, f64)>>,
+    mean: Option<Vec<(f64, f64)>>,
+    mean_from: Option<f64>,
+    pieces: Option<Vec<PrintedPiece>>,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct PrintedPiece {
+    from: f64,
+    to: f64,
+    polynomial: Vec<f64>,
+    pole: Option<PrintedPole>,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct PrintedPole {
+    factor: f64,
+    at: f64,
+}
+
+impl Row {
+    fn read(self) -> Result<DiscMaterialRow, String> {
+        let id = self.id.clone();
+        self.checked().map_err(|reason| format!("{id}: {reason}"))
+    }
+
+    fn checked(self) -> Result<DiscMaterialRow, String> {
+        let provenance = match self.provenance.as_str() {
+            "seen" => Provenance::Seen,
+            "memory" => Provenance::Memory,
+            other => return Err(format!("unknown provenance {other}")),
+        };
+        let material = self.material(provenance)?;
+        let Self { id, name, source, note, .. } = self;
+        Ok(DiscMaterialRow { id, name, source, provenance, note, material })
+    }
+
+    fn material(&self, provenance: Provenance) -> Result<DiscMaterial, String> {
+        let mut faults = Faults::new();
+        let density = self.density.read("kg/m3")?;
+        faults.positive("density", density);
+        if let Some(emissivity) = self.emissivity {
+            faults.efficiency("emissivity", emissivity);
+        }
+        let limit = self.max_temperature.as_ref().map(|limit| limit.read("degC")).transpose()?;
+        let limit = limit.map(|celsius| celsius + ZERO_CELSIUS);
+        if let Some(limit) = limit {
+            faults.positive("max_temperature", limit);
+        }
+        faults.into_result(()).map_err(|faults| sentence(&faults))?;
+        Ok(DiscMaterial {
+            density: MassDensity::from_si(density),
+            specific_heat: SpecificHeat::new(self.specific_heat.read("J/(kg.K)")?),
+            conductivity: Conductivity::new(self.conductivity.read("W/(m.K)")?),
+            emissivity: self.emissivity,
+            max_temperature: limit.map(ThermodynamicTemperature::from_si),
+            max_temperature_from_catalog: limit.is_some(),
+            origin: Some(self.origin(provenance)?),
+        })
+    }
+
+    fn origin(&self, provenance: Provenance) -> Result<CatalogOrigin, String> {
+        let listed = self.from_memory.iter().chain(&self.seen);
+        if let Some(stray) = listed.into_iter().find(|member| !self.holds(member)) {
+            return Err(format!("has no {stray}"));
+        }
+        let remembered = |member: &&str| match provenance {
+            Provenance::Seen => self.from_memory.iter().any(|name| name == member),
+            Provenance::Memory => !self.seen.iter().any(|name| name == member),
+        };
+        let held = MEMBERS.iter().copied().filter(|member| self.holds(member));
+        let from_memory = held.filter(remembered).map(str::to_owned).collect();
+        Ok(CatalogOrigin { id: self.id.clone(), provenance, from_memory })
+    }
+
+    fn holds(&self, member: &str) -> bool {
+        match member {
+            "emissivity" => self.emissivity.is_some(),
+            "max_temperature" => self.max_temperature.is_some(),
+            other => MEMBERS.contains(&other),
+        }
+    }
+}
+
+impl Printed {
+    fn read(&self, unit: &str) -> Result<f64, String> {
+        same_unit(&self.unit, unit).map(|()| self.value)
+    }
+}
+
+impl PrintedCurve {
+    fn read(&self, unit: &str) -> Result<Curve, String> {
+        same_unit(&self.unit, unit)?;
+        let curve = match (self.value, &self.table, &self.mean, self.mean_from, &self.pieces) {
+            (Some(value), None, None, None, None) => Curve::constant(value),
+            (None, Some(points), None, None, None) => Curve::table(points),
+            (None, None, Some(points), Some(base), None) => Curve::mean_from(base, points),
+            (None, None, None, None, Some(pieces)) => {
+                let pieces: Result<_, String> = pieces.iter().map(PrintedPiece::read).collect();
+                Curve::pieces(pieces?)
+            }
+            _ => return Err("needs exactly one of value, table, mean and pieces".to_owned()),
+        };
+        curve.map_err(|faults| sentence(&faults))
+    }
+}
+
+impl PrintedPiece {
+    fn read(&self) -> Result<Piece, String> {
+        let mut polynomial = [0.0; 4];
+        if self.polynomial.len() > polynomial.len() {
+            return Err("a polynomial has at most four coefficients".to_owned());
+        }
+        polynomial.iter_mut().zip(&self.polynomial).for_each(|(place, given)| *place = *given);
+        let pole = self.pole.as_ref().map(|pole| Pole { factor: pole.factor, at: pole.at });
+        Ok(Piece { from: self.from, to: self.to, polynomial, pole })
+    }
+}
+
+fn same_unit(printed: &str, expected: &str) -> Result<(), String> {
+    let same = printed == expected;
+    same.then_some(()).ok_or_else(|| format!("unit {printed} where {expected} is read"))
+}
+
+fn sentence(faults: &Faults) -> String {
+    let words = |fault: &crate::calc::fault::Fault| format!("{} {}", fault.member, fault.detail);
+    faults.as_slice().iter().map(words).collect::<Vec<_>>().join("; ")
+}

@@ -1,0 +1,4 @@
+mod bulk;
+mod property;
+mod reference;
+mod slab;
