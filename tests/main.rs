@@ -1,5 +1,10 @@
 //! All tests, in one binary; folders mirror `src`, `published` holds the checks against outside sources.
-#![expect(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test fails by panicking")]
+#![expect(
+    clippy::unwrap_used,
+    clippy::panic,
+    clippy::indexing_slicing,
+    reason = "a test fails by panicking"
+)]
 #![allow(missing_docs, reason = "tests are named as sentences")]
 
 mod calc;

@@ -1,3 +1,4 @@
-mod pad;
 mod disc;
 mod heat;
+mod motion;
+mod pad;

@@ -1,3 +1,3 @@
+mod heat;
 mod motion;
 mod pads;
-mod heat;

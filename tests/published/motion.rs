@@ -3,9 +3,15 @@
 //! Sources are named beside each check: [S] read in a copy of the source, [M] from memory of it, [V] verified from
 //! first principles.
 
-use brakewright::calc::machine::{Geometry, GeometryParts, Machine, Shaft, ShaftParts, Situation, Vehicle, VehicleParts};
-use brakewright::calc::motion::{Coordinate, Delays, Demand, Ending, Forces, LimitedBy, Reduced, Stop, stop};
-use brakewright::calc::quantity::{Angle, Area, Length, Mass, MassDensity, MomentOfInertia, Si, Time, Torque};
+use brakewright::calc::machine::{
+    Geometry, GeometryParts, Machine, Shaft, ShaftParts, Situation, Vehicle, VehicleParts,
+};
+use brakewright::calc::motion::{
+    Coordinate, Delays, Demand, Ending, Forces, LimitedBy, Reduced, Stop, stop,
+};
+use brakewright::calc::quantity::{
+    Angle, Area, Length, Mass, MassDensity, MomentOfInertia, Si, Time, Torque,
+};
 
 use crate::support::close::{assert_close, assert_within};
 
@@ -43,7 +49,11 @@ fn total(stop: &Stop) -> (f64, f64) {
 }
 
 fn way(speed: f64, deceleration: f64, reaction: f64) -> f64 {
-    total(&stop(&point_mass(deceleration, 0.0), &from_speed(speed, delays(reaction, 0.0, 0.0))).unwrap()).0
+    total(
+        &stop(&point_mass(deceleration, 0.0), &from_speed(speed, delays(reaction, 0.0, 0.0)))
+            .unwrap(),
+    )
+    .0
 }
 
 /// Reference file section 5 [V]: v0(td + tb/2) + v0²/(2a) − a·tb²/24.
@@ -52,7 +62,8 @@ fn build_up_of_torque_follows_the_closed_form() {
     let full = stop(&point_mass(7.0, 0.0), &from_speed(30.0, delays(0.0, 0.9, 0.4))).unwrap();
     assert_within(total(&full).0, 97.239_047_6, 5e-8);
     assert_within(total(&full).1, 5.385_714_3, 5e-8);
-    let within_build_up = stop(&point_mass(6.0, 0.0), &from_speed(0.5, delays(0.0, 0.2, 0.6))).unwrap();
+    let within_build_up =
+        stop(&point_mass(6.0, 0.0), &from_speed(0.5, delays(0.0, 0.2, 0.6))).unwrap();
     assert_within(total(&within_build_up).0, 0.205_409_3, 5e-8);
 }
 
@@ -79,8 +90,20 @@ fn a_stop_against_air_drag_follows_the_closed_form() {
 #[test]
 fn stopping_sight_distance_gives_the_us_design_values() {
     let design = [
-        (15, 80), (20, 115), (25, 155), (30, 200), (35, 250), (40, 305), (45, 360), (50, 425), (55, 495), (60, 570),
-        (65, 645), (70, 730), (75, 820), (80, 910),
+        (15, 80),
+        (20, 115),
+        (25, 155),
+        (30, 200),
+        (35, 250),
+        (40, 305),
+        (45, 360),
+        (50, 425),
+        (55, 495),
+        (60, 570),
+        (65, 645),
+        (70, 730),
+        (75, 820),
+        (80, 910),
     ];
     for (speed, expected) in design {
         let feet = way(f64::from(speed) * MILE_PER_HOUR, 11.2 * FOOT, 2.5) / FOOT;
@@ -92,8 +115,18 @@ fn stopping_sight_distance_gives_the_us_design_values() {
 #[test]
 fn stopping_sight_distance_gives_the_metric_column() {
     let computed = [
-        (20, 18.5), (30, 31.2), (40, 46.2), (50, 63.4), (60, 83.0), (70, 104.9), (80, 129.0), (90, 155.5),
-        (100, 184.2), (110, 215.2), (120, 248.6), (130, 284.2),
+        (20, 18.5),
+        (30, 31.2),
+        (40, 46.2),
+        (50, 63.4),
+        (60, 83.0),
+        (70, 104.9),
+        (80, 129.0),
+        (90, 155.5),
+        (100, 184.2),
+        (110, 215.2),
+        (120, 248.6),
+        (130, 284.2),
     ];
     for (speed, expected) in computed {
         assert_close(way(f64::from(speed) * KILOMETER_PER_HOUR, 3.4, 2.5), expected, 0.008);
@@ -116,7 +149,9 @@ fn stopping_sight_distance_on_grades_follows_the_published_form() {
         for (grade, expected) in [-3.0_f64, -6.0, -9.0, 3.0, 6.0, 9.0].into_iter().zip(columns) {
             let slope = (grade / 100.0).atan();
             let forces = point_mass(11.2 * FOOT, -GRAVITY * slope.sin());
-            let stop = stop(&forces, &from_speed(f64::from(speed) * MILE_PER_HOUR, delays(2.5, 0.0, 0.0))).unwrap();
+            let stop =
+                stop(&forces, &from_speed(f64::from(speed) * MILE_PER_HOUR, delays(2.5, 0.0, 0.0)))
+                    .unwrap();
             assert_close(total(&stop).0 / FOOT, expected, 0.009);
         }
     }
@@ -129,11 +164,11 @@ fn stopping_sight_distance_on_grades_follows_the_published_form() {
 #[test]
 fn regulation_distances_follow_from_delay_and_deceleration() {
     let rows = [
-        (100.0, 0.10, 0.0060, 70.0, 0.05),  // 571.135 S7.5 cold effectiveness
-        (100.0, 0.10, 0.0075, 85.0, 0.05),  // S7.8 antilock failure
+        (100.0, 0.10, 0.0060, 70.0, 0.05), // 571.135 S7.5 cold effectiveness
+        (100.0, 0.10, 0.0075, 85.0, 0.05), // S7.8 antilock failure
         (100.0, 0.10, 0.0100, 110.0, 0.05), // S7.9 variable proportioning failure
         (100.0, 0.10, 0.0158, 168.0, 0.05), // S7.10 circuit failure
-        (100.0, 0.10, 0.0079, 89.0, 0.05),  // S7.14 hot performance
+        (100.0, 0.10, 0.0079, 89.0, 0.05), // S7.14 hot performance
         (60.0, 0.10, 0.0087, 37.32, 0.005), // 571.122 front brake, category 3-3
         (60.0, 0.10, 0.0133, 53.88, 0.005), // 571.122 rear brake, category 3-3
         (40.0, 0.10, 1.0 / 90.0, 21.78, 0.005), // 93/14/EEC two-wheel moped, front
@@ -160,7 +195,8 @@ fn the_bicycle_rule_needs_half_the_acceleration_of_free_fall() {
 /// (21.51 ft/s²), overall within 2 %.
 #[test]
 fn the_highway_code_distances_come_out() {
-    for (speed, overall) in [(20, 12.0), (30, 23.0), (40, 36.0), (50, 53.0), (60, 73.0), (70, 96.0)] {
+    for (speed, overall) in [(20, 12.0), (30, 23.0), (40, 36.0), (50, 53.0), (60, 73.0), (70, 96.0)]
+    {
         assert_close(way(f64::from(speed) * MILE_PER_HOUR, 21.51 * FOOT, 0.671), overall, 0.02);
     }
 }
@@ -222,7 +258,10 @@ fn the_rear_axle_locks_first_where_published() {
 fn the_handbook_shaft_stops_in_its_time() {
     const POUND: f64 = 0.453_592_37; // kg, exact
     let inertia = 200.0 * POUND * FOOT * FOOT;
-    let shaft = ShaftParts { inertia: MomentOfInertia::from_si(inertia), driving_torque: Torque::from_si(0.0) };
+    let shaft = ShaftParts {
+        inertia: MomentOfInertia::from_si(inertia),
+        driving_torque: Torque::from_si(0.0),
+    };
     let machine = Machine::Shaft(Shaft::new(shaft).unwrap());
     let speed = 1800.0 * std::f64::consts::TAU / 60.0;
     let torque = 200.0 * 1800.0 / (307.239 * 40.0) * POUND * GRAVITY * FOOT;

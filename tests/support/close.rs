@@ -2,7 +2,10 @@
 #[track_caller]
 pub fn assert_close(actual: f64, expected: f64, relative: f64) {
     let bound = relative * expected.abs();
-    assert!((actual - expected).abs() <= bound, "{actual} is not {expected} within {relative:e} relative");
+    assert!(
+        (actual - expected).abs() <= bound,
+        "{actual} is not {expected} within {relative:e} relative"
+    );
 }
 
 /// Asserts that `actual` equals `expected` within an absolute tolerance, for values printed with few decimals.

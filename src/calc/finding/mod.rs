@@ -2,9 +2,11 @@
 
 mod caution;
 mod code;
+mod remarks;
 
 pub use caution::Caution;
 pub use code::{CheckCode, Notice, WarningCode};
+pub use remarks::{Comparison, Remarks};
 
 use super::friction::FrictionCase;
 use super::quantity::{Amount, Dimension};

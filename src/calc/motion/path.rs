@@ -358,6 +358,39 @@ impl Path {
         nodes
     }
 
+    /// Highest power over the torque phases of brakes that do `shares` of the work of each axle, W.
+    #[must_use]
+    pub fn peak_brake_power(&self, shares: [f64; 2]) -> f64 {
+        self.torque_pieces()
+            .fold(0.0_f64, |highest, piece| highest.max(self.peak_power_in(piece, shares)))
+    }
+
+    /// Looks at even places, then narrows the highest: power within a piece has one summit.
+    fn peak_power_in(&self, piece: &Piece, shares: [f64; 2]) -> f64 {
+        const PLACES: usize = 8;
+        let power = |time: f64| {
+            let brake = self.instant(piece, time).brake;
+            (brake[0] * shares[0] + brake[1] * shares[1]) * piece.speed_at(time)
+        };
+        let ends = power(0.0).max(power(piece.duration));
+        if self.has_linear_power(piece) {
+            return ends;
+        }
+        let width = piece.duration / to_f64(PLACES);
+        let places = (0..=PLACES).map(|place| to_f64(place) * width);
+        let summit = places.fold((0.0, power(0.0)), |best, time| {
+            let here = power(time);
+            if here > best.1 { (time, here) } else { best }
+        });
+        let (mut low, mut high) =
+            ((summit.0 - width).max(0.0), (summit.0 + width).min(piece.duration));
+        for _ in 0..40 {
+            let (one, other) = (low + (high - low) / 3.0, high - (high - low) / 3.0);
+            if power(one) < power(other) { low = one } else { high = other }
+        }
+        ends.max(power(f64::midpoint(low, high)))
+    }
+
     fn has_linear_power(&self, piece: &Piece) -> bool {
         matches!(piece.effort, Effort::Ramp(_, 0.0))
             && matches!(piece.motion, Motion::Polynomial { rise: 0.0, .. })

@@ -1,0 +1,480 @@
+//! How a machine stops: time, way, deceleration, and what limits it.
+
+use crate::calc::actuation::Pressing;
+use crate::calc::fault::{FaultCode, Faults};
+use crate::calc::finding::{
+    Caution, CheckCode, Comparison, Finding, Notice, Remarks, Severity, Subject, WarningCode,
+};
+use crate::calc::fitted::{Fitted, Place, Pressed, friction_cases, needed, operator_stroke, press};
+use crate::calc::friction::FrictionCase;
+use crate::calc::machine::{Machine, Situation, Vehicle};
+use crate::calc::motion::{
+    AXLE_FORCES, Coordinate, DRAG, Delays, Demand, Ending, Forces, Instant, LOCK_ORDER, LimitedBy,
+    LockFactors, MEAN_FULLY_DEVELOPED, PHASES, Reduced, Stop, lock_factors, stop,
+};
+use crate::calc::pressure::FRICTION_TORQUE;
+use crate::calc::quantity::{Amount, Dimension, Force, STANDARD_GRAVITY, Si, Torque, Volume};
+
+/// A machine, its brakes and the stop asked of them. Speeds and the deceleration are SI along the coordinate:
+/// m/s and m/s² of a vehicle, load or belt, rad/s and rad/s² of a shaft.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Input {
+    /// What is braked.
+    pub machine: Machine,
+    /// Its brakes, 1 to 100 entries.
+    pub fitted: Vec<Fitted>,
+    /// What surrounds the stop.
+    pub situation: Situation,
+    /// Speed at the start.
+    pub initial_speed: f64,
+    /// Speed at the end.
+    pub final_speed: f64,
+    /// Deceleration that the operator holds after build-up.
+    pub deceleration: Option<f64>,
+    /// The delays.
+    pub delays: Delays,
+}
+
+/// The stop, once per friction case.
+#[derive(Debug, Clone)]
+pub struct Outcome {
+    /// The results.
+    pub friction_cases: Vec<CaseOutcome>,
+    /// What presses each entry; none for an entry of known torque.
+    pub pressed: Vec<Option<Pressed>>,
+    /// What is to be said about the results.
+    pub remarks: Remarks,
+}
+
+/// The stop at one friction.
+#[derive(Debug, Clone)]
+pub struct CaseOutcome {
+    /// Which.
+    pub friction_case: FrictionCase,
+    /// The stop.
+    pub stop: Stop,
+    /// Torque of one brake of each entry at full application.
+    pub full_torques: Vec<Torque>,
+    /// Brake force of each entry's brakes together at full application, split into front (or all) and rear.
+    pub demands: Vec<[f64; 2]>,
+    /// The balance of forces where the deceleration is highest, and the fraction applied there.
+    pub hardest: Option<(Instant, f64)>,
+    /// How far each axle is from locking, if axle loads and adhesion are known.
+    pub lock: Option<LockFactors>,
+}
+
+impl CaseOutcome {
+    /// Torque that one brake of an entry is asked for once built up.
+    #[must_use]
+    pub fn torque(&self, index: usize) -> Torque {
+        let full = self.full_torques.get(index).map_or(0.0, |torque| torque.si());
+        Torque::from_si(full * self.stop.fraction)
+    }
+
+    /// What limits the deceleration where it is highest.
+    #[must_use]
+    pub fn limited_by(&self) -> LimitedBy {
+        match self.hardest {
+            Some((instant, _)) if instant.limited_by != LimitedBy::Brake => instant.limited_by,
+            _ if self.stop.is_modulated => LimitedBy::Operator,
+            _ => LimitedBy::Brake,
+        }
+    }
+
+    /// Mean deceleration from the first torque to the end; none if no torque acted.
+    #[must_use]
+    pub fn mean_deceleration(&self, final_speed: f64) -> Option<f64> {
+        let (begin, end) = (self.stop.path.first_torque(), self.stop.path.end());
+        let way = end.distance - begin.distance;
+        (way > 0.0).then(|| (begin.speed * begin.speed - final_speed * final_speed) / (2.0 * way))
+    }
+
+    /// Mean fully developed deceleration; none if the final speed is above a tenth of the initial one.
+    ///
+    /// See [`MEAN_FULLY_DEVELOPED`].
+    #[must_use]
+    pub fn mean_fully_developed_deceleration(&self, demand: &Demand) -> Option<f64> {
+        let (begin, end) = (0.8 * demand.initial_speed, 0.1 * demand.initial_speed);
+        if demand.final_speed > end {
+            return None;
+        }
+        let path = &self.stop.path;
+        let at_end = path.falling_through(end).unwrap_or_else(|| path.end());
+        let way = at_end.distance - path.falling_through(begin)?.distance;
+        (way > 0.0).then(|| (begin * begin - end * end) / (2.0 * way))
+    }
+}
+
+impl Input {
+    /// What the stop is asked to do.
+    #[must_use]
+    pub fn demand(&self) -> Demand {
+        Demand {
+            initial_speed: self.initial_speed,
+            final_speed: self.final_speed,
+            delays: self.delays,
+            deceleration: self.deceleration,
+        }
+    }
+
+    /// What is impossible about the stop. Members are those of the request.
+    #[must_use]
+    pub fn faults(&self) -> Faults {
+        let mut faults = Faults::new();
+        let (initial, end) = match self.machine.coordinate() {
+            Coordinate::Way => ("initial_speed", "final_speed"),
+            Coordinate::Angle => ("initial_rotational_speed", "final_rotational_speed"),
+        };
+        faults.positive(initial, self.initial_speed);
+        faults.not_negative(end, self.final_speed);
+        if faults.is_empty() {
+            let holds = self.final_speed < self.initial_speed;
+            faults.require(
+                holds,
+                end,
+                FaultCode::NotBelowInitialSpeed,
+                "must be below the initial speed",
+            );
+        }
+        let holds = self.situation.grade.si().abs() <= std::f64::consts::FRAC_PI_4 * (1.0 + 1e-12);
+        faults.require(holds, "grade", FaultCode::OutOfRange, "must not be steeper than 100 %");
+        if let Some(deceleration) = self.deceleration {
+            faults.positive("deceleration", deceleration);
+        }
+        let holds = (1..=100).contains(&self.fitted.len());
+        faults.require(holds, "fitted", FaultCode::WrongCount, "must have 1 to 100 entries");
+        self.place_faults(&mut faults);
+        faults
+    }
+
+    fn place_faults(&self, faults: &mut Faults) {
+        let is_vehicle = self.machine.vehicle().is_some();
+        for (index, entry) in self.fitted.iter().enumerate() {
+            let at = |member: &str| format!("fitted/{index}/{member}");
+            match (is_vehicle, entry.parts().place) {
+                (true, None) => faults.add(
+                    at("axle"),
+                    FaultCode::Missing,
+                    "is required on a vehicle: front, rear or all",
+                ),
+                (false, Some(_)) => {
+                    faults.add(at("axle"), FaultCode::NotApplicable, "belongs to vehicles only");
+                }
+                _ => {}
+            }
+            if !is_vehicle && entry.parts().rolling_radius.is_some() {
+                faults.add(
+                    at("rolling_radius"),
+                    FaultCode::NotApplicable,
+                    "belongs to vehicles only",
+                );
+            }
+        }
+    }
+}
+
+/// Computes the stop.
+///
+/// # Errors
+/// All that is impossible about the input, or a result beyond what numbers can hold.
+pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
+    let mut faults = input.faults();
+    let Some(pressed) = faults.part("fitted", press(&input.fitted)) else { return Err(faults) };
+    if !faults.is_empty() {
+        return Err(faults);
+    }
+    let system = input.machine.reduced(&input.situation);
+    let cases = friction_cases(&input.fitted).iter();
+    let found: Option<Vec<CaseOutcome>> =
+        cases.map(|&case| computed(input, &system, &pressed, case)).collect();
+    let Some(friction_cases) = found else {
+        faults.add("", FaultCode::OutOfRange, "the stop leaves the range that numbers can follow");
+        return Err(faults);
+    };
+    let remarks = remarks(input, &system, &pressed, &friction_cases);
+    Ok(Outcome { friction_cases, pressed, remarks })
+}
+
+fn computed(
+    input: &Input,
+    system: &Reduced,
+    pressed: &[Option<Pressed>],
+    case: FrictionCase,
+) -> Option<CaseOutcome> {
+    let torque =
+        |(entry, pressed): (&Fitted, &Option<Pressed>)| entry.torque(case, pressed.as_ref());
+    let full_torques: Vec<Torque> = input.fitted.iter().zip(pressed).map(torque).collect();
+    let demands: Vec<[f64; 2]> = input
+        .fitted
+        .iter()
+        .zip(&full_torques)
+        .map(|(entry, torque)| brake_force(&input.machine, entry, *torque))
+        .collect();
+    let forces = Forces::new(*system, total(&demands));
+    let stop = stop(&forces, &input.demand())?;
+    let hardest = stop.path.hardest();
+    let lock = forces.lock_factors(hardest.map_or(input.initial_speed, |(.., speed)| speed));
+    let is_finite = stop.path.end().time.is_finite() && stop.path.end().distance.is_finite();
+    let hardest = hardest.map(|(instant, fraction, _)| (instant, fraction));
+    is_finite.then_some(CaseOutcome {
+        friction_case: case,
+        stop,
+        full_torques,
+        demands,
+        hardest,
+        lock,
+    })
+}
+
+/// The brake force of an entry along the coordinate, front (or all) and rear, with `torque` per brake.
+fn brake_force(machine: &Machine, entry: &Fitted, torque: Torque) -> [f64; 2] {
+    let parts = entry.parts();
+    let per_torque = machine.shaft_per_coordinate(parts.rolling_radius)
+        * parts.speed_ratio
+        * f64::from(parts.count);
+    let force = torque.si() * per_torque;
+    let has_axles = machine.vehicle().is_some_and(Vehicle::has_geometry);
+    match parts.place {
+        Some(Place::Rear) if has_axles => [0.0, force],
+        Some(Place::All) if has_axles => [0.5 * force, 0.5 * force],
+        _ => [force, 0.0],
+    }
+}
+
+fn total(demands: &[[f64; 2]]) -> [f64; 2] {
+    demands.iter().fold([0.0; 2], |sum, demand| [sum[0] + demand[0], sum[1] + demand[1]])
+}
+
+/// Highest speed of an entry's brake shaft, rad/s, while torque acts.
+#[must_use]
+pub fn highest_brake_speed(input: &Input, entry: &Fitted, stop: &Stop) -> f64 {
+    let parts = entry.parts();
+    let per_coordinate =
+        input.machine.shaft_per_coordinate(parts.rolling_radius) * parts.speed_ratio;
+    stop.path.highest_speed_with_torque() * per_coordinate
+}
+
+fn remarks(
+    input: &Input,
+    system: &Reduced,
+    pressed: &[Option<Pressed>],
+    cases: &[CaseOutcome],
+) -> Remarks {
+    let mut remarks = Remarks::new();
+    note_methods(&mut remarks, input, system);
+    note_machine(&mut remarks, input);
+    for (index, entry) in input.fitted.iter().enumerate() {
+        if let Some(brake) = entry.brake() {
+            brake.remark(&mut remarks, Some(index));
+            remarks.method(&FRICTION_TORQUE);
+        }
+    }
+    for case in cases {
+        note_ending(&mut remarks, case);
+        note_limits(&mut remarks, input, case);
+        note_pressing(&mut remarks, input, pressed, case);
+    }
+    note_lock_order(&mut remarks, input, system, cases);
+    remarks
+}
+
+fn note_methods(remarks: &mut Remarks, input: &Input, system: &Reduced) {
+    remarks.method(input.machine.method());
+    remarks.method(&PHASES);
+    if system.drag > 0.0 {
+        remarks.method(&DRAG);
+    }
+    if system.coordinate == Coordinate::Way && input.final_speed <= 0.1 * input.initial_speed {
+        remarks.method(&MEAN_FULLY_DEVELOPED);
+    }
+    if let Some(tires) = system.tires
+        && (tires.adhesion.is_some() || tires.wheelbase.is_some())
+    {
+        remarks.method(&AXLE_FORCES);
+    }
+}
+
+fn note_machine(remarks: &mut Remarks, input: &Input) {
+    let at = |member| Subject::Request(member);
+    if matches!(input.machine, Machine::Hoist(_)) {
+        remarks.caution(Caution::SuspendedLoad);
+    }
+    let Some(vehicle) = input.machine.vehicle() else { return };
+    match vehicle.adhesion() {
+        None => {
+            let detail = "what the tires carry was not considered: give machine/adhesion to see whether they hold";
+            remarks.notice(Notice::AdhesionNotConsidered, Severity::Info, at("machine"), detail);
+        }
+        Some(adhesion) if adhesion > 1.2 => {
+            let detail = "the adhesion is above 1.2, which few tires reach on any ground";
+            remarks.notice(
+                Notice::AdhesionUnusuallyHigh,
+                Severity::Info,
+                at("machine/adhesion"),
+                detail,
+            );
+        }
+        Some(_) => {}
+    }
+    let tells_axles = input.fitted.iter().any(|entry| entry.parts().place != Some(Place::All));
+    if vehicle.adhesion().is_some() && !vehicle.has_geometry() && tells_axles {
+        let detail = "axle loads are unknown: the adhesion limit was taken for the whole vehicle, which is more than one axle holds; give machine/geometry";
+        remarks.notice(Notice::LoadTransferNotConsidered, Severity::Info, at("machine"), detail);
+    }
+}
+
+fn note_ending(remarks: &mut Remarks, case: &CaseOutcome) {
+    let stop = &case.stop;
+    let dimension = match stop.path.forces().system.coordinate {
+        Coordinate::Way => Dimension::Force,
+        Coordinate::Angle => Dimension::Torque,
+    };
+    match stop.ending {
+        Ending::NotReached { .. } => remarks.compare(
+            Comparison {
+                code: CheckCode::Stops,
+                subject: Subject::Request("fitted"),
+                friction_case: Some(case.friction_case),
+                actual: Amount { dimension, si: stop.driving },
+                limit: Amount { dimension, si: stop.available },
+                what: "what drives the machine against its brakes",
+            },
+            0.0,
+        ),
+        Ending::Reached(Some(run_back)) => {
+            let is_held = run_back.time.is_some();
+            let (severity, detail) = if is_held {
+                (
+                    Severity::Info,
+                    "the machine comes to rest before the brake holds it, and moves the other way until it does",
+                )
+            } else {
+                (
+                    Severity::Exceeded,
+                    "the machine comes to rest, and the brake cannot keep it from moving the other way",
+                )
+            };
+            let subject = Subject::Request("response");
+            remarks.find(
+                Finding::notice(Notice::RunsBackBeforeBrake, severity, subject, detail)
+                    .in_case(case.friction_case),
+            );
+        }
+        Ending::Reached(None) => {}
+    }
+}
+
+fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
+    let mut find = |code, severity, member, detail: &str| {
+        let subject = Subject::Request(member);
+        let is_known = remarks
+            .findings()
+            .iter()
+            .any(|known| known.code == WarningCode::Notice(code) && known.subject == subject);
+        if !is_known {
+            remarks
+                .find(Finding::notice(code, severity, subject, detail).in_case(case.friction_case));
+        }
+    };
+    if input.deceleration.is_some() && !case.stop.is_modulated {
+        let detail =
+            "the deceleration asked for is more than brakes and tires give: full torque was taken";
+        find(Notice::DecelerationNotReached, Severity::Exceeded, "deceleration", detail);
+    }
+    match case.hardest.map(|(instant, _)| instant.limited_by) {
+        Some(LimitedBy::Adhesion) => {
+            let detail = "the brakes can lock a wheel; a sliding wheel brakes less than computed here and does not steer";
+            find(Notice::WheelLockPossible, Severity::Info, "machine/adhesion", detail);
+            let detail = "braking at the limit of adhesion is taken as controlled: with locked wheels the way is longer";
+            find(Notice::SlidingFrictionLower, Severity::Info, "machine/adhesion", detail);
+        }
+        Some(LimitedBy::RearWheelLift) => {
+            let detail =
+                "the brakes can lift the rear wheel; the deceleration is held at that limit";
+            find(Notice::RearWheelLift, Severity::Info, "machine/geometry", detail);
+        }
+        _ => {}
+    }
+    if !matches!(case.stop.ending, Ending::Reached(_)) {
+        return;
+    }
+    if case.stop.path.end().time - input.delays.reaction() < 0.1 {
+        let detail = "the stop takes less than 0.1 s; look for a slip of units";
+        find(Notice::StopUnusuallyShort, Severity::Info, "fitted", detail);
+    }
+    let is_harsh =
+        case.hardest.is_some_and(|(instant, _)| instant.deceleration > 1.5 * STANDARD_GRAVITY);
+    if input.machine.coordinate() == Coordinate::Way && is_harsh {
+        let detail =
+            "the deceleration is above 1.5 times that of free fall; look for a slip of units";
+        find(Notice::DecelerationUnusuallyHigh, Severity::Info, "fitted", detail);
+    }
+}
+
+/// What acts on each entry in a case: as pressed, or what a held deceleration needs of it.
+#[must_use]
+pub fn acting(entry: &Fitted, pressed: Option<&Pressed>, stop: &Stop) -> Option<Pressing> {
+    let pressing = pressed?.pressing;
+    if !stop.is_modulated {
+        return Some(pressing);
+    }
+    needed(entry, Force::from_si(pressing.clamp_force.si() * stop.fraction))
+}
+
+fn note_pressing(
+    remarks: &mut Remarks,
+    input: &Input,
+    pressed: &[Option<Pressed>],
+    case: &CaseOutcome,
+) {
+    let actings: Vec<Option<Pressing>> = input
+        .fitted
+        .iter()
+        .zip(pressed)
+        .map(|(entry, pressed)| acting(entry, pressed.as_ref(), &case.stop))
+        .collect();
+    let volumes: Vec<Option<Volume>> =
+        actings.iter().map(|acting| acting.and_then(|acting| acting.fluid_volume)).collect();
+    let friction_case = case.stop.is_modulated.then_some(case.friction_case);
+    for (index, (entry, acting)) in input.fitted.iter().zip(&actings).enumerate() {
+        let (Some(brake), Some(acting)) = (entry.brake(), acting) else { continue };
+        brake.compare_pressing(remarks, Some(index), acting, friction_case);
+        let stroke = operator_stroke(&input.fitted, &volumes, index);
+        brake.compare_stroke(remarks, Some(index), stroke, friction_case);
+        if matches!(case.stop.ending, Ending::Reached(_)) {
+            let speed = highest_brake_speed(input, entry, &case.stop);
+            brake.compare_rubbing(
+                remarks,
+                Some(index),
+                speed,
+                acting.highest_clamp_force,
+                Some(case.friction_case),
+            );
+        }
+    }
+}
+
+/// Warns if the rear axle may lock first: in any case, or with front linings at low and rear ones at high friction.
+fn note_lock_order(remarks: &mut Remarks, input: &Input, system: &Reduced, cases: &[CaseOutcome]) {
+    if cases.iter().all(|case| case.lock.is_none()) {
+        return;
+    }
+    remarks.method(&LOCK_ORDER);
+    let worst = match (cases.first(), cases.last()) {
+        (Some(low), Some(high)) => {
+            let [front, rear] = [total(&low.demands)[0], total(&high.demands)[1]];
+            lock_factors(system, [front, rear], input.initial_speed)
+        }
+        _ => None,
+    };
+    let rear_first = |lock: &Option<LockFactors>| lock.is_some_and(|factors| factors.rear_first());
+    if cases.iter().any(|case| rear_first(&case.lock)) || rear_first(&worst) {
+        let detail = "the rear axle reaches its adhesion before the front one in at least one combination of friction: the vehicle may become unstable";
+        remarks.notice(
+            Notice::RearAxleLocksFirst,
+            Severity::Info,
+            Subject::Request("fitted"),
+            detail,
+        );
+    }
+}
