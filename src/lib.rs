@@ -1,3 +1,4 @@
 //! Brakewright computes disc brakes.
 
 pub mod calc;
+pub mod data;

@@ -5,6 +5,7 @@
 pub mod fault;
 pub mod finding;
 pub mod friction;
+pub mod lining;
 pub mod method;
 pub mod pad;
 pub mod pressure;

@@ -1,0 +1,5 @@
+//! Published tables as reviewable text, each row with its source.
+
+pub mod friction_codes;
+pub mod linings;
+mod printed;
