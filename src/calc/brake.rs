@@ -220,7 +220,7 @@ impl Brake {
         let rubbing = Velocity::from_si(shaft_speed * self.0.pad.largest_radius().si());
         compare_limit(
             remarks,
-            lining.max_rubbing_speed(),
+            lining.parts().max_rubbing_speed,
             Rated {
                 code: CheckCode::RubbingSpeed,
                 input: "lining/max_rubbing_speed",
@@ -235,7 +235,7 @@ impl Brake {
         let speed = shaft_speed * self.effective_radius().si();
         compare_limit(
             remarks,
-            lining.max_pressure_velocity(),
+            lining.parts().max_pressure_velocity,
             Rated {
                 code: CheckCode::PressureVelocity,
                 input: "lining/max_pressure_velocity",
@@ -363,7 +363,7 @@ pub fn compare_peak_pressure(
         dimension: Dimension::Pressure,
         what: "the peak pressure on the lining",
     };
-    compare_limit(remarks, lining.max_pressure(), rated, peak.si(), index, case);
+    compare_limit(remarks, lining.parts().max_pressure, rated, peak.si(), index, case);
 }
 
 /// Says what is unusual about a pad.
@@ -393,11 +393,11 @@ pub fn remark_lining(remarks: &mut Remarks, lining: &Lining, fitted_index: Optio
             "the friction coefficient is above 0.8, which few pairs reach",
         );
     }
-    if lining.friction_code().is_some() {
+    if lining.parts().origin.friction_code.is_some() {
         let detail = "the friction code identifies a class of lining in a bench test; it is not a rating of this brake";
         info(Notice::FrictionCodeIsNotARating, "lining/friction_code", detail);
     }
-    if lining.row().is_some_and(|row| row.provenance == Provenance::Memory) {
+    if lining.parts().origin.provenance == Some(Provenance::Memory) {
         info(
             Notice::ValueFromMemory,
             "lining/id",
@@ -405,7 +405,7 @@ pub fn remark_lining(remarks: &mut Remarks, lining: &Lining, fitted_index: Optio
         );
         remarks.caution(Caution::FromMemory);
     }
-    if lining.row().is_some_and(|row| row.has_asbestos) {
+    if lining.parts().origin.contains_asbestos {
         remarks.caution(Caution::Asbestos);
     }
 }

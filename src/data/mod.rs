@@ -1,3 +1,6 @@
 //! Published tables as reviewable text, each row with its source.
 
 pub mod disc_materials;
+pub mod friction_codes;
+pub mod linings;
+mod printed;

@@ -1,4 +1,5 @@
 mod disc;
 mod heat;
+mod lining;
 mod motion;
 mod pad;

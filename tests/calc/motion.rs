@@ -1,13 +1,16 @@
 //! What must hold for every stop.
 
 use brakewright::calc::machine::{
-    Conveyor, ConveyorParts, Direction, Geometry, GeometryParts, Hoist, HoistParts, Machine, Situation, Vehicle,
-    VehicleParts,
+    Conveyor, ConveyorParts, Direction, Geometry, GeometryParts, Hoist, HoistParts, Machine,
+    Situation, Vehicle, VehicleParts,
 };
 use brakewright::calc::motion::{
-    Coordinate, Delays, Demand, Ending, Forces, LimitedBy, Phase, Reduced, Stop, Tires, Wheelbase, stop,
+    Coordinate, Delays, Demand, Ending, Forces, LimitedBy, Phase, Reduced, Stop, Tires, Wheelbase,
+    stop,
 };
-use brakewright::calc::quantity::{Angle, Area, Length, Mass, MassDensity, MomentOfInertia, Si, Time};
+use brakewright::calc::quantity::{
+    Angle, Area, Length, Mass, MassDensity, MomentOfInertia, Si, Time,
+};
 use proptest::prelude::*;
 
 use crate::support::close::{assert_close, assert_within};
@@ -261,22 +264,32 @@ fn a_stop_in_the_dead_time_ends_there_if_nothing_reverses_it() {
     let stop = stop(&forces, &demand(0.3, 0.0, delays(0.0, 5.0, 0.0))).unwrap();
     assert_eq!(stop.ending, Ending::Reached(None));
     assert_close(stop.path.end().time, 1.0, 1e-12);
-    assert_eq!(stop.path.phases().iter().map(|phase| phase.phase).collect::<Vec<_>>(), [Phase::Dead]);
+    assert_eq!(
+        stop.path.phases().iter().map(|phase| phase.phase).collect::<Vec<_>>(),
+        [Phase::Dead]
+    );
 }
 
 /// By hand: terminal speed v = √((drive − brake)/C) = √(1000/2.5) = 20 m/s.
 #[test]
 fn a_brake_too_weak_tends_to_a_terminal_speed() {
     let system = Reduced { drag: 2.5, ..body(3000.0, 0.0) };
-    let stop = stop(&Forces::new(system, [2000.0, 0.0]), &demand(30.0, 0.0, delays(0.0, 0.0, 0.5))).unwrap();
-    let Ending::NotReached { tending_speed: Some(speed) } = stop.ending else { panic!("{:?}", stop.ending) };
+    let stop = stop(&Forces::new(system, [2000.0, 0.0]), &demand(30.0, 0.0, delays(0.0, 0.0, 0.5)))
+        .unwrap();
+    let Ending::NotReached { tending_speed: Some(speed) } = stop.ending else {
+        panic!("{:?}", stop.ending)
+    };
     assert_close(speed, 20.0, 1e-9);
     assert_eq!((stop.driving, stop.available), (3000.0, 2000.0));
 }
 
 #[test]
 fn a_brake_too_weak_without_drag_tends_to_no_speed() {
-    let stop = stop(&Forces::new(body(3000.0, 0.0), [2000.0, 0.0]), &demand(3.0, 0.0, delays(0.1, 0.1, 0.5))).unwrap();
+    let stop = stop(
+        &Forces::new(body(3000.0, 0.0), [2000.0, 0.0]),
+        &demand(3.0, 0.0, delays(0.1, 0.1, 0.5)),
+    )
+    .unwrap();
     assert_eq!(stop.ending, Ending::NotReached { tending_speed: None });
 }
 
@@ -330,7 +343,11 @@ fn the_rear_wheel_lifts_where_statics_says() {
         front_axle_to_center_of_gravity: Length::from_si(0.6),
     };
     for adhesion in [None, Some(0.9)] {
-        let parts = VehicleParts { adhesion, geometry: Some(Geometry::new(geometry).unwrap()), ..vehicle_parts() };
+        let parts = VehicleParts {
+            adhesion,
+            geometry: Some(Geometry::new(geometry).unwrap()),
+            ..vehicle_parts()
+        };
         let machine = Machine::Vehicle(Vehicle::new(parts).unwrap());
         let now = Forces::new(machine.reduced(&Situation::level()), [1e5, 1e4]).at(1.0, 10.0);
         assert_eq!(now.limited_by, LimitedBy::RearWheelLift);
@@ -354,8 +371,10 @@ fn a_hoist_reduces_to_its_load() {
     };
     let machine = Machine::Hoist(Hoist::new(hoist).unwrap());
     assert_close(machine.shaft_per_coordinate(None), 100.0, 1e-15);
-    let lowering = machine.reduced(&Situation { direction: Direction::Lowering, ..Situation::level() });
-    let raising = machine.reduced(&Situation { direction: Direction::Raising, ..Situation::level() });
+    let lowering =
+        machine.reduced(&Situation { direction: Direction::Lowering, ..Situation::level() });
+    let raising =
+        machine.reduced(&Situation { direction: Direction::Raising, ..Situation::level() });
     assert_close(lowering.inertia(), 20_700.0, 1e-15);
     assert_close(lowering.outside, 300.0 * GRAVITY * 0.9, 1e-15);
     assert_close(raising.outside, -300.0 * GRAVITY / 0.9, 1e-15);

@@ -1,3 +1,4 @@
 mod heat;
+mod linings;
 mod motion;
 mod pads;

@@ -108,7 +108,8 @@ fn computed(input: &Input, case: FrictionCase, remarks: &mut Remarks) -> CaseOut
         peak_pressure,
         pressure_utilization: parts
             .lining
-            .max_pressure()
+            .parts()
+            .max_pressure
             .map(|limit| peak_pressure.si() / limit.value.si()),
         needed,
         operator_stroke,

@@ -73,7 +73,7 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
         faults.positive("clamp_force", force);
     }
     let at_limit = || {
-        let limit = input.lining.max_pressure()?;
+        let limit = input.lining.parts().max_pressure?;
         Some(input.pressure_distribution.clamp_force_at_peak(&input.pad, limit.value))
     };
     let Some(clamp_force) = input.clamp_force.or_else(at_limit) else {

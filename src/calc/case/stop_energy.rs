@@ -268,7 +268,7 @@ fn compare(
     );
     compare_limit(
         remarks,
-        lining.max_power_flux(),
+        lining.parts().max_power_flux,
         power,
         on_brake.peak_power_flux.si(),
         index,
@@ -282,7 +282,7 @@ fn compare(
     );
     compare_limit(
         remarks,
-        lining.max_energy_flux(),
+        lining.parts().max_energy_flux,
         energy,
         on_brake.energy_flux.si(),
         index,
@@ -299,7 +299,7 @@ fn compare(
     );
     compare_limit_above(
         remarks,
-        lining.max_temperature_peak(),
+        lining.parts().max_temperature_peak,
         peak,
         disc.surface_peak_temperature.si(),
         (index, case),
@@ -319,7 +319,7 @@ fn compare_bulk(
 ) {
     let parts = brake.parts();
     let disc_limit = parts.disc.as_ref().and_then(|disc| disc.material().max_temperature());
-    let lining_limit = parts.lining.max_temperature_continuous();
+    let lining_limit = parts.lining.parts().max_temperature_continuous;
     let what = "the bulk temperature of the disc";
     let disc_is_lower = match (disc_limit, lining_limit) {
         (Some(disc), Some(lining)) => disc.si() < lining.value.si(),
