@@ -23,25 +23,20 @@ const SMALLER_PART: f64 = 0.381_966_011_250_105_15;
 impl Slab {
     /// When the heated face is hottest, and how much warmer than at the start.
     ///
-    /// Looks at every node and at places between, then narrows each summit; the work is bounded.
+    /// Looks at every node and at places between, then narrows the summits of each straight part, its
+    /// ends included: two summits may stand close on either side of a node. The work is bounded.
     /// The time is exact to about 1e-8 of the distance between the places, the rise to rounding.
     #[must_use]
     pub fn surface_peak(&self, flux: &PiecewiseLinearFlux) -> (Time, TemperatureInterval) {
         let rise = |time: f64| self.rise(flux.changes(), time, 1.0);
-        let looks: Vec<Look> = self.places(flux).into_iter().map(|at| (at, rise(at))).collect();
-        let mut best = (0.0, 0.0);
-        for_summits(&looks, |from, to| best = higher(best, narrowed(&rise, from, to)));
-        (Time::from_si(best.0), TemperatureInterval::from_si(best.1))
-    }
-
-    fn places(&self, flux: &PiecewiseLinearFlux) -> Vec<f64> {
         let diffusion_time = self.diffusion_time().si();
-        let mut places: Vec<f64> =
-            flux.segments().flat_map(|segment| within(&segment, diffusion_time)).collect();
-        places.push(flux.end().si());
-        places.sort_by(f64::total_cmp);
-        places.dedup();
-        places
+        let mut best = (0.0, 0.0);
+        for segment in flux.segments() {
+            let places = places(&segment, diffusion_time).into_iter();
+            let looks: Vec<Look> = places.map(|at| (at, rise(at))).collect();
+            for_summits(&looks, |from, to| best = higher(best, narrowed(&rise, from, to)));
+        }
+        (Time::from_si(best.0), TemperatureInterval::from_si(best.1))
     }
 }
 
@@ -52,13 +47,17 @@ fn higher(one: Look, other: Look) -> Look {
     if other.1 > one.1 { other } else { one }
 }
 
-/// The start of a straight part and places in it: even, and close to its ends.
-fn within(segment: &Segment, diffusion_time: f64) -> Vec<f64> {
+/// Both ends of a straight part and places in it: even, and close to its ends.
+fn places(segment: &Segment, diffusion_time: f64) -> Vec<f64> {
     let (from, to) = (segment.from.0, segment.to.0);
     let even = (0..CUTS).map(|cut| from + (to - from) * f64::from(cut) / f64::from(CUTS));
     let close = CLOSE.into_iter().map(|share| share * diffusion_time);
     let near_ends = close.flat_map(|distance| [from + distance, to - distance]);
-    even.chain(near_ends.filter(|place| *place > from && *place < to)).collect()
+    let inside = near_ends.filter(|place| *place > from && *place < to);
+    let mut places: Vec<f64> = even.chain(inside).chain([to]).collect();
+    places.sort_by(f64::total_cmp);
+    places.dedup();
+    places
 }
 
 /// Calls `visit` with both sides of every place that is not lower than its neighbors.

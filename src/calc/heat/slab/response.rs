@@ -80,10 +80,10 @@ pub(super) fn transient(fourier: f64, x: f64, step: f64, slope: f64) -> f64 {
     let first = libm::exp(-PI * PI * fourier);
     let depth = PI * (1.0 - x);
     let (mut sum, mut n, mut decay, mut ratio) = (0.0, 1.0, first, first * first * first);
-    // decay = first^(n²): after n = 12 at the smallest Fourier number it is below 1e-18.
-    while n < 14.0 && decay > 1e-20 {
+    // decay = first^(n²); at the smallest Fourier number twelve terms stand above 1e-20.
+    while decay > 1e-20 {
         let n2 = n * n;
-        let wave = libm::cos(n * depth);
+        let wave = if depth > 0.0 { libm::cos(n * depth) } else { 1.0 };
         sum += decay * wave / n2 * (slope / (PI * PI * n2) - step);
         decay *= ratio;
         ratio *= first * first;

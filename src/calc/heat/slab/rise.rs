@@ -38,7 +38,7 @@ impl Slab {
         TemperatureInterval::from_si(flux.energy_until(time).si() / capacity)
     }
 
-    /// The rise of the heated face at `time` ([`response::SLAB_SURFACE`]).
+    /// The rise of the heated face at `time` ([`super::SLAB_SURFACE`]).
     #[must_use]
     pub fn surface_rise_at(&self, flux: &PiecewiseLinearFlux, time: Time) -> TemperatureInterval {
         self.rise_at(flux, time, 1.0)
