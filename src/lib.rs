@@ -1,3 +1,7 @@
 //! Brakewright computes disc brakes.
 
+pub mod api;
 pub mod calc;
+pub mod probe;
+pub mod server;
+pub mod settings;

@@ -1,0 +1,273 @@
+//! Failures as RFC 9457 problem documents: a closed table of kinds, and the document itself.
+
+use axum::body::Body;
+use axum::http::header::{CONTENT_TYPE, RETRY_AFTER};
+use axum::http::{HeaderName, HeaderValue, Response, StatusCode};
+use axum::response::IntoResponse;
+use serde::Serialize;
+use utoipa::ToSchema;
+
+/// The media type of every failure.
+pub const PROBLEM_JSON: &str = "application/problem+json";
+
+/// Most faults that one answer lists; `error_count` has the true number.
+pub const MOST_ERRORS: usize = 100;
+
+/// Seconds after which a client that met a busy or leaving replica should try again.
+const RETRY_SECONDS: HeaderValue = HeaderValue::from_static("1");
+
+macro_rules! problem_kinds {
+    ($($name:ident = $code:literal, $status:ident, $title:literal, $meaning:literal;)*) => {
+        /// Why there is no answer. Clients tell the kinds apart by `type`.
+        #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+        pub enum ProblemKind { $(#[doc = $meaning] $name,)* }
+
+        impl ProblemKind {
+            /// Every kind, in the order of this table.
+            pub const ALL: &'static [Self] = &[$(Self::$name,)*];
+
+            /// The last segment of the kind's `type`.
+            #[must_use]
+            pub const fn code(self) -> &'static str {
+                match self { $(Self::$name => $code,)* }
+            }
+
+            /// The `type`: a relative reference that this service resolves to a page.
+            #[must_use]
+            pub const fn type_reference(self) -> &'static str {
+                match self { $(Self::$name => concat!("/problems/", $code),)* }
+            }
+
+            /// The HTTP status it is sent with.
+            #[must_use]
+            pub const fn status(self) -> StatusCode {
+                match self { $(Self::$name => StatusCode::$status,)* }
+            }
+
+            /// A few words for people, the same on every occurrence.
+            #[must_use]
+            pub const fn title(self) -> &'static str {
+                match self { $(Self::$name => $title,)* }
+            }
+
+            /// What it means and what the client can do.
+            #[must_use]
+            pub const fn meaning(self) -> &'static str {
+                match self { $(Self::$name => $meaning,)* }
+            }
+        }
+    };
+}
+
+problem_kinds! {
+    BadRequest = "bad_request", BAD_REQUEST, "The request cannot be understood",
+        "The address, the headers or the transfer of the request is broken.";
+    MalformedJson = "malformed_json", BAD_REQUEST, "The body is not JSON",
+        "The body could not be read as JSON text; `line` and `column` say where reading stopped.";
+    DuplicateMember = "duplicate_member", BAD_REQUEST, "A member is given twice",
+        "An object in the body names the member at `pointer` more than once, so its value would be a guess.";
+    NotFound = "not_found", NOT_FOUND, "Nothing is here",
+        "No endpoint or catalog row has this address; `/openapi.json` lists the endpoints.";
+    MethodNotAllowed = "method_not_allowed", METHOD_NOT_ALLOWED, "The method is not allowed here",
+        "The address exists and answers other methods, which the header `Allow` lists.";
+    NotAcceptable = "not_acceptable", NOT_ACCEPTABLE, "No acceptable form of the answer",
+        "The header `Accept` admits none of the media types that this endpoint can answer with.";
+    RequestTimeout = "request_timeout", REQUEST_TIMEOUT, "The request took too long",
+        "The body did not arrive, or the answer was not ready, within the time limit. Retrying is safe.";
+    PayloadTooLarge = "payload_too_large", PAYLOAD_TOO_LARGE, "The body is too large",
+        "The body exceeds the size limit of this endpoint.";
+    UnsupportedMediaType = "unsupported_media_type", UNSUPPORTED_MEDIA_TYPE, "The body is of the wrong kind",
+        "The body must be uncompressed JSON, declared as `Content-Type: application/json`.";
+    InvalidRequest = "invalid_request", UNPROCESSABLE_ENTITY, "The request is not valid",
+        "The body is JSON but not a valid request; `errors` lists every fault with its place, up to 100.";
+    TooManyRequests = "too_many_requests", TOO_MANY_REQUESTS, "Too many requests",
+        "This client sent more than its share; `Retry-After` says when to try again.";
+    Internal = "internal", INTERNAL_SERVER_ERROR, "The service has a defect",
+        "The service failed on this request. Please report it with the `instance`.";
+    Overloaded = "overloaded", SERVICE_UNAVAILABLE, "The service is busy",
+        "As many requests as this replica takes are in progress; `Retry-After` says when to try again.";
+    Draining = "draining", SERVICE_UNAVAILABLE, "The service is shutting down",
+        "This replica finishes its work and takes no more; another one will answer.";
+}
+
+impl ProblemKind {
+    /// The kind that stands for a status which something else than this service's own code chose.
+    #[must_use]
+    pub fn of_status(status: StatusCode) -> Self {
+        let catch_all = if status.is_server_error() { Self::Internal } else { Self::BadRequest };
+        // The table lists the general kind of a status before its special cases.
+        Self::ALL.iter().find(|kind| kind.status() == status).copied().unwrap_or(catch_all)
+    }
+}
+
+/// One fault of a request body.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize, ToSchema)]
+pub struct ErrorItem {
+    /// Where: an RFC 6901 pointer into the body in fragment form, such as `#/pad/outer_radius`.
+    #[schema(example = "#/pad/outer_radius")]
+    pub pointer: String,
+    /// Why, for programs.
+    #[schema(value_type = String, example = "not_above_inner_radius")]
+    pub code: &'static str,
+    /// Why, for people.
+    pub detail: String,
+}
+
+/// A failure, as RFC 9457 describes it. There is no result beside it.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize, ToSchema)]
+pub struct Problem {
+    /// Which kind of problem: a reference, relative to the service, that resolves to an explanation.
+    #[serde(rename = "type")]
+    #[schema(value_type = String, format = "uri-reference", example = "/problems/invalid_request")]
+    type_reference: &'static str,
+    /// The kind in a few words.
+    #[schema(value_type = String)]
+    title: &'static str,
+    /// The HTTP status, repeated.
+    #[schema(minimum = 400, maximum = 599)]
+    status: u16,
+    /// What went wrong this time.
+    detail: String,
+    /// This very occurrence: a URN made of the request id.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false, format = "uri-reference")]
+    instance: Option<String>,
+    /// Line of the body at which reading it as JSON stopped, from 1.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false, minimum = 0)]
+    line: Option<usize>,
+    /// Column of that line, from 1; 0 if the body ended before the line had a character.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false, minimum = 0)]
+    column: Option<usize>,
+    /// The member that the problem is about.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pointer: Option<String>,
+    /// How many faults were found in the body.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false, minimum = 1)]
+    error_count: Option<usize>,
+    /// The faults found, at most 100 of them.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    #[schema(max_items = 100)]
+    errors: Vec<ErrorItem>,
+    #[serde(skip)]
+    #[schema(ignore)]
+    headers: Vec<(HeaderName, HeaderValue)>,
+}
+
+impl Problem {
+    /// A problem of a kind, with what happened this time.
+    #[must_use]
+    pub fn new(kind: ProblemKind, detail: impl Into<String>) -> Self {
+        let problem = Self {
+            type_reference: kind.type_reference(),
+            title: kind.title(),
+            status: kind.status().as_u16(),
+            detail: detail.into(),
+            instance: None,
+            line: None,
+            column: None,
+            pointer: None,
+            error_count: None,
+            errors: Vec::new(),
+            headers: Vec::new(),
+        };
+        match kind.status() {
+            StatusCode::SERVICE_UNAVAILABLE => problem.with_header(RETRY_AFTER, RETRY_SECONDS),
+            _ => problem,
+        }
+    }
+
+    /// A body that is JSON but not a valid request.
+    ///
+    /// `total` is the true number of faults; the first [`MOST_ERRORS`] of `errors` are listed.
+    #[must_use]
+    pub fn invalid(mut errors: Vec<ErrorItem>, total: usize) -> Self {
+        errors.truncate(MOST_ERRORS);
+        let total = total.max(errors.len());
+        let detail = match errors.as_slice() {
+            [only] if total == 1 => only.detail.clone(),
+            listed if listed.len() < total => {
+                format!("{total} faults were found; the first {} are listed", listed.len())
+            }
+            _ => format!("{total} faults were found"),
+        };
+        let mut problem = Self::new(ProblemKind::InvalidRequest, detail);
+        problem.error_count = Some(total);
+        problem.errors = errors;
+        problem
+    }
+
+    /// A body that is not JSON from `line` and `column` on.
+    #[must_use]
+    pub fn malformed(detail: impl Into<String>, line: usize, column: usize) -> Self {
+        let mut problem = Self::new(ProblemKind::MalformedJson, detail);
+        (problem.line, problem.column) = (Some(line), Some(column));
+        problem
+    }
+
+    /// A body in which the member at `pointer` occurs twice in one object.
+    #[must_use]
+    pub fn duplicate(pointer: String) -> Self {
+        let detail = "a member may be given only once in an object";
+        let mut problem = Self::new(ProblemKind::DuplicateMember, detail);
+        problem.pointer = Some(pointer);
+        problem
+    }
+
+    /// The problem that stands for an answer which is not a problem document yet.
+    #[must_use]
+    pub fn of_status(status: StatusCode) -> Self {
+        let kind = ProblemKind::of_status(status);
+        // The status of the answer is kept, so that what the kind does not know is not lost.
+        Self { status: status.as_u16(), ..Self::new(kind, kind.meaning()) }
+    }
+
+    /// The same problem, sent with one more header.
+    #[must_use]
+    pub fn with_header(mut self, name: HeaderName, value: HeaderValue) -> Self {
+        self.headers.push((name, value));
+        self
+    }
+
+    /// The same problem, with the URN of the request it happened to.
+    #[must_use]
+    pub fn at_instance(mut self, instance: String) -> Self {
+        self.instance = Some(instance);
+        self
+    }
+
+    /// The HTTP status.
+    #[must_use]
+    pub fn status(&self) -> StatusCode {
+        StatusCode::from_u16(self.status).unwrap_or(StatusCode::INTERNAL_SERVER_ERROR)
+    }
+
+    /// The faults of the body that are listed.
+    #[must_use]
+    pub fn errors(&self) -> &[ErrorItem] {
+        &self.errors
+    }
+
+    /// The document as JSON text.
+    #[must_use]
+    pub fn to_json(&self) -> Vec<u8> {
+        // Strings and numbers only: serialising cannot fail.
+        serde_json::to_vec(self).unwrap_or_default()
+    }
+}
+
+impl IntoResponse for Problem {
+    /// The document, and itself as an extension: the layers add the `instance`.
+    fn into_response(self) -> Response<Body> {
+        let mut response = Response::new(Body::from(self.to_json()));
+        *response.status_mut() = self.status();
+        let headers = response.headers_mut();
+        headers.insert(CONTENT_TYPE, HeaderValue::from_static(PROBLEM_JSON));
+        headers.extend(self.headers.iter().cloned());
+        response.extensions_mut().insert(self);
+        response
+    }
+}
