@@ -25,11 +25,11 @@ pub fn probe(listen: SocketAddr) -> Result<(), String> {
 }
 
 fn reachable(listen: SocketAddr) -> SocketAddr {
-    let ip = match listen.ip() {
-        IpAddr::V4(ip) if ip.is_unspecified() => IpAddr::V4(Ipv4Addr::LOCALHOST),
-        IpAddr::V6(ip) if ip.is_unspecified() => IpAddr::V6(Ipv6Addr::LOCALHOST),
-        ip => ip,
-    };
+    if !listen.ip().is_unspecified() {
+        return listen;
+    }
+    let ip: IpAddr =
+        if listen.is_ipv4() { Ipv4Addr::LOCALHOST.into() } else { Ipv6Addr::LOCALHOST.into() };
     SocketAddr::new(ip, listen.port())
 }
 

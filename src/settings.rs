@@ -64,7 +64,7 @@ pub struct Settings {
     /// Most requests in progress at once; more are answered 503.
     #[arg(long, env = "BRAKEWRIGHT_MAX_CONCURRENCY", global = true, value_name = "COUNT", default_value = "1024", value_parser = clap::value_parser!(u32).range(1..=1_000_000))]
     pub max_concurrency: u32,
-    /// Longest time to finish requests in progress when told to stop, as for REQUEST_TIMEOUT.
+    /// Longest time to finish requests in progress when told to stop, in seconds or milliseconds.
     #[arg(long, env = "BRAKEWRIGHT_DRAIN_TIMEOUT", global = true, value_name = "TIME", default_value = "20s", value_parser = duration)]
     pub drain_timeout: Duration,
 }

@@ -81,8 +81,7 @@ impl<T: Serialize> IntoResponse for Answer<T> {
             Ok(text) => ([(CONTENT_TYPE, HeaderValue::from_static(JSON))], text).into_response(),
             Err(error) => {
                 tracing::error!(%error, "an answer cannot be written as JSON");
-                let kind = ProblemKind::Internal;
-                Problem::new(kind, kind.meaning()).into_response()
+                Problem::of_kind(ProblemKind::Internal).into_response()
             }
         }
     }

@@ -63,8 +63,7 @@ pub(super) async fn ready(
     Extension(readiness): Extension<Readiness>,
 ) -> Result<Answer<Health>, Problem> {
     if readiness.is_draining() {
-        let kind = ProblemKind::Draining;
-        return Err(Problem::new(kind, kind.meaning()));
+        return Err(Problem::of_kind(ProblemKind::Draining));
     }
     Ok(Answer(Health { status: HealthStatus::Ok }))
 }

@@ -31,7 +31,7 @@ const CONTENT_POLICY: HeaderValue = HeaderValue::from_static(
 );
 
 /// Browsers need not ask again for two hours; a JSON `POST` from another origin always asks first.
-const PREFLIGHT_LIFETIME: Duration = Duration::from_secs(2 * 60 * 60);
+const PREFLIGHT_LIFETIME: Duration = Duration::from_hours(2);
 
 /// The limits within which requests are served.
 #[derive(Debug, Clone)]
@@ -94,12 +94,10 @@ async fn shed(
     if request.uri().path().starts_with("/health/") {
         return next.run(request).await;
     }
-    match places.try_acquire() {
-        Ok(_place) => next.run(request).await,
-        Err(_) => {
-            let kind = ProblemKind::Overloaded;
-            Problem::new(kind, kind.meaning()).into_response()
-        }
+    if let Ok(_place) = places.try_acquire() {
+        next.run(request).await
+    } else {
+        Problem::of_kind(ProblemKind::Overloaded).into_response()
     }
 }
 
@@ -134,14 +132,7 @@ async fn as_problem(response: Response<Body>) -> Response<Body> {
     for body_header in [CONTENT_TYPE, CONTENT_LENGTH, CONTENT_ENCODING] {
         kept.remove(body_header);
     }
-    let allow = kept.get(ALLOW).and_then(|value| value.to_str().ok());
-    let problem = match allow {
-        Some(methods) if status == StatusCode::METHOD_NOT_ALLOWED => {
-            Problem::new(ProblemKind::MethodNotAllowed, format!("allowed here: {methods}"))
-        }
-        _ => Problem::of_status(status),
-    };
-    let mut response = problem.into_response();
+    let mut response = Problem::of_status(status).into_response();
     response.headers_mut().extend(kept);
     response
 }
@@ -164,6 +155,5 @@ async fn protect(request: Request, next: Next) -> Response<Body> {
 /// Answers for a handler that panicked. What it said may hold a request's data and goes nowhere.
 fn after_panic(_: Box<dyn Any + Send + 'static>) -> Response<Body> {
     tracing::error!("a request handler panicked");
-    let kind = ProblemKind::Internal;
-    Problem::new(kind, kind.meaning()).into_response()
+    Problem::of_kind(ProblemKind::Internal).into_response()
 }

@@ -21,10 +21,8 @@ pub fn from_31(mut document: Value) -> Value {
         paths.retain(|_, item| !uses_stream(item));
         paths.values_mut().for_each(find_schemas);
     }
-    if let Some(Value::Object(components)) = document.get_mut("components") {
-        if let Some(Value::Object(schemas)) = components.get_mut("schemas") {
-            schemas.values_mut().for_each(convert);
-        }
+    if let Some(Value::Object(schemas)) = document.pointer_mut("/components/schemas") {
+        schemas.values_mut().for_each(convert);
     }
     document
 }

@@ -5,7 +5,8 @@ use axum::http::header::{CONTENT_TYPE, RETRY_AFTER};
 use axum::http::{HeaderName, HeaderValue, Response, StatusCode};
 use axum::response::IntoResponse;
 use serde::Serialize;
-use utoipa::ToSchema;
+use utoipa::openapi::{RefOr, Schema};
+use utoipa::{PartialSchema, ToSchema};
 
 /// The media type of every failure.
 pub const PROBLEM_JSON: &str = "application/problem+json";
@@ -113,9 +114,26 @@ pub struct ErrorItem {
     pub detail: String,
 }
 
+/// A failure, to be answered as RFC 9457 describes it.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+#[serde(transparent)]
+pub struct Problem(Box<Document>);
+
+impl PartialSchema for Problem {
+    fn schema() -> RefOr<Schema> {
+        Document::schema()
+    }
+}
+
+impl ToSchema for Problem {
+    fn schemas(schemas: &mut Vec<(String, RefOr<Schema>)>) {
+        Document::schemas(schemas);
+    }
+}
+
 /// A failure, as RFC 9457 describes it. There is no result beside it.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize, ToSchema)]
-pub struct Problem {
+struct Document {
     /// Which kind of problem: a reference, relative to the service, that resolves to an explanation.
     #[serde(rename = "type")]
     #[schema(value_type = String, format = "uri-reference", example = "/problems/invalid_request")]
@@ -161,7 +179,7 @@ impl Problem {
     /// A problem of a kind, with what happened this time.
     #[must_use]
     pub fn new(kind: ProblemKind, detail: impl Into<String>) -> Self {
-        let problem = Self {
+        let problem = Self(Box::new(Document {
             type_reference: kind.type_reference(),
             title: kind.title(),
             status: kind.status().as_u16(),
@@ -173,11 +191,17 @@ impl Problem {
             error_count: None,
             errors: Vec::new(),
             headers: Vec::new(),
-        };
-        match kind.status() {
-            StatusCode::SERVICE_UNAVAILABLE => problem.with_header(RETRY_AFTER, RETRY_SECONDS),
-            _ => problem,
+        }));
+        if kind.status() == StatusCode::SERVICE_UNAVAILABLE {
+            return problem.with_header(RETRY_AFTER, RETRY_SECONDS);
         }
+        problem
+    }
+
+    /// A problem of a kind of which there is nothing more to say.
+    #[must_use]
+    pub fn of_kind(kind: ProblemKind) -> Self {
+        Self::new(kind, kind.meaning())
     }
 
     /// A body that is JSON but not a valid request.
@@ -195,8 +219,8 @@ impl Problem {
             _ => format!("{total} faults were found"),
         };
         let mut problem = Self::new(ProblemKind::InvalidRequest, detail);
-        problem.error_count = Some(total);
-        problem.errors = errors;
+        problem.0.error_count = Some(total);
+        problem.0.errors = errors;
         problem
     }
 
@@ -204,7 +228,7 @@ impl Problem {
     #[must_use]
     pub fn malformed(detail: impl Into<String>, line: usize, column: usize) -> Self {
         let mut problem = Self::new(ProblemKind::MalformedJson, detail);
-        (problem.line, problem.column) = (Some(line), Some(column));
+        (problem.0.line, problem.0.column) = (Some(line), Some(column));
         problem
     }
 
@@ -213,7 +237,7 @@ impl Problem {
     pub fn duplicate(pointer: String) -> Self {
         let detail = "a member may be given only once in an object";
         let mut problem = Self::new(ProblemKind::DuplicateMember, detail);
-        problem.pointer = Some(pointer);
+        problem.0.pointer = Some(pointer);
         problem
     }
 
@@ -222,33 +246,35 @@ impl Problem {
     pub fn of_status(status: StatusCode) -> Self {
         let kind = ProblemKind::of_status(status);
         // The status of the answer is kept, so that what the kind does not know is not lost.
-        Self { status: status.as_u16(), ..Self::new(kind, kind.meaning()) }
+        let mut problem = Self::of_kind(kind);
+        problem.0.status = status.as_u16();
+        problem
     }
 
     /// The same problem, sent with one more header.
     #[must_use]
     pub fn with_header(mut self, name: HeaderName, value: HeaderValue) -> Self {
-        self.headers.push((name, value));
+        self.0.headers.push((name, value));
         self
     }
 
     /// The same problem, with the URN of the request it happened to.
     #[must_use]
     pub fn at_instance(mut self, instance: String) -> Self {
-        self.instance = Some(instance);
+        self.0.instance = Some(instance);
         self
     }
 
     /// The HTTP status.
     #[must_use]
     pub fn status(&self) -> StatusCode {
-        StatusCode::from_u16(self.status).unwrap_or(StatusCode::INTERNAL_SERVER_ERROR)
+        StatusCode::from_u16(self.0.status).unwrap_or(StatusCode::INTERNAL_SERVER_ERROR)
     }
 
     /// The faults of the body that are listed.
     #[must_use]
     pub fn errors(&self) -> &[ErrorItem] {
-        &self.errors
+        &self.0.errors
     }
 
     /// The document as JSON text.
@@ -266,7 +292,7 @@ impl IntoResponse for Problem {
         *response.status_mut() = self.status();
         let headers = response.headers_mut();
         headers.insert(CONTENT_TYPE, HeaderValue::from_static(PROBLEM_JSON));
-        headers.extend(self.headers.iter().cloned());
+        headers.extend(self.0.headers.iter().cloned());
         response.extensions_mut().insert(self);
         response
     }

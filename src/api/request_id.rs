@@ -2,7 +2,6 @@
 
 use axum::body::Body;
 use axum::extract::Request;
-use axum::http::header::CONTENT_LENGTH;
 use axum::http::{HeaderName, HeaderValue, Response};
 use axum::middleware::Next;
 use tower_http::request_id::{MakeRequestId, MakeRequestUuid};
@@ -43,7 +42,6 @@ pub(super) async fn identify(mut request: Request, next: Next) -> Response<Body>
     let mut response = next.run(request).await;
     if let Some(problem) = response.extensions_mut().remove::<Problem>() {
         *response.body_mut() = Body::from(problem.at_instance(id.urn()).to_json());
-        response.headers_mut().remove(CONTENT_LENGTH);
     }
     response.headers_mut().insert(REQUEST_ID, id.0);
     response

@@ -38,7 +38,9 @@ impl Found {
                 self.push(|| unknown_member(violation, schema, name));
             }
         } else if let Some(meant) = branch_meant(violation) {
-            meant.iter().for_each(|inner| self.add(inner, schema));
+            for inner in meant {
+                self.add(inner, schema);
+            }
         } else {
             self.push(|| fault(violation, schema));
         }
@@ -137,10 +139,8 @@ fn wrong_type(place: &Value, expected: &Value, value: &Value) -> String {
     if value.is_number() && is_quantity {
         return format!("a quantity needs its unit: write {{\"value\": {value}, \"unit\": ...}}");
     }
-    let names: Vec<&str> = match expected {
-        Value::Array(several) => several.iter().filter_map(Value::as_str).map(type_name).collect(),
-        one => one.as_str().map(type_name).into_iter().collect(),
-    };
+    let several = expected.as_array().map_or(std::slice::from_ref(expected), Vec::as_slice);
+    let names: Vec<&str> = several.iter().filter_map(Value::as_str).map(type_name).collect();
     format!("must be {}, not {}", names.join(" or "), name_of(value))
 }
 

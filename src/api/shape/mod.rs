@@ -31,23 +31,33 @@ pub fn decode<T>(body: &[u8], more_units: MoreUnits) -> Result<T, Problem>
 where
     T: DeserializeOwned + ToSchema + 'static,
 {
-    serde_json::from_slice(body).map_err(|_| explain::<T>(body, more_units))
+    match serde_json::from_slice(body) {
+        Ok(value) if !mentions_null(body) => Ok(value),
+        // To the decoder an optional member may be null; to the schema, and to clients, it may not.
+        Ok(value) => explain::<T>(body, more_units).map_or(Ok(value), Err),
+        Err(_) => {
+            let found = explain::<T>(body, more_units);
+            Err(found.unwrap_or_else(|| net::reason::<T>(body)))
+        }
+    }
 }
 
-/// Finds out why `body` is not a `T`. The order matters: a later step relies on what an earlier one excludes.
-fn explain<T>(body: &[u8], more_units: MoreUnits) -> Problem
-where
-    T: DeserializeOwned + ToSchema + 'static,
-{
+/// Whether the letters occur, be it as a value or in a text.
+fn mentions_null(body: &[u8]) -> bool {
+    body.windows(4).any(|letters| letters == b"null")
+}
+
+/// Finds out what is wrong with `body`. The order matters: a later step relies on what an earlier one excludes.
+fn explain<T: ToSchema + 'static>(body: &[u8], more_units: MoreUnits) -> Option<Problem> {
     let document: Value = match net::parse(body) {
         Ok(document) => document,
-        Err(problem) => return problem,
+        Err(problem) => return Some(problem),
     };
     if let Some(pointer) = duplicate::first(body) {
-        return Problem::duplicate(pointer);
+        return Some(Problem::duplicate(pointer));
     }
-    let found = shape_of::<T>(more_units).map(|shape| shape.faults(&document)).unwrap_or_default();
-    if found.total() > 0 { found.into_problem() } else { net::reason::<T>(body) }
+    let found = shape_of::<T>(more_units)?.faults(&document);
+    (found.total() > 0).then(|| found.into_problem())
 }
 
 /// The compiled schema of a request type.

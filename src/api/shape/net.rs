@@ -37,9 +37,9 @@ fn unreadable(error: &serde_json::Error, pointer: String) -> Problem {
 /// Why the decoder refuses a body in which the schema finds no fault.
 pub(super) fn reason<T: DeserializeOwned>(body: &[u8]) -> Problem {
     let mut deserializer = serde_json::Deserializer::from_slice(body);
-    let error = match serde_path_to_error::deserialize::<_, T>(&mut deserializer) {
-        Ok(_) => return Problem::malformed("the body goes on after the request's end", 1, 0),
-        Err(error) => error,
+    let outcome = serde_path_to_error::deserialize::<_, T>(&mut deserializer);
+    let Err(error) = outcome else {
+        return Problem::malformed("the body goes on after the request's end", 1, 0);
     };
     let (pointer, inner) = (pointer_of(error.path()), error.into_inner());
     debug_assert_eq!(inner.classify(), Category::Data, "the text has been parsed before");
