@@ -48,7 +48,7 @@ impl Drop for Line {
         let route = self.route.as_ref().map_or("-", MatchedPath::as_str);
         let request_id = self.request_id.as_ref().map_or("-", RequestId::as_str);
         let trace_id = self.trace_id.as_deref();
-        let duration_ms = self.start.elapsed().as_secs_f64() * 1e3;
+        let duration_ms = (self.start.elapsed().as_secs_f64() * 1e6).round() / 1e3;
         let Some(status) = self.status else {
             tracing::info!(method, route, duration_ms, request_id, trace_id, "client left");
             return;

@@ -11,6 +11,7 @@ pub mod openapi;
 pub mod openapi_30;
 pub mod pointer;
 pub mod problem;
+mod problem_kind;
 pub mod request_id;
 pub mod shape;
 pub mod v1;

@@ -35,7 +35,7 @@ async fn broken() -> Result<Answer<Echo>, Problem> {
 }
 
 async fn slow() -> Result<Answer<Echo>, Problem> {
-    tokio::time::sleep(Duration::from_secs(3600)).await;
+    tokio::time::sleep(Duration::from_hours(1)).await;
     Ok(Answer(Echo { word: "late".to_owned() }))
 }
 

@@ -6,9 +6,14 @@ use std::path::Path;
 
 use axum::body::Body;
 use axum::http::Request;
+use brakewright::api::extract::{Answer, Json};
 use brakewright::api::openapi::{openapi_30_json, openapi_json};
 use brakewright::api::openapi_30::from_31;
+use serde::Deserialize;
 use serde_json::{Value, json};
+use utoipa::ToSchema;
+use utoipa_axum::router::OpenApiRouter;
+use utoipa_axum::routes;
 
 use crate::support::client::TestApp;
 
@@ -35,7 +40,7 @@ fn references(part: &Value, found: &mut BTreeSet<String>) {
             members.values().for_each(|member| references(member, found));
         }
         Value::Array(items) => items.iter().for_each(|item| references(item, found)),
-        _ => {}
+        Value::Null | Value::Bool(_) | Value::Number(_) | Value::String(_) => {}
     }
 }
 
@@ -73,6 +78,44 @@ fn every_operation_says_what_it_does_and_how_it_fails() {
                 assert_eq!(schema["$ref"], "#/components/schemas/Problem", "{path} {failures}");
             }
         }
+    }
+}
+
+/// Calls `visit` with every list in a schema, through references; schemas in `seen` are not entered again.
+fn lists<'a>(
+    document: &'a Value,
+    schema: &'a Value,
+    seen: &mut BTreeSet<&'a str>,
+    visit: &mut dyn FnMut(&Value),
+) {
+    match schema {
+        Value::Object(members) => {
+            if let Some(Value::String(reference)) = members.get("$ref")
+                && seen.insert(reference)
+            {
+                let target = document.pointer(reference.strip_prefix('#').unwrap()).unwrap();
+                lists(document, target, seen, visit);
+            }
+            if members.get("type").is_some_and(|kind| kind == "array") {
+                visit(schema);
+            }
+            members.values().for_each(|member| lists(document, member, seen, visit));
+        }
+        Value::Array(items) => items.iter().for_each(|item| lists(document, item, seen, visit)),
+        Value::Null | Value::Bool(_) | Value::Number(_) | Value::String(_) => {}
+    }
+}
+
+#[test]
+fn every_list_of_a_request_is_bounded() {
+    let document = document();
+    let mut seen = BTreeSet::new();
+    for (path, item) in document["paths"].as_object().unwrap() {
+        let body = &item["post"]["requestBody"];
+        lists(&document, body, &mut seen, &mut |list| {
+            // A list that is too long is one fault; without a bound each of its items may be one.
+            assert!(list["maxItems"].is_u64(), "{path}: a list without maxItems: {list}");
+        });
     }
 }
 
@@ -119,11 +162,20 @@ async fn the_page_is_part_of_the_program_and_names_no_other_host() {
     let start = app.get("/docs/swagger-initializer.js", 200).await;
     assert!(app.get("/docs/swagger-ui-bundle.js", 200).await.body.len() > 100_000);
     app.get("/docs/no-such-file.js", 404).await;
-    if start.header("content-encoding").is_empty() {
-        let text = String::from_utf8_lossy(&start.body);
-        assert!(text.contains("../openapi.json"), "{text}");
-        assert!(!text.contains("http"), "{text}");
+    assert_eq!(start.header("content-encoding"), "");
+    let text = String::from_utf8_lossy(&start.body);
+    assert!(text.contains("../openapi.json"), "{text}");
+    assert!(!text.contains("http"), "{text}");
+}
+
+fn assert_3_0(schema: &Value) {
+    for keyword in ["const", "examples", "$defs", "prefixItems", "propertyNames"] {
+        assert!(schema.get(keyword).is_none(), "{keyword} in {schema}");
     }
+    assert!(!schema["type"].is_array(), "{schema}");
+    assert!(schema.get("$ref").is_none() || schema.as_object().unwrap().len() == 1, "{schema}");
+    schema["properties"].as_object().into_iter().flatten().for_each(|(_, part)| assert_3_0(part));
+    schema.get("items").into_iter().for_each(assert_3_0);
 }
 
 #[test]
@@ -135,19 +187,10 @@ fn the_older_description_has_no_keyword_that_3_0_lacks() {
         older["paths"].as_object().unwrap().len(),
         document()["paths"].as_object().unwrap().len()
     );
-    fn check(schema: &Value) {
-        for keyword in ["const", "examples", "$defs", "prefixItems", "propertyNames"] {
-            assert!(schema.get(keyword).is_none(), "{keyword} in {schema}");
-        }
-        assert!(!schema["type"].is_array(), "{schema}");
-        assert!(schema.get("$ref").is_none() || schema.as_object().unwrap().len() == 1, "{schema}");
-        schema["properties"].as_object().into_iter().flatten().for_each(|(_, part)| check(part));
-        schema.get("items").into_iter().for_each(check);
-    }
-    older["components"]["schemas"].as_object().unwrap().values().for_each(check);
+    older["components"]["schemas"].as_object().unwrap().values().for_each(assert_3_0);
 }
 
-fn converted(schema: Value) -> Value {
+fn converted(schema: &Value) -> Value {
     let document =
         json!({ "openapi": "3.1.0", "paths": {}, "components": { "schemas": { "S": schema } } });
     from_31(document)["components"]["schemas"]["S"].clone()
@@ -180,8 +223,31 @@ fn each_difference_between_the_versions_is_taken_back() {
         ),
     ];
     for (newer, older) in pairs {
-        assert_eq!(converted(newer.clone()), older, "{newer}");
+        assert_eq!(converted(&newer), older, "{newer}");
     }
+}
+
+/// A request of the tests only.
+#[derive(Debug, Deserialize, ToSchema)]
+#[expect(dead_code, reason = "only its shape matters here")]
+struct Question {
+    word: String,
+}
+
+/// Ask.
+#[utoipa::path(post, path = "/ask", responses((status = OK, description = "An answer.")))]
+async fn ask(request: Json<Question>) -> Answer<Value> {
+    Answer(json!({ "asked": request.body.len() }))
+}
+
+#[test]
+fn the_extractor_documents_the_body() {
+    let routes: OpenApiRouter = OpenApiRouter::default().routes(routes!(ask));
+    let document = serde_json::to_value(routes.into_openapi()).unwrap();
+    let body = &document["paths"]["/ask"]["post"]["requestBody"];
+    let schema = &body["content"]["application/json"]["schema"];
+    assert_eq!(schema["$ref"], "#/components/schemas/Question", "{document}");
+    assert_eq!(body["required"], true);
 }
 
 #[test]

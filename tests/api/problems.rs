@@ -310,20 +310,21 @@ async fn a_member_given_twice_is_refused_wherever_it_is() {
     }
 }
 
+/// Used with more units only: compiled schemas are kept by type.
+#[derive(Debug, Deserialize, ToSchema)]
+#[serde(deny_unknown_fields)]
+#[expect(dead_code, reason = "only its shape matters here")]
+struct Lengths {
+    one: TestLength,
+    other: TestLength,
+}
+
 #[test]
 fn more_units_are_accepted_and_the_published_ones_suggested() {
     let more = |plain: &[&str]| {
         assert_eq!(plain, ["mm", "in"]);
         vec!["MMT".to_owned(), "INH".to_owned(), "[in_i]".to_owned()]
     };
-    // Compiled apart from the service's own, which is kept by type.
-    #[derive(Debug, Deserialize, ToSchema)]
-    #[serde(deny_unknown_fields)]
-    #[expect(dead_code, reason = "only its shape matters here")]
-    struct Lengths {
-        one: TestLength,
-        other: TestLength,
-    }
     let body = br#"{"one": {"value": 1, "unit": "INH"}, "other": {"value": 1, "unit": "inch"}}"#;
     let problem = shape::decode::<Lengths>(body, more).unwrap_err();
     let [only] = problem.errors() else { panic!("{problem:?}") };

@@ -14,20 +14,20 @@ use tower::ServiceExt as _;
 
 /// The service under test.
 #[derive(Debug, Clone)]
-pub struct TestApp {
+pub(crate) struct TestApp {
     router: Router,
 }
 
 /// An answer, read to its end.
 #[derive(Debug)]
-pub struct Answer {
-    pub status: StatusCode,
-    pub headers: HeaderMap,
-    pub body: Bytes,
+pub(crate) struct Answer {
+    pub(crate) status: StatusCode,
+    pub(crate) headers: HeaderMap,
+    pub(crate) body: Bytes,
 }
 
 /// Generous limits that no test meets by accident.
-pub fn settings() -> LayerSettings {
+pub(crate) fn settings() -> LayerSettings {
     LayerSettings {
         max_body_bytes: 1024 * 1024,
         request_timeout: Duration::from_secs(30),
@@ -38,18 +38,18 @@ pub fn settings() -> LayerSettings {
 
 impl TestApp {
     /// The service as it is.
-    pub fn new() -> Self {
+    pub(crate) fn new() -> Self {
         Self::of(api::router(&settings(), Readiness::default()))
     }
 
     /// Any router: routes of a test inside the layers of the service.
-    pub fn of(router: Router) -> Self {
+    pub(crate) fn of(router: Router) -> Self {
         Self { router }
     }
 
     /// Sends `POST` with a JSON body and demands a status.
     #[track_caller]
-    pub fn post(
+    pub(crate) fn post(
         &self,
         path: &str,
         body: &str,
@@ -62,13 +62,13 @@ impl TestApp {
 
     /// Sends `GET` and demands a status.
     #[track_caller]
-    pub fn get(&self, path: &str, expected: u16) -> impl Future<Output = Answer> + use<> {
+    pub(crate) fn get(&self, path: &str, expected: u16) -> impl Future<Output = Answer> + use<> {
         self.send(Request::get(path).body(Body::empty()).unwrap(), expected)
     }
 
     /// Sends any request and demands a status. Every failure must be a problem document.
     #[track_caller]
-    pub fn send(
+    pub(crate) fn send(
         &self,
         request: Request<Body>,
         expected: u16,
@@ -94,12 +94,12 @@ impl Answer {
     }
 
     /// The body as JSON.
-    pub fn json(&self) -> Value {
+    pub(crate) fn json(&self) -> Value {
         serde_json::from_slice(&self.body).unwrap()
     }
 
     /// A header as text; empty if absent.
-    pub fn header(&self, name: &str) -> &str {
+    pub(crate) fn header(&self, name: &str) -> &str {
         self.headers.get(name).map_or("", |value| value.to_str().unwrap())
     }
 

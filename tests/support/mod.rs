@@ -1,3 +1,3 @@
 //! What several tests share.
 
-pub mod client;
+pub(crate) mod client;

@@ -6,7 +6,7 @@ use serde_json::error::Category;
 use serde_path_to_error::{Path, Segment};
 
 use crate::api::pointer;
-use crate::api::problem::{ErrorItem, Problem};
+use crate::api::problem::{ErrorItem, Problem, ProblemKind};
 
 /// Reads a body as JSON of any shape.
 pub(super) fn parse(body: &[u8]) -> Result<Value, Problem> {
@@ -39,7 +39,7 @@ pub(super) fn reason<T: DeserializeOwned>(body: &[u8]) -> Problem {
     let mut deserializer = serde_json::Deserializer::from_slice(body);
     let outcome = serde_path_to_error::deserialize::<_, T>(&mut deserializer);
     let Err(error) = outcome else {
-        return Problem::malformed("the body goes on after the request's end", 1, 0);
+        return Problem::of_kind(ProblemKind::Internal); // it was refused a moment ago
     };
     let (pointer, inner) = (pointer_of(error.path()), error.into_inner());
     debug_assert_eq!(inner.classify(), Category::Data, "the text has been parsed before");
