@@ -1,1 +1,53 @@
-fn main() {}
+//! The program: settings → router → serve → drain.
+
+use std::io::{self, Write as _};
+use std::process::ExitCode;
+use std::time::Duration;
+
+use brakewright::api::openapi::openapi_json;
+use brakewright::settings::{Command, CommandLine, Settings, Stop};
+use brakewright::{probe, server, settings};
+
+/// A wrong setting.
+const WRONG_SETTING: u8 = 2;
+
+fn main() -> ExitCode {
+    match settings::read() {
+        Ok(CommandLine { command, settings }) => {
+            match run(command.unwrap_or(Command::Serve), &settings) {
+                Ok(()) => ExitCode::SUCCESS,
+                Err(sentence) => say(&format!("{sentence}\n"), ExitCode::FAILURE),
+            }
+        }
+        Err(Stop { text, asked_for: true }) => match write!(io::stdout(), "{text}") {
+            Ok(()) => ExitCode::SUCCESS,
+            Err(_) => ExitCode::FAILURE,
+        },
+        Err(Stop { text, asked_for: false }) => say(&text, ExitCode::from(WRONG_SETTING)),
+    }
+}
+
+fn run(command: Command, settings: &Settings) -> Result<(), String> {
+    match command {
+        Command::Serve => serve(settings)
+            .map_err(|error| format!("error: cannot serve on {}: {error}", settings.listen)),
+        Command::Openapi => write!(io::stdout(), "{}", openapi_json())
+            .map_err(|error| format!("error: cannot write the description: {error}")),
+        Command::Probe => probe::probe(settings.listen),
+    }
+}
+
+fn serve(settings: &Settings) -> io::Result<()> {
+    server::start_logging(settings);
+    let runtime = tokio::runtime::Builder::new_multi_thread().enable_all().build()?;
+    let result = runtime.block_on(server::serve(settings));
+    // Work that is still going on belongs to nobody any more.
+    runtime.shutdown_timeout(Duration::ZERO);
+    result
+}
+
+/// Says why the program ends, on standard error; if even that fails the code must do.
+fn say(text: &str, code: ExitCode) -> ExitCode {
+    let _ = write!(io::stderr(), "{text}");
+    code
+}

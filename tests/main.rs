@@ -5,10 +5,15 @@
     clippy::indexing_slicing,
     reason = "a test fails by panicking"
 )]
-#![expect(clippy::disallowed_methods, reason = "expected values may come from another mathematics library")]
+#![expect(
+    clippy::disallowed_methods,
+    reason = "expected values may come from another mathematics library"
+)]
 #![allow(missing_docs, reason = "tests are named as sentences")]
 
+mod api;
 mod calc;
 mod data;
 mod published;
+mod service;
 mod support;

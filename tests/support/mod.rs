@@ -1,1 +1,4 @@
-pub mod close;
+//! What several tests share.
+
+pub(crate) mod client;
+pub(crate) mod close;

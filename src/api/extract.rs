@@ -1,0 +1,88 @@
+//! JSON in and out. The original extractor is not used: its rejections are not problem documents.
+
+use axum::body::{Body, Bytes};
+use axum::extract::{FromRequest, FromRequestParts, Request};
+use axum::http::header::{CONTENT_TYPE, HeaderName};
+use axum::http::{HeaderMap, HeaderValue, Response};
+use axum::response::IntoResponse;
+use serde::Serialize;
+use serde::de::DeserializeOwned;
+use utoipa::ToSchema;
+
+use super::accept::{JSON, Negotiated};
+use super::problem::{Problem, ProblemKind};
+use super::shape::{self, MoreUnits};
+
+/// Says which media types a `POST` takes; sent with 415.
+const ACCEPT_POST: HeaderName = HeaderName::from_static("accept-post");
+
+/// No codes beside the published symbols.
+const PUBLISHED_ONLY: MoreUnits = |_| Vec::new();
+
+/// A JSON body, decoded. As an argument of a handler it documents the request body, too.
+///
+/// Refused: 406 if the client takes no form of the answer that the route offers, 415 if the body is not
+/// declared as JSON, 413 if it is too large, 400 if it is not JSON, 422 with all faults if it is no `T`.
+#[derive(Debug, Clone)]
+pub struct Json<T> {
+    /// The request.
+    pub value: T,
+    /// The bytes it was decoded from; the digest of the input is made of them.
+    pub body: Bytes,
+}
+
+impl<S, T> FromRequest<S> for Json<T>
+where
+    S: Send + Sync,
+    T: DeserializeOwned + ToSchema + 'static,
+{
+    type Rejection = Problem;
+
+    async fn from_request(request: Request, state: &S) -> Result<Self, Problem> {
+        let (mut parts, body) = request.into_parts();
+        Negotiated::from_request_parts(&mut parts, state).await?;
+        require_json(&parts.headers)?;
+        let request = Request::from_parts(parts, body);
+        let body = Bytes::from_request(request, state).await;
+        let body =
+            body.map_err(|rejection| Problem::of_status(rejection.into_response().status()))?;
+        Ok(Self { value: decode(&body)?, body })
+    }
+}
+
+/// Decodes a body that is known to be declared as JSON, such as a line of a stream.
+///
+/// # Errors
+/// 400 if the text is not JSON or names a member twice; 422 with the faults if it is not a `T`.
+pub fn decode<T: DeserializeOwned + ToSchema + 'static>(body: &[u8]) -> Result<T, Problem> {
+    shape::decode(body, PUBLISHED_ONLY)
+}
+
+/// Demands `application/json` or a type with the suffix `+json`; parameters do not matter.
+fn require_json(headers: &HeaderMap) -> Result<(), Problem> {
+    let declared = headers.get(CONTENT_TYPE).and_then(|value| value.to_str().ok());
+    let essence = declared.and_then(|value| value.split(';').next()).unwrap_or_default();
+    let essence = essence.trim().to_ascii_lowercase();
+    if essence == JSON || (essence.starts_with("application/") && essence.ends_with("+json")) {
+        return Ok(());
+    }
+    let detail = "the body must be declared as `Content-Type: application/json`";
+    let problem = Problem::new(ProblemKind::UnsupportedMediaType, detail);
+    Err(problem.with_header(ACCEPT_POST, HeaderValue::from_static(JSON)))
+}
+
+/// A result as JSON, status 200.
+#[derive(Debug, Clone)]
+pub struct Answer<T>(pub T);
+
+impl<T: Serialize> IntoResponse for Answer<T> {
+    fn into_response(self) -> Response<Body> {
+        match serde_json::to_vec(&self.0) {
+            Ok(text) => ([(CONTENT_TYPE, HeaderValue::from_static(JSON))], text).into_response(),
+            Err(error) => {
+                tracing::error!(%error, "an answer cannot be written as JSON");
+                Problem::of_kind(ProblemKind::Internal).into_response()
+            }
+        }
+    }
+}

@@ -1,0 +1,39 @@
+//! HTTP and JSON around the calculations; no formulas.
+
+pub mod accept;
+mod access_log;
+mod docs;
+pub mod etag;
+pub mod extract;
+pub mod health;
+pub mod layers;
+pub mod openapi;
+pub mod openapi_30;
+pub mod pointer;
+pub mod problem;
+mod problem_kind;
+pub mod request_id;
+pub mod shape;
+pub mod v1;
+
+use axum::{Extension, Router};
+use utoipa_axum::router::OpenApiRouter;
+use utoipa_axum::routes;
+
+use health::Readiness;
+use layers::LayerSettings;
+
+/// The whole service: described routes, pages, and the layers around them.
+pub fn router(settings: &LayerSettings, readiness: Readiness) -> Router {
+    let described = described_routes().split_for_parts().0;
+    layers::wrap(described.merge(docs::routes()).layer(Extension(readiness)), settings)
+}
+
+/// Every route that the description lists: registering a route is documenting it.
+fn described_routes() -> OpenApiRouter {
+    OpenApiRouter::with_openapi(openapi::base())
+        .nest("/v1", v1::routes())
+        .routes(routes!(health::live))
+        .routes(routes!(health::ready))
+        .routes(routes!(docs::problem_kind))
+}

@@ -1,0 +1,116 @@
+//! The description of the interface: what is common to all operations, and the finished document.
+
+use std::sync::LazyLock;
+
+use serde_json::Value;
+use utoipa::openapi::path::Operation;
+use utoipa::openapi::security::SecurityRequirement;
+use utoipa::openapi::tag::TagBuilder;
+use utoipa::openapi::{
+    ComponentsBuilder, ContactBuilder, ContentBuilder, InfoBuilder, LicenseBuilder, OpenApi,
+    OpenApiBuilder, PathItem, Ref, ResponseBuilder, ServerBuilder,
+};
+use utoipa::{PartialSchema, ToSchema};
+
+use super::openapi_30;
+use super::problem::{ErrorItem, PROBLEM_JSON, Problem};
+
+const DESCRIPTION: &str = "\
+Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, what \
+that does to the disc, and whether a specification is met. Every calculation is a `POST` that changes \
+nothing, so any call may be repeated.
+
+* A quantity is an object with its unit, `{\"value\": 95, \"unit\": \"mm\"}`; a ratio is a bare number. \
+In requests a unit may also be given by its UCUM code or its UN/ECE Recommendation 20 common code.
+* Unknown members, `null` and repeated members are refused, so that a typo never becomes a silent default. \
+Answers may gain members.
+* A failure is a problem document (RFC 9457) that lists every fault found, each with its place.
+
+**Cautions.** The results are calculations for selecting a brake, not proofs. Confirm them by test on the \
+machine. Local codes and licensed practice decide. Brakes protect people: have a competent engineer review \
+inputs, assumptions and results before anything is built or released.";
+
+/// What the document says before any operation is added.
+pub(super) fn base() -> OpenApi {
+    let info = InfoBuilder::new()
+        .title("Brakewright")
+        .version(env!("CARGO_PKG_VERSION"))
+        .description(Some(DESCRIPTION))
+        .contact(Some(ContactBuilder::new().name(Some("The Brakewright maintainers")).build()))
+        .license(Some(
+            LicenseBuilder::new()
+                .name("MIT OR Apache-2.0")
+                .identifier(Some("MIT OR Apache-2.0"))
+                .build(),
+        ));
+    let components = ComponentsBuilder::new()
+        .schema(Problem::name(), Problem::schema())
+        .schema(ErrorItem::name(), ErrorItem::schema());
+    OpenApiBuilder::new()
+        .info(info.build())
+        .servers(Some([ServerBuilder::new().url("/").description(Some("This service")).build()]))
+        .components(Some(components.build()))
+        // No key is needed; said explicitly, so that tools need not guess.
+        .security(Some([SecurityRequirement::default()]))
+        .tags(Some([
+            tag("Calculations", "What the service computes. Nothing is stored."),
+            tag(
+                "Catalog",
+                "The published data that calculations can start from, each row with its source.",
+            ),
+            tag("Service", "The state of the service itself, and what its problems mean."),
+        ]))
+        .build()
+}
+
+fn tag(name: &str, description: &str) -> utoipa::openapi::Tag {
+    TagBuilder::new().name(name).description(Some(description)).build()
+}
+
+/// Adds the failures to every operation: they are the same everywhere.
+fn add_failures(document: &mut OpenApi) {
+    for item in document.paths.paths.values_mut() {
+        for operation in operations(item) {
+            for (range, description) in
+                [("4XX", "The request was refused."), ("5XX", "The service cannot answer now.")]
+            {
+                let content = ContentBuilder::new()
+                    .schema(Some(Ref::from_schema_name(Problem::name())))
+                    .build();
+                let response = ResponseBuilder::new()
+                    .description(description)
+                    .content(PROBLEM_JSON, content)
+                    .build();
+                operation.responses.responses.insert(range.to_owned(), response.into());
+            }
+        }
+    }
+}
+
+fn operations(item: &mut PathItem) -> impl Iterator<Item = &mut Operation> {
+    [&mut item.get, &mut item.post].into_iter().filter_map(Option::as_mut)
+}
+
+static DOCUMENT: LazyLock<(String, String)> = LazyLock::new(|| {
+    let mut document = super::described_routes().split_for_parts().1;
+    add_failures(&mut document);
+    // Made of strings, lists and maps only: serialising cannot fail.
+    let value = serde_json::to_value(document).unwrap_or_default();
+    (pretty(&value), pretty(&openapi_30::from_31(value)))
+});
+
+fn pretty(value: &Value) -> String {
+    format!("{value:#}\n")
+}
+
+/// The description, OpenAPI 3.1, as it is served and kept in `openapi/v1.json`.
+#[must_use]
+pub fn openapi_json() -> &'static str {
+    &DOCUMENT.0
+}
+
+/// The description for older generators, OpenAPI 3.0, derived from the other.
+#[must_use]
+pub fn openapi_30_json() -> &'static str {
+    &DOCUMENT.1
+}

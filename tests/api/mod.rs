@@ -1,0 +1,6 @@
+//! The service seen through its front door.
+
+mod accept;
+mod frame;
+mod openapi;
+mod problems;

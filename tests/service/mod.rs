@@ -1,0 +1,3 @@
+//! The program as a process.
+
+mod process;
