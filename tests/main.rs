@@ -9,6 +9,8 @@
     clippy::disallowed_methods,
     reason = "expected values may come from another mathematics library"
 )]
+#![expect(clippy::float_cmp, reason = "what is compared exactly is meant exactly")]
+#![expect(clippy::doc_markdown, reason = "formulas in comments are not code")]
 #![allow(missing_docs, reason = "tests are named as sentences")]
 
 mod api;

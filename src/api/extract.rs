@@ -10,14 +10,16 @@ use serde::de::DeserializeOwned;
 use utoipa::ToSchema;
 
 use super::accept::{JSON, Negotiated};
-use super::problem::{Problem, ProblemKind};
+use super::measure::NOT_FINITE;
+use super::problem::{ErrorItem, Problem, ProblemKind};
 use super::shape::{self, MoreUnits};
+use crate::calc::fault::FaultCode;
 
 /// Says which media types a `POST` takes; sent with 415.
 const ACCEPT_POST: HeaderName = HeaderName::from_static("accept-post");
 
-/// No codes beside the published symbols.
-const PUBLISHED_ONLY: MoreUnits = |_| Vec::new();
+/// Further codes of units beside the published symbols.
+const MORE_UNITS: MoreUnits = crate::data::units::further_codes;
 
 /// A JSON body, decoded. As an argument of a handler it documents the request body, too.
 ///
@@ -55,7 +57,7 @@ where
 /// # Errors
 /// 400 if the text is not JSON or names a member twice; 422 with the faults if it is not a `T`.
 pub fn decode<T: DeserializeOwned + ToSchema + 'static>(body: &[u8]) -> Result<T, Problem> {
-    shape::decode(body, PUBLISHED_ONLY)
+    shape::decode(body, MORE_UNITS)
 }
 
 /// Demands `application/json` or a type with the suffix `+json`; parameters do not matter.
@@ -71,6 +73,14 @@ fn require_json(headers: &HeaderMap) -> Result<(), Problem> {
     Err(problem.with_header(ACCEPT_POST, HeaderValue::from_static(JSON)))
 }
 
+fn overflow() -> ErrorItem {
+    ErrorItem {
+        pointer: "#".to_owned(),
+        code: FaultCode::OutOfRange.as_str(),
+        detail: "a result lies beyond what numbers can hold; look for a slip of units".to_owned(),
+    }
+}
+
 /// A result as JSON, status 200.
 #[derive(Debug, Clone)]
 pub struct Answer<T>(pub T);
@@ -79,6 +89,10 @@ impl<T: Serialize> IntoResponse for Answer<T> {
     fn into_response(self) -> Response<Body> {
         match serde_json::to_vec(&self.0) {
             Ok(text) => ([(CONTENT_TYPE, HeaderValue::from_static(JSON))], text).into_response(),
+            // A result beyond what JSON can hold is the input's fault, not the service's.
+            Err(error) if error.to_string() == NOT_FINITE => {
+                Problem::invalid(vec![overflow()], 1).into_response()
+            }
             Err(error) => {
                 tracing::error!(%error, "an answer cannot be written as JSON");
                 Problem::of_kind(ProblemKind::Internal).into_response()

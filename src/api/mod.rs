@@ -3,17 +3,22 @@
 pub mod accept;
 mod access_log;
 mod docs;
+pub mod error_code;
 pub mod etag;
 pub mod extract;
 pub mod health;
 pub mod layers;
+pub mod measure;
 pub mod openapi;
 pub mod openapi_30;
+pub mod parse;
 pub mod pointer;
 pub mod problem;
 mod problem_kind;
+pub mod record;
 pub mod request_id;
 pub mod shape;
+pub mod tagged;
 pub mod v1;
 
 use axum::{Extension, Router};

@@ -4,3 +4,4 @@ pub mod disc_materials;
 pub mod friction_codes;
 pub mod linings;
 mod printed;
+pub mod units;

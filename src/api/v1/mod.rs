@@ -1,8 +1,19 @@
 //! Version 1 of the interface: the list of its routes.
 
+pub mod actuation_force;
+pub mod block;
+pub mod pad_capacity;
+pub mod stop_energy;
+pub mod stopping;
+
 use utoipa_axum::router::OpenApiRouter;
+use utoipa_axum::routes;
 
 /// The routes below `/v1`.
 pub(super) fn routes() -> OpenApiRouter {
     OpenApiRouter::default()
+        .routes(routes!(pad_capacity::pad_capacity))
+        .routes(routes!(actuation_force::actuation_force))
+        .routes(routes!(stopping::stopping))
+        .routes(routes!(stop_energy::stop_energy))
 }

@@ -1,0 +1,282 @@
+//! `POST /v1/stop-energy`: what a stop costs.
+
+use serde::{Deserialize, Serialize};
+use utoipa::ToSchema;
+
+use super::block::delays::Response;
+use super::block::fitted::Fitted;
+use super::block::machine::Machine;
+use super::block::stop::{Direction, StopMembers, stood_in};
+use crate::api::extract::{Answer, Json};
+use crate::api::measure::{
+    Acceleration, AngularAcceleration, Energy, EnergyFlux, Finite, Force, Grade, Power, PowerFlux,
+    ReportUnits, RotationalSpeed, Speed, Temperature, TemperatureDifference,
+};
+use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
+use crate::api::problem::Problem;
+use crate::api::record::{self, CautionText, FrictionCase, Record, Recorded, Warning};
+use crate::calc::case::stop_energy::{self, CaseOutcome, Energies, EntryEnergy, Input, Outcome};
+
+/// A machine, its brakes and the stop whose energy is asked for.
+#[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
+#[serde(deny_unknown_fields)]
+pub struct StopEnergyRequest {
+    /// The caller's own reference, echoed in `record.ref` and left out of the digest.
+    #[serde(rename = "ref")]
+    #[schema(nullable = false, max_length = 1000)]
+    pub reference: Option<String>,
+    /// Units of the answer, `si` if left out.
+    #[schema(nullable = false)]
+    pub report_units: Option<ReportUnits>,
+    /// What is braked.
+    pub machine: Machine,
+    /// Its brakes.
+    #[schema(min_items = 1, max_items = 100)]
+    pub fitted: Vec<Fitted>,
+    /// Speed at the start, of the vehicle, load or belt. Required but for a shaft.
+    #[schema(nullable = false)]
+    pub initial_speed: Option<Speed>,
+    /// Speed at the end, below the initial one; standstill if left out.
+    #[schema(nullable = false)]
+    pub final_speed: Option<Speed>,
+    /// Speed at the start, of a shaft. Required for a shaft.
+    #[schema(nullable = false)]
+    pub initial_rotational_speed: Option<RotationalSpeed>,
+    /// Speed at the end, of a shaft; standstill if left out.
+    #[schema(nullable = false)]
+    pub final_rotational_speed: Option<RotationalSpeed>,
+    /// Slope of a vehicle's way, positive uphill; level if left out, at most 100 %.
+    #[schema(nullable = false)]
+    pub grade: Option<Grade>,
+    /// Force from outside on a vehicle, also in the dead time: positive drives, negative retards; 0 if left out.
+    #[schema(nullable = false)]
+    pub drive_force: Option<Force>,
+    /// Which way a hoist's load moves. Required for a hoist.
+    #[schema(nullable = false)]
+    pub direction: Option<Direction>,
+    /// Deceleration that the operator holds after build-up; full torque if left out.
+    #[schema(nullable = false)]
+    pub deceleration: Option<Acceleration>,
+    /// The same for a shaft.
+    #[schema(nullable = false)]
+    pub angular_deceleration: Option<AngularAcceleration>,
+    /// Delays.
+    #[schema(nullable = false)]
+    pub response: Option<Response>,
+    /// Temperature of the air, 20 degC if left out.
+    #[schema(nullable = false)]
+    pub ambient_temperature: Option<Temperature>,
+    /// Temperature of the discs before the stop; that of the air if left out.
+    #[schema(nullable = false)]
+    pub start_temperature: Option<Temperature>,
+}
+
+/// What the stop costs.
+#[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
+pub struct StopEnergyAnswer {
+    /// The results.
+    pub results: StopEnergyResults,
+    /// Remarks on the results.
+    pub warnings: Vec<Warning>,
+    /// Cautions to be shown with the results.
+    pub cautions: Vec<CautionText>,
+    /// How the answer was found.
+    pub record: Record,
+}
+
+/// What the stop costs, once per friction case.
+#[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
+pub struct StopEnergyResults {
+    /// The cases.
+    pub friction_cases: Vec<StopEnergyCase>,
+}
+
+/// The energy balance of a stop at one friction, from the first torque on:
+/// `brake_energy = kinetic_translation + kinetic_rotation + grade_or_load − resistance`.
+#[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
+pub struct StopEnergyCase {
+    /// Which.
+    pub friction_case: FrictionCase,
+    /// Whether the final speed is reached. If not, there are no energies; `stopping` tells why.
+    pub reaches_final_speed: bool,
+    /// Kinetic energy taken from what moves along a line.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub kinetic_translation: Option<Energy>,
+    /// Kinetic energy taken from what turns.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub kinetic_rotation: Option<Energy>,
+    /// Work of gravity, load or drive, positive when it drives.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub grade_or_load: Option<Energy>,
+    /// Work of the resistances, positive.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub resistance: Option<Energy>,
+    /// Energy that all brakes take up.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub brake_energy: Option<Energy>,
+    /// What one brake of each fitted entry takes up.
+    pub fitted: Vec<FittedEnergy>,
+}
+
+/// What one brake of a fitted entry takes up. A member is there when the request lets it be computed.
+#[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
+pub struct FittedEnergy {
+    /// Which entry of `fitted`.
+    pub fitted_index: usize,
+    /// In the stop.
+    pub energy: Energy,
+    /// Of one friction face.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub energy_per_face: Option<Energy>,
+    /// Energy of one face over the area of one pad.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub energy_flux: Option<EnergyFlux>,
+    /// Energy over the braking time.
+    pub mean_power: Power,
+    /// Highest power.
+    pub peak_power: Power,
+    /// Highest power of one face over the area of one pad.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub peak_power_flux: Option<PowerFlux>,
+    /// Highest speed at the pad's outer radius while torque acts.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub rubbing_speed: Option<Speed>,
+    /// Share of the friction heat that enters the disc, above 0 and not above 1.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false, value_type = Option<f64>)]
+    pub disc_share: Option<Finite>,
+    /// Rise of the disc's bulk temperature, with the heat of all brakes on this disc.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub disc_bulk_rise: Option<TemperatureDifference>,
+    /// Highest temperature of the rubbed surface.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub surface_peak_temperature: Option<Temperature>,
+}
+
+/// Compute what a stop costs.
+///
+/// The energy balance of the machine; energy, power and rubbing speed of each brake; and, where a disc is given,
+/// its share of the heat, its bulk rise and the peak of its surface. Once per friction case.
+#[utoipa::path(
+    post, path = "/stop-energy", tag = "Calculations", operation_id = "stop_energy",
+    responses((status = OK, description = "What the stop costs.", body = StopEnergyAnswer)),
+)]
+pub(super) async fn stop_energy(
+    request: Json<StopEnergyRequest>,
+) -> Result<Answer<StopEnergyAnswer>, Problem> {
+    let (input, defaults) = request.value.read()?;
+    let outcome = stop_energy::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
+    Ok(Answer(request.value.answer(&request.body, &input, &outcome, defaults)))
+}
+
+impl StopEnergyRequest {
+    fn members(&self) -> StopMembers<'_> {
+        StopMembers {
+            machine: &self.machine,
+            fitted: &self.fitted,
+            initial_speed: self.initial_speed.as_ref(),
+            final_speed: self.final_speed.as_ref(),
+            initial_rotational_speed: self.initial_rotational_speed.as_ref(),
+            final_rotational_speed: self.final_rotational_speed.as_ref(),
+            grade: self.grade.as_ref(),
+            drive_force: self.drive_force.as_ref(),
+            direction: self.direction,
+            deceleration: self.deceleration.as_ref(),
+            angular_deceleration: self.angular_deceleration.as_ref(),
+            response: self.response.as_ref(),
+        }
+    }
+
+    fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {
+        let (at, mut reader) = (At::ROOT, Reader::new());
+        let stop = self.members().read(&at, &mut reader);
+        let at_ambient = at.member("ambient_temperature");
+        let ambient_temperature =
+            reader.or_default(&at_ambient, self.ambient_temperature.as_ref(), 20.0, "degC");
+        let at_start = at.member("start_temperature");
+        let start_temperature =
+            reader.optional(&at_start, self.start_temperature.as_ref()).unwrap_or_else(|| {
+                let start =
+                    Temperature::report(ambient_temperature, self.report_units.unwrap_or_default());
+                reader.record(
+                    &at_start,
+                    DefaultValue::Number(Finite(start.value())),
+                    Some(start.unit().symbol),
+                );
+                ambient_temperature
+            });
+        reader.finish(stop.map(|stop| Input { stop, ambient_temperature, start_temperature }))
+    }
+
+    fn answer(
+        &self,
+        body: &[u8],
+        input: &Input,
+        outcome: &Outcome,
+        mut defaults: Vec<RecordedDefault>,
+    ) -> StopEnergyAnswer {
+        let report_units = self.report_units.unwrap_or_default();
+        let recorded =
+            Recorded { body, reference: self.reference.as_deref(), brake: "", report_units };
+        defaults.extend(stood_in(&input.stop.fitted, &outcome.stop.pressed, report_units));
+        let cases = outcome.friction_cases.iter();
+        let friction_cases = cases.map(|case| StopEnergyCase::new(case, report_units)).collect();
+        StopEnergyAnswer {
+            results: StopEnergyResults { friction_cases },
+            warnings: recorded.warnings(&outcome.remarks),
+            cautions: record::cautions(&outcome.remarks),
+            record: recorded.record(outcome.remarks.methods(), defaults),
+        }
+    }
+}
+
+impl StopEnergyCase {
+    fn new(case: &CaseOutcome, units: ReportUnits) -> Self {
+        let energies = case.energies.as_ref();
+        let energy = |part: fn(&Energies) -> crate::calc::quantity::Energy| {
+            energies.map(|energies| Energy::report(part(energies), units))
+        };
+        let entries = energies.into_iter().flat_map(|energies| energies.fitted.iter().enumerate());
+        Self {
+            friction_case: case.friction_case.into(),
+            reaches_final_speed: energies.is_some(),
+            kinetic_translation: energy(|energies| energies.kinetic_translation),
+            kinetic_rotation: energy(|energies| energies.kinetic_rotation),
+            grade_or_load: energy(|energies| energies.grade_or_load),
+            resistance: energy(|energies| energies.resistance),
+            brake_energy: energy(|energies| energies.brake_energy),
+            fitted: entries.map(|(index, entry)| FittedEnergy::new(index, entry, units)).collect(),
+        }
+    }
+}
+
+impl FittedEnergy {
+    fn new(fitted_index: usize, entry: &EntryEnergy, units: ReportUnits) -> Self {
+        let (brake, disc) = (entry.brake, entry.brake.and_then(|brake| brake.disc));
+        Self {
+            fitted_index,
+            energy: Energy::report(entry.energy, units),
+            energy_per_face: brake.map(|brake| Energy::report(brake.energy_per_face, units)),
+            energy_flux: brake.map(|brake| EnergyFlux::report(brake.energy_flux, units)),
+            mean_power: Power::report(entry.mean_power, units),
+            peak_power: Power::report(entry.peak_power, units),
+            peak_power_flux: brake.map(|brake| PowerFlux::report(brake.peak_power_flux, units)),
+            rubbing_speed: brake.map(|brake| Speed::report(brake.rubbing_speed, units)),
+            disc_share: disc.map(|disc| Finite(disc.disc_share)),
+            disc_bulk_rise: disc.map(|disc| TemperatureDifference::report(disc.bulk_rise, units)),
+            surface_peak_temperature: disc
+                .map(|disc| Temperature::report(disc.surface_peak_temperature, units)),
+        }
+    }
+}
