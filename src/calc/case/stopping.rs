@@ -1,6 +1,8 @@
 //! How a machine stops: time, way, deceleration, and what limits it.
 
 use crate::calc::actuation::Pressing;
+use crate::calc::brake::Spot;
+use crate::calc::disc::Cooling;
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{
     Caution, CheckCode, Comparison, Finding, Notice, Remarks, Severity, Subject, WarningCode,
@@ -69,6 +71,18 @@ impl CaseOutcome {
     pub fn torque(&self, index: usize) -> Torque {
         let full = self.full_torques.get(index).map_or(0.0, |torque| torque.si());
         Torque::from_si(full * self.stop.fraction)
+    }
+
+    /// What part of the brake work of each axle, front (or all) and rear, one brake of an entry does.
+    #[must_use]
+    pub fn shares_of_one_brake(&self, index: usize, entry: &Fitted) -> [f64; 2] {
+        let own = self.demands.get(index).copied().unwrap_or([0.0; 2]);
+        let count = f64::from(entry.parts().count);
+        let total = self.stop.path.forces().demand;
+        [0, 1].map(|axle: usize| match (own.get(axle), total.get(axle)) {
+            (Some(own), Some(total)) if *total > 0.0 => own / total / count,
+            _ => 0.0,
+        })
     }
 
     /// What limits the deceleration where it is highest.
@@ -161,6 +175,12 @@ impl Input {
                     faults.add(at("axle"), FaultCode::NotApplicable, "belongs to vehicles only");
                 }
                 _ => {}
+            }
+            let cooling = entry.brake().and_then(|brake| brake.parts().disc.as_ref()?.cooling());
+            if !is_vehicle && cooling == Some(Cooling::Airstream) {
+                let detail =
+                    "belongs to vehicles only: nothing else moves its disc through the air";
+                faults.add(at("brake/disc/cooling/model"), FaultCode::NotApplicable, detail);
             }
             if !is_vehicle && entry.parts().rolling_radius.is_some() {
                 faults.add(
@@ -438,18 +458,13 @@ fn note_pressing(
     let friction_case = case.stop.is_modulated.then_some(case.friction_case);
     for (index, (entry, acting)) in input.fitted.iter().zip(&actings).enumerate() {
         let (Some(brake), Some(acting)) = (entry.brake(), acting) else { continue };
-        brake.compare_pressing(remarks, Some(index), acting, friction_case);
-        let stroke = operator_stroke(&input.fitted, &volumes, index);
-        brake.compare_stroke(remarks, Some(index), stroke, friction_case);
+        let spot = Spot { fitted_index: Some(index), friction_case };
+        brake.hold_pressing(remarks, acting, spot);
+        brake.hold_stroke(remarks, operator_stroke(&input.fitted, &volumes, index), spot);
         if matches!(case.stop.ending, Ending::Reached(_)) {
             let speed = highest_brake_speed(input, entry, &case.stop);
-            brake.compare_rubbing(
-                remarks,
-                Some(index),
-                speed,
-                acting.highest_clamp_force,
-                Some(case.friction_case),
-            );
+            let spot = Spot { friction_case: Some(case.friction_case), ..spot };
+            brake.hold_rubbing(remarks, speed, acting.highest_clamp_force, spot);
         }
     }
 }

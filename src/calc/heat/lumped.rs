@@ -1,4 +1,4 @@
-//! A disc of one temperature that is heated and cools: C dT/dt = P(t) − hA(T)·(T − T_a).
+//! A disc of one temperature that is heated and cools.
 
 use super::cooling::{CoolingSurface, Speeds};
 use super::property::{SpecificEnergy, SpecificHeat};
@@ -89,10 +89,10 @@ impl LumpedDisc<'_> {
             }
             let step = self.step(temperature, time, rest, stretch, surface);
             let power = power_at(stretch, time + 0.5 * step);
-            let half =
-                self.relaxed(temperature, temperature, power, 0.5 * step, stretch.speeds, surface);
-            temperature = self.relaxed(temperature, half, power, step, stretch.speeds, surface);
-            if !(temperature < CEILING) {
+            let towards = |at: f64| self.towards(at, power, stretch.speeds, surface);
+            let half = towards(temperature).after(temperature, 0.5 * step);
+            temperature = towards(half).after(temperature, step);
+            if temperature.is_nan() || temperature >= CEILING {
                 return None;
             }
             highest = highest.max(temperature);
@@ -129,19 +129,25 @@ impl LumpedDisc<'_> {
         self.mass * self.specific_heat.at(ThermodynamicTemperature::from_si(temperature)).si()
     }
 
-    /// The exact solution over `time` for properties held at `at`.
-    fn relaxed(
-        &self,
-        from: f64,
-        at: f64,
-        power: f64,
-        time: f64,
-        speeds: Speeds,
-        surface: &CoolingSurface,
-    ) -> f64 {
+    /// Where the temperature tends to, with properties held at `at`.
+    fn towards(&self, at: f64, power: f64, speeds: Speeds, surface: &CoolingSurface) -> Relaxation {
         let conductance = surface.conductance(at, speeds);
-        let equilibrium = surface.ambient() + power / conductance;
-        from - (equilibrium - from) * libm::expm1(-time * conductance / self.capacity(at))
+        Relaxation {
+            equilibrium: surface.ambient() + power / conductance,
+            time_constant: self.capacity(at) / conductance,
+        }
+    }
+}
+
+/// The exact way of a temperature with properties held.
+struct Relaxation {
+    equilibrium: f64,
+    time_constant: f64,
+}
+
+impl Relaxation {
+    fn after(&self, start: f64, time: f64) -> f64 {
+        start - (self.equilibrium - start) * libm::expm1(-time / self.time_constant)
     }
 }
 

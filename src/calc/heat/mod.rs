@@ -3,6 +3,7 @@
 pub mod bulk;
 pub mod cooling;
 pub mod disc_heat;
+pub mod disc_series;
 pub mod lumped;
 pub mod partition;
 pub mod property;
