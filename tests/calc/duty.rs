@@ -133,6 +133,7 @@ fn end_of(outcome: &CaseOutcome) -> (f64, f64) {
     (last.bulk.unwrap(), last.surface.unwrap())
 }
 
+#[expect(clippy::unnecessary_wraps, reason = "a cooling as a disc takes it")]
 fn coefficient(value: f64) -> Option<Cooling> {
     Some(Cooling::Coefficient(HeatTransfer::from_si(value)))
 }
