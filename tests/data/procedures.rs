@@ -74,7 +74,7 @@ fn the_hydraulic_fade_takes_its_published_time_and_way() {
     assert_close(
         (heavy.initial_speed - heavy.final_speed) / heavy.deceleration.unwrap(),
         2.93,
-        1e-3,
+        2e-3,
     );
 }
 
