@@ -69,8 +69,9 @@ fn segments(nodes: &[Node]) -> impl Iterator<Item = Segment> + '_ {
 }
 
 fn changes(nodes: &[Node]) -> Vec<Change> {
-    let mut changes = Vec::new();
+    let mut changes: Vec<Change> = Vec::with_capacity(nodes.len());
     let (mut end, mut flux, mut slope) = (0.0, 0.0, 0.0);
+    let heat = |last: Option<&Change>, until| last.map_or(0.0, |last| last.heat_until(until));
     for segment in segments(nodes) {
         changes.push(Change {
             time: segment.from.0,
@@ -78,10 +79,12 @@ fn changes(nodes: &[Node]) -> Vec<Change> {
             bend: segment.slope() - slope,
             flux: segment.from.1,
             slope: segment.slope(),
+            heat: heat(changes.last(), segment.from.0),
         });
         ((end, flux), slope) = (segment.to, segment.slope());
     }
-    changes.push(Change { time: end, step: -flux, bend: -slope, flux: 0.0, slope: 0.0 });
+    let heat = heat(changes.last(), end);
+    changes.push(Change { time: end, step: -flux, bend: -slope, flux: 0.0, slope: 0.0, heat });
     changes
 }
 
@@ -121,4 +124,19 @@ pub(super) struct Change {
     pub(super) flux: f64,
     /// Slope just after, W/(m²·s).
     pub(super) slope: f64,
+    /// Heat that has entered before, J/m².
+    pub(super) heat: f64,
+}
+
+impl Change {
+    /// Heat that has entered until `time`, no later than the next change, J/m².
+    pub(super) fn heat_until(&self, time: f64) -> f64 {
+        let spent = time - self.time;
+        self.heat + spent * (self.flux + self.slope * spent / 2.0)
+    }
+
+    /// Flux at `time`, no later than the next change, W/m².
+    pub(super) fn flux_at(&self, time: f64) -> f64 {
+        self.flux + self.slope * (time - self.time)
+    }
 }

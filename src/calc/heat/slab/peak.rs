@@ -4,11 +4,19 @@
 //! the face only cools, and the peak lies between the first node and the last.
 
 use super::flux::{PiecewiseLinearFlux, Segment};
-use super::rise::Slab;
+use super::rise::{Course, Slab};
 use crate::calc::quantity::{Si, TemperatureInterval, Time};
 
-/// Parts into which each straight part of the flux is cut for a first look.
-const CUTS: u32 = 16;
+/// Parts into which all straight parts of the flux are cut together for a first look.
+const CUTS: usize = 256;
+
+/// Parts into which each is cut, at least and at most.
+const FEWEST_CUTS: usize = 4;
+const MOST_CUTS: usize = 16;
+
+/// How far beside a summit to look whether it rises on, as a share of the way to the next place. A peak
+/// nearer than that stands out by less than rounding.
+const BESIDE: f64 = 1e-6;
 
 /// Times after and before a node at which a peak may hide, in diffusion times.
 const CLOSE: [f64; 5] = [0.01, 0.03, 0.1, 0.33, 1.0];
@@ -28,13 +36,16 @@ impl Slab {
     /// The time is exact to about 1e-8 of the distance between the places, the rise to rounding.
     #[must_use]
     pub fn surface_peak(&self, flux: &PiecewiseLinearFlux) -> (Time, TemperatureInterval) {
-        let rise = |time: f64| self.rise(flux.changes(), time, 1.0);
+        let mut course = Course::new(self, flux.changes(), 1.0);
         let diffusion_time = self.diffusion_time().si();
+        let cuts = (CUTS / flux.changes().len()).clamp(FEWEST_CUTS, MOST_CUTS);
         let mut best = (0.0, 0.0);
         for segment in flux.segments() {
-            let places = places(&segment, diffusion_time).into_iter();
+            course.advance(segment.from.0);
+            let rise = |time: f64| course.rise(time);
+            let places = places(&segment, cuts, diffusion_time).into_iter();
             let looks: Vec<Look> = places.map(|at| (at, rise(at))).collect();
-            for_summits(&looks, |from, to| best = higher(best, narrowed(&rise, from, to)));
+            for_summits(&looks, |beside, top| best = higher(best, summit(&rise, beside, top)));
         }
         (Time::from_si(best.0), TemperatureInterval::from_si(best.1))
     }
@@ -48,9 +59,10 @@ fn higher(one: Look, other: Look) -> Look {
 }
 
 /// Both ends of a straight part and places in it: even, and close to its ends.
-fn places(segment: &Segment, diffusion_time: f64) -> Vec<f64> {
+fn places(segment: &Segment, cuts: usize, diffusion_time: f64) -> Vec<f64> {
     let (from, to) = (segment.from.0, segment.to.0);
-    let even = (0..CUTS).map(|cut| from + (to - from) * f64::from(cut) / f64::from(CUTS));
+    let width = (to - from) / to_f64(cuts);
+    let even = (0..cuts).map(|cut| from + width * to_f64(cut));
     let close = CLOSE.into_iter().map(|share| share * diffusion_time);
     let near_ends = close.flat_map(|distance| [from + distance, to - distance]);
     let inside = near_ends.filter(|place| *place > from && *place < to);
@@ -60,31 +72,38 @@ fn places(segment: &Segment, diffusion_time: f64) -> Vec<f64> {
     places
 }
 
-/// Calls `visit` with both sides of every place that is not lower than its neighbors.
+#[expect(clippy::cast_precision_loss, reason = "counts of cuts stay far below 2^53")]
+const fn to_f64(count: usize) -> f64 {
+    count as f64
+}
+
+/// Calls `visit` with each neighbor of every place that is not lower than its neighbors, and that place.
 fn for_summits(looks: &[Look], mut visit: impl FnMut(Look, Look)) {
     let before = std::iter::once(None).chain(looks.iter().copied().map(Some));
     let after = looks.iter().copied().skip(1).map(Some).chain([None]);
     for ((before, look), after) in before.zip(looks.iter().copied()).zip(after) {
         let highest = |neighbor: Option<Look>| neighbor.is_none_or(|other| other.1 <= look.1);
         if highest(before) && highest(after) {
-            if let Some(before) = before {
-                visit(before, look);
-            }
-            if let Some(after) = after {
-                visit(look, after);
+            for neighbor in [before, after].into_iter().flatten() {
+                visit(neighbor, look);
             }
         }
     }
 }
 
-/// The highest place between two, by golden sections; the ends count too.
+/// The highest place between the highest one looked at, `top`, and a neighbor.
+fn summit(rise: &impl Fn(f64) -> f64, neighbor: Look, top: Look) -> Look {
+    let beside = rise(top.0 + BESIDE * (neighbor.0 - top.0));
+    if beside > top.1 { higher(top, narrowed(rise, neighbor, top)) } else { top }
+}
+
+/// The highest place between two, by golden sections.
 fn narrowed(rise: &impl Fn(f64) -> f64, from: Look, to: Look) -> Look {
-    let best = higher(from, to);
     let inner = |from: f64, to: f64| {
         let part = SMALLER_PART * (to - from);
         (from + part, to - part)
     };
-    let (mut low, mut high) = (from.0, to.0);
+    let (mut low, mut high) = (from.0.min(to.0), from.0.max(to.0));
     let (left, right) = inner(low, high);
     let (mut left, mut right) = ((left, rise(left)), (right, rise(right)));
     for _ in 0..NARROWINGS {
@@ -98,5 +117,5 @@ fn narrowed(rise: &impl Fn(f64) -> f64, from: Look, to: Look) -> Look {
             right = (place, rise(place));
         }
     }
-    higher(best, higher(left, right))
+    higher(left, right)
 }

@@ -77,19 +77,59 @@ pub(super) fn ramp_offset(x: f64) -> f64 {
 
 /// What is still to die out of a flux step and of a change of the flux's slope, both `fourier` ago.
 pub(super) fn transient(fourier: f64, x: f64, step: f64, slope: f64) -> f64 {
+    let modes = decays(fourier).map(|(n, decay)| decayed(n, decay, x, step, slope));
+    2.0 / (PI * PI) * modes.sum::<f64>()
+}
+
+/// n and what is left of mode n after `fourier`, exp(-n² π² Fo), from the slowest mode on while above 1e-20.
+fn decays(fourier: f64) -> impl Iterator<Item = (f64, f64)> {
     let first = libm::exp(-PI * PI * fourier);
-    let depth = PI * (1.0 - x);
-    let (mut sum, mut n, mut decay, mut ratio) = (0.0, 1.0, first, first * first * first);
-    // decay = first^(n²); at the smallest Fourier number twelve terms stand above 1e-20.
-    while decay > 1e-20 {
-        let n2 = n * n;
-        let wave = if depth > 0.0 { libm::cos(n * depth) } else { 1.0 };
-        sum += decay * wave / n2 * (slope / (PI * PI * n2) - step);
-        decay *= ratio;
-        ratio *= first * first;
-        n += 1.0;
+    let mut next = (1.0, first, first * first * first);
+    std::iter::from_fn(move || {
+        let (n, decay, ratio) = next;
+        // decay = first^(n²).
+        next = (n + 1.0, decay * ratio, ratio * first * first);
+        (decay > 1e-20).then_some((n, decay))
+    })
+}
+
+/// The part of a transient that mode n carries.
+fn decayed(n: f64, decay: f64, x: f64, step: f64, slope: f64) -> f64 {
+    let (n2, depth) = (n * n, PI * (1.0 - x));
+    let wave = if depth > 0.0 { libm::cos(n * depth) } else { 1.0 };
+    decay * wave / n2 * (slope / (PI * PI * n2) - step)
+}
+
+/// Modes that stand above 1e-20 at [`IMAGES_BELOW`].
+const MODES: usize = 12;
+
+/// The transients of many changes at one place, added up mode by mode: they die out together.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Transients([f64; MODES]);
+
+impl Transients {
+    pub(super) const NONE: Self = Self([0.0; MODES]);
+
+    /// Lets them die out for `fourier`.
+    pub(super) fn age(&mut self, fourier: f64) {
+        let mut decays = decays(fourier);
+        for mode in &mut self.0 {
+            *mode *= decays.next().map_or(0.0, |(_, decay)| decay);
+        }
     }
-    2.0 / (PI * PI) * sum
+
+    /// Adds a change like that of [`transient`], made [`IMAGES_BELOW`] ago or earlier.
+    pub(super) fn add(&mut self, fourier: f64, x: f64, step: f64, slope: f64) {
+        for (mode, (n, decay)) in self.0.iter_mut().zip(decays(fourier)) {
+            *mode += decayed(n, decay, x, step, slope);
+        }
+    }
+
+    /// What is left of them after `fourier`.
+    pub(super) fn left_after(&self, fourier: f64) -> f64 {
+        let modes = self.0.iter().zip(decays(fourier)).map(|(mode, (_, decay))| mode * decay);
+        2.0 / (PI * PI) * modes.sum::<f64>()
+    }
 }
 
 /// A flux step seen by a half-space with mirror images.
@@ -106,8 +146,11 @@ pub(super) fn ramp_by_images(fourier: f64, x: f64) -> f64 {
 
 fn over_images(reach: f64, x: f64, response: fn(f64) -> f64) -> f64 {
     if reach > 0.0 {
-        let distances = [1.0 - x, 1.0 + x, 3.0 - x, 3.0 + x];
-        distances.into_iter().map(|distance| response(distance / reach)).sum()
+        let distances = [1.0 - x, 1.0 + x, 3.0 - x, 3.0 + x].map(|distance| distance / reach);
+        let nearest = distances[0] * distances[0];
+        // A response falls faster than exp(-z²): farther ones are below 1e-17 of the nearest.
+        let counts = |z: &f64| z * z - nearest < 40.0;
+        distances.into_iter().take_while(counts).map(response).sum()
     } else {
         0.0
     }

@@ -1,7 +1,7 @@
 //! The temperature rise of a slab under a piecewise linear flux, by superposition.
 
 use super::flux::{Change, PiecewiseLinearFlux};
-use super::response;
+use super::response::{self, Transients};
 use crate::calc::fault::Faults;
 use crate::calc::heat::substance::Substance;
 use crate::calc::quantity::{Length, Si, TemperatureInterval, Time};
@@ -56,26 +56,8 @@ impl Slab {
     }
 
     /// The rise in K at `time` in s.
-    ///
-    /// Changes of the flux long ago have left their heat and a fading transient; those just made are
-    /// taken as on a half-space. So nothing cancels, neither early nor after thousands of seconds.
-    pub(super) fn rise(&self, changes: &[Change], time: f64, height: f64) -> f64 {
-        let diffusion_time = self.diffusion_time().si();
-        let fourier = |change: &Change| (time - change.time) / diffusion_time;
-        let old = changes.partition_point(|change| fourier(change) >= response::IMAGES_BELOW);
-        let (old, recent) = changes.split_at(old);
-        let fading = old.iter().map(|change| {
-            let bend = change.bend * diffusion_time;
-            response::transient(fourier(change), height, change.step, bend)
-        });
-        let beginning = recent.iter().filter(|change| change.time < time).map(|change| {
-            let bend = change.bend * diffusion_time;
-            change.step * response::step_by_images(fourier(change), height)
-                + bend * response::ramp_by_images(fourier(change), height)
-        });
-        let transient = fading.chain(beginning).sum::<f64>();
-        lasting(old, time, height, diffusion_time) * self.resistance()
-            + transient * self.resistance()
+    fn rise(&self, changes: &[Change], time: f64, height: f64) -> f64 {
+        Course::new(self, changes, height).rise(time)
     }
 
     /// L/k, m²·K/W.
@@ -84,19 +66,83 @@ impl Slab {
     }
 }
 
-/// What the flux of `old` changes has left at `time` beside what still fades, as a rise over L/k.
-fn lasting(old: &[Change], time: f64, height: f64, diffusion_time: f64) -> f64 {
-    let untils = old.iter().skip(1).map(|change| change.time).chain([time]);
-    let energy: f64 = old.iter().zip(untils).map(|(change, until)| energy(change, until)).sum();
-    let now = old.last().map_or(0.0, |last| {
-        let flux = last.flux + last.slope * (time - last.time);
-        let bend = last.slope * diffusion_time;
-        response::quasi_steady(height) * flux + response::ramp_offset(height) * bend
-    });
-    energy / diffusion_time + now
+/// The rise at one height, followed forward in time.
+///
+/// Changes of the flux long ago have left their heat and a fading transient; those just made are
+/// taken as on a half-space. So nothing cancels, neither early nor after thousands of seconds.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Course<'a> {
+    changes: &'a [Change],
+    height: f64,
+    diffusion_time: f64, // s
+    resistance: f64,     // m²·K/W
+    /// From here on the rise is told, s.
+    time: f64,
+    /// So many changes are in `fading`.
+    old: usize,
+    fading: Transients,
 }
 
-fn energy(change: &Change, until: f64) -> f64 {
-    let spent = until - change.time;
-    spent * (change.flux + change.slope * spent / 2.0)
+impl<'a> Course<'a> {
+    /// From the first change on.
+    pub(super) fn new(slab: &Slab, changes: &'a [Change], height: f64) -> Self {
+        Self {
+            changes,
+            height,
+            diffusion_time: slab.diffusion_time().si(),
+            resistance: slab.resistance(),
+            time: 0.0,
+            old: 0,
+            fading: Transients::NONE,
+        }
+    }
+
+    /// Goes on to a later time: what is old there is told the faster from then on.
+    pub(super) fn advance(&mut self, time: f64) {
+        self.fading.age((time - self.time) / self.diffusion_time);
+        self.time = time;
+        while let Some(change) = self.changes.get(self.old)
+            && self.is_old(change, time)
+        {
+            let bend = change.bend * self.diffusion_time;
+            self.fading.add(self.fourier(change, time), self.height, change.step, bend);
+            self.old += 1;
+        }
+    }
+
+    fn fourier(&self, change: &Change, time: f64) -> f64 {
+        (time - change.time) / self.diffusion_time
+    }
+
+    fn is_old(&self, change: &Change, time: f64) -> bool {
+        self.fourier(change, time) >= response::IMAGES_BELOW
+    }
+
+    /// The rise in K at `time` in s, no earlier than the course has advanced to.
+    pub(super) fn rise(&self, time: f64) -> f64 {
+        let (faded, newer) = self.changes.split_at(self.old);
+        let old = newer.iter().take_while(|change| self.is_old(change, time)).count();
+        let (old, recent) = newer.split_at(old);
+        let fading = old.iter().map(|change| {
+            let bend = change.bend * self.diffusion_time;
+            response::transient(self.fourier(change, time), self.height, change.step, bend)
+        });
+        let beginning = recent.iter().take_while(|change| change.time < time).map(|change| {
+            let (fourier, bend) = (self.fourier(change, time), change.bend * self.diffusion_time);
+            change.step * response::step_by_images(fourier, self.height)
+                + bend * response::ramp_by_images(fourier, self.height)
+        });
+        let transient = fading.chain(beginning).sum::<f64>()
+            + self.fading.left_after((time - self.time) / self.diffusion_time);
+        let lasting = old.last().or(faded.last()).map_or(0.0, |last| self.lasting(last, time));
+        lasting * self.resistance + transient * self.resistance
+    }
+
+    /// What the changes up to the `last` old one have left beside what still fades, as a rise over L/k.
+    fn lasting(&self, last: &Change, time: f64) -> f64 {
+        let bend = last.slope * self.diffusion_time;
+        last.heat_until(time) / self.diffusion_time
+            + response::quasi_steady(self.height) * last.flux_at(time)
+            + response::ramp_offset(self.height) * bend
+    }
 }
