@@ -1,0 +1,128 @@
+//! One request through the router for each endpoint, each beside its floor.
+
+use std::fmt::Debug;
+use std::hint::black_box;
+use std::time::Duration;
+
+use axum::body::{Body, Bytes};
+use axum::http::header::CONTENT_TYPE;
+use axum::http::{Request, StatusCode};
+use axum::routing::post;
+use axum::{Extension, Router};
+use brakewright::api::extract::{Json, decode};
+use brakewright::api::health::Readiness;
+use brakewright::api::layers::{LayerSettings, wrap};
+use brakewright::api::record::input_digest;
+use brakewright::api::router;
+use brakewright::api::v1::actuation_force::ActuationForceRequest;
+use brakewright::api::v1::duty_cycle::DutyCycleRequest;
+use brakewright::api::v1::pad_capacity::PadCapacityRequest;
+use brakewright::api::v1::stop_energy::StopEnergyRequest;
+use brakewright::api::v1::stopping::StoppingRequest;
+use criterion::Criterion;
+use http_body_util::BodyExt as _;
+use serde::de::DeserializeOwned;
+use serde_json::Value;
+use tokio::runtime::Runtime;
+use tower::ServiceExt as _;
+use utoipa::ToSchema;
+
+use crate::request;
+
+/// Every endpoint, and the parts of a request that all share.
+pub(crate) fn all(criterion: &mut Criterion) {
+    let bench = Bench::new();
+    bench.compare::<PadCapacityRequest>(criterion, "pad-capacity", &request::pad_capacity());
+    bench.compare::<ActuationForceRequest>(
+        criterion,
+        "actuation-force",
+        &request::actuation_force(),
+    );
+    bench.compare::<StoppingRequest>(criterion, "stopping", &request::stop(0.0));
+    bench.compare::<StopEnergyRequest>(criterion, "stop-energy", &request::stop(0.0));
+    bench.compare::<DutyCycleRequest>(criterion, "duty-cycle", &request::duty_cycle());
+    parts(criterion);
+}
+
+/// Layers with limits that nothing here meets.
+fn settings() -> LayerSettings {
+    LayerSettings {
+        max_body_bytes: 1024 * 1024,
+        request_timeout: Duration::from_secs(30),
+        max_concurrency: 64,
+        allowed_origins: Vec::new(),
+    }
+}
+
+/// The service and what runs it.
+struct Bench {
+    runtime: Runtime,
+    service: Router,
+}
+
+impl Bench {
+    fn new() -> Self {
+        let runtime = tokio::runtime::Builder::new_current_thread().enable_all().build();
+        Self { runtime: runtime.unwrap(), service: router(&settings(), Readiness::default()) }
+    }
+
+    /// Measures an endpoint and its floor in one group.
+    fn compare<T>(&self, criterion: &mut Criterion, endpoint: &str, body: &Value)
+    where
+        T: DeserializeOwned + ToSchema + Debug + Send + 'static,
+    {
+        let path = format!("/v1/{endpoint}");
+        let body = Bytes::from(body.to_string());
+        let answer = self.runtime.block_on(send(&self.service, &path, &body));
+        let floor = floor::<T>(&path, answer);
+        let mut group = criterion.benchmark_group(format!("request/{endpoint}"));
+        for (name, router) in [("service", &self.service), ("floor", &floor)] {
+            group.bench_function(name, |bench| {
+                bench.iter(|| self.runtime.block_on(send(router, &path, &body)));
+            });
+        }
+    }
+}
+
+async fn send(router: &Router, path: &str, body: &Bytes) -> Bytes {
+    let request = Request::post(path).header(CONTENT_TYPE, "application/json");
+    let request = request.body(Body::from(body.clone())).unwrap();
+    let answer = router.clone().oneshot(request).await.unwrap();
+    let (status, body) = (answer.status(), answer.into_body());
+    let body = body.collect().await.unwrap().to_bytes();
+    assert_eq!(status, StatusCode::OK, "{body:?}");
+    body
+}
+
+/// Reads a `T` and answers always the same.
+fn floor<T>(path: &str, answer: Bytes) -> Router
+where
+    T: DeserializeOwned + ToSchema + Debug + Send + 'static,
+{
+    let handler = |Extension(answer): Extension<Bytes>, request: Json<T>| async move {
+        black_box(request.value);
+        ([(CONTENT_TYPE, "application/json")], answer)
+    };
+    wrap(Router::new().route(path, post(handler)).layer(Extension(answer)), &settings())
+}
+
+fn parts(criterion: &mut Criterion) {
+    let body = request::stop(0.0).to_string();
+    criterion.bench_function("decode/stop-energy", |bench| {
+        bench.iter(|| decode::<StopEnergyRequest>(black_box(body.as_bytes())).unwrap());
+    });
+    let small = request::pad_capacity().to_string();
+    criterion.bench_function("decode/pad-capacity", |bench| {
+        bench.iter(|| decode::<PadCapacityRequest>(black_box(small.as_bytes())).unwrap());
+    });
+    let faulty = request::faulty_pad_capacity().to_string();
+    criterion.bench_function("decode/pad-capacity with three faults", |bench| {
+        bench.iter(|| decode::<PadCapacityRequest>(black_box(faulty.as_bytes())).unwrap_err());
+    });
+    criterion.bench_function("digest/pad-capacity", |bench| {
+        bench.iter(|| input_digest(black_box(small.as_bytes())));
+    });
+    criterion.bench_function("digest/stop-energy", |bench| {
+        bench.iter(|| input_digest(black_box(body.as_bytes())));
+    });
+}
