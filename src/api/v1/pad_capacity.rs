@@ -114,6 +114,7 @@ impl PadCapacityRequest {
         let pressure_distribution =
             PressureDistribution::read(self.pressure_distribution, &at_distribution, &mut reader);
         let clamp_force = reader.optional(&at.member("clamp_force"), self.clamp_force.as_ref());
+        reader.take(&at, pad_capacity::faults(faces, clamp_force).into_result(()));
         let input = pad.zip(lining);
         reader.finish(input.map(|(pad, lining)| Input {
             pad,

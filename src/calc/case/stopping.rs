@@ -13,7 +13,9 @@ use crate::calc::motion::{
     LockFactors, MEAN_FULLY_DEVELOPED, PHASES, Reduced, Stop, lock_factors, stop,
 };
 use crate::calc::pressure::FRICTION_TORQUE;
-use crate::calc::quantity::{Amount, Dimension, Force, STANDARD_GRAVITY, Si, Torque, Volume};
+use crate::calc::quantity::{
+    Amount, Angle, Dimension, Force, STANDARD_GRAVITY, Si, Torque, Volume,
+};
 
 /// A machine, its brakes and the stop asked of them. Speeds and the deceleration are SI along the coordinate:
 /// m/s and m/s² of a vehicle, load or belt, rad/s and rad/s² of a shaft.
@@ -120,57 +122,74 @@ impl Input {
     /// What is impossible about the stop. Members are those of the request.
     #[must_use]
     pub fn faults(&self) -> Faults {
-        let mut faults = Faults::new();
-        let (initial, end) = match self.machine.coordinate() {
-            Coordinate::Way => ("initial_speed", "final_speed"),
-            Coordinate::Angle => ("initial_rotational_speed", "final_rotational_speed"),
-        };
-        faults.positive(initial, self.initial_speed);
-        faults.not_negative(end, self.final_speed);
-        if faults.is_empty() {
-            let holds = self.final_speed < self.initial_speed;
-            faults.require(
-                holds,
-                end,
-                FaultCode::NotBelowInitialSpeed,
-                "must be below the initial speed",
-            );
-        }
-        let holds = self.situation.grade.si().abs() <= std::f64::consts::FRAC_PI_4 * (1.0 + 1e-12);
-        faults.require(holds, "grade", FaultCode::OutOfRange, "must not be steeper than 100 %");
-        if let Some(deceleration) = self.deceleration {
-            faults.positive("deceleration", deceleration);
-        }
+        let speeds = (self.initial_speed, self.final_speed);
+        let mut faults = speed_faults(self.machine.coordinate(), speeds, self.deceleration);
+        faults.part("", grade_faults(self.situation.grade).into_result(()));
         let holds = (1..=100).contains(&self.fitted.len());
         faults.require(holds, "fitted", FaultCode::WrongCount, "must have 1 to 100 entries");
-        self.place_faults(&mut faults);
-        faults
-    }
-
-    fn place_faults(&self, faults: &mut Faults) {
         let is_vehicle = self.machine.vehicle().is_some();
         for (index, entry) in self.fitted.iter().enumerate() {
-            let at = |member: &str| format!("fitted/{index}/{member}");
-            match (is_vehicle, entry.parts().place) {
-                (true, None) => faults.add(
-                    at("axle"),
-                    FaultCode::Missing,
-                    "is required on a vehicle: front, rear or all",
-                ),
-                (false, Some(_)) => {
-                    faults.add(at("axle"), FaultCode::NotApplicable, "belongs to vehicles only");
-                }
-                _ => {}
-            }
-            if !is_vehicle && entry.parts().rolling_radius.is_some() {
-                faults.add(
-                    at("rolling_radius"),
-                    FaultCode::NotApplicable,
-                    "belongs to vehicles only",
-                );
-            }
+            let parts = entry.parts();
+            let found = place_faults(is_vehicle, parts.place, parts.rolling_radius.is_some());
+            faults.part(&format!("fitted/{index}"), found.into_result(()));
         }
+        faults
     }
+}
+
+/// What is impossible about initial and final speed and the deceleration, in SI along the coordinate.
+#[must_use]
+pub fn speed_faults(
+    coordinate: Coordinate,
+    (initial, end): (f64, f64),
+    deceleration: Option<f64>,
+) -> Faults {
+    let mut faults = Faults::new();
+    let [at_initial, at_end, at_deceleration] = match coordinate {
+        Coordinate::Way => ["initial_speed", "final_speed", "deceleration"],
+        Coordinate::Angle => {
+            ["initial_rotational_speed", "final_rotational_speed", "angular_deceleration"]
+        }
+    };
+    faults.positive(at_initial, initial);
+    faults.not_negative(at_end, end);
+    if faults.is_empty() {
+        let detail = "must be below the initial speed";
+        faults.require(end < initial, at_end, FaultCode::NotBelowInitialSpeed, detail);
+    }
+    if let Some(deceleration) = deceleration {
+        faults.positive(at_deceleration, deceleration);
+    }
+    faults
+}
+
+/// Refuses a grade that is too steep to stand for a road.
+#[must_use]
+pub fn grade_faults(grade: Angle) -> Faults {
+    let mut faults = Faults::new();
+    let holds = grade.si().abs() <= std::f64::consts::FRAC_PI_4 * (1.0 + 1e-12);
+    faults.require(holds, "grade", FaultCode::OutOfRange, "must not be steeper than 100 %");
+    faults
+}
+
+/// Demands an axle on a vehicle, and neither axle nor rolling radius elsewhere. Members are those of an entry.
+#[must_use]
+pub fn place_faults(is_vehicle: bool, place: Option<Place>, has_rolling_radius: bool) -> Faults {
+    let mut faults = Faults::new();
+    match (is_vehicle, place) {
+        (true, None) => {
+            let detail = "is required on a vehicle: front, rear or all";
+            faults.add("axle", FaultCode::Missing, detail);
+        }
+        (false, Some(_)) => {
+            faults.add("axle", FaultCode::NotApplicable, "belongs to vehicles only");
+        }
+        _ => {}
+    }
+    if !is_vehicle && has_rolling_radius {
+        faults.add("rolling_radius", FaultCode::NotApplicable, "belongs to vehicles only");
+    }
+    faults
 }
 
 /// Computes the stop.
@@ -379,7 +398,11 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
     if input.deceleration.is_some() && !case.stop.is_modulated {
         let detail =
             "the deceleration asked for is more than brakes and tires give: full torque was taken";
-        find(Notice::DecelerationNotReached, Severity::Exceeded, "deceleration", detail);
+        let member = match input.machine.coordinate() {
+            Coordinate::Way => "deceleration",
+            Coordinate::Angle => "angular_deceleration",
+        };
+        find(Notice::DecelerationNotReached, Severity::Exceeded, member, detail);
     }
     match case.hardest.map(|(instant, _)| instant.limited_by) {
         Some(LimitedBy::Adhesion) => {

@@ -14,9 +14,10 @@ use crate::api::measure::{
 use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
 use crate::api::record::pointer_to;
 use crate::calc::actuation::{Actuation as Chain, Input as Driving};
-use crate::calc::case::stopping::Input;
-use crate::calc::fitted::{Fitted as Entry, Pressed};
+use crate::calc::case::stopping::{Input, grade_faults, speed_faults};
+use crate::calc::fitted::{Fitted as Entry, Pressed, press};
 use crate::calc::machine::{Direction as Way, Situation};
+use crate::calc::motion::Coordinate;
 use crate::calc::quantity::Si;
 
 /// Which way a hoist's load moves.
@@ -62,13 +63,22 @@ impl StopMembers<'_> {
     /// The stop that is meant.
     pub fn read(&self, at: &At<'_>, reader: &mut Reader) -> Option<Input> {
         let machine = self.machine.read(&at.member("machine"), reader);
-        let fitted = Fitted::read_all(self.fitted, &at.member("fitted"), reader);
+        let is_vehicle = matches!(self.machine, Machine::Vehicle(_));
+        let fitted = Fitted::read_all(self.fitted, is_vehicle, &at.member("fitted"), reader);
         let is_shaft = matches!(self.machine, Machine::Shaft(_));
         let (initial_speed, final_speed) =
             if is_shaft { self.turning(at, reader) } else { self.moving(at, reader) };
         let deceleration = self.held(is_shaft, at, reader);
         let situation = self.situation(at, reader);
         let delays = Response::read(self.response, &at.member("response"), reader);
+        let coordinate = if is_shaft { Coordinate::Angle } else { Coordinate::Way };
+        if let Some(initial) = initial_speed {
+            let found = speed_faults(coordinate, (initial, final_speed), deceleration);
+            reader.take(at, found.into_result(()));
+        }
+        if let Some(fitted) = &fitted {
+            reader.take(&at.member("fitted"), press(fitted).map(drop));
+        }
         let input = Input {
             machine: machine?,
             fitted: fitted?,
@@ -144,6 +154,7 @@ impl StopMembers<'_> {
         let (at_grade, at_drive) = (at.member("grade"), at.member("drive_force"));
         let (grade, drive_force) = if matches!(self.machine, Machine::Vehicle(_)) {
             let grade = reader.or_default(&at_grade, self.grade, 0.0, "%");
+            reader.take(at, grade_faults(grade).into_result(()));
             (grade, reader.or_default(&at_drive, self.drive_force, 0.0, "N"))
         } else {
             reader.not_applicable(&at_grade, self.grade.is_some(), "belongs to vehicles only");
