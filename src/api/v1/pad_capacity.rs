@@ -29,6 +29,7 @@ pub struct PadCapacityRequest {
     /// Its friction material.
     pub lining: Lining,
     /// Friction faces, 1 to 1000; 2 if left out: one caliper with two pads.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub faces: Option<u32>,
     /// How the pressure spreads over the pad.

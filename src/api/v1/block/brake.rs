@@ -21,6 +21,7 @@ pub struct Brake {
     /// Its friction material.
     pub lining: Lining,
     /// Friction faces of the brake, 2 if left out: one caliper with two pads. With a disc 1 or 2.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub faces: Option<u32>,
     /// How the pressure spreads over the pad.

@@ -22,12 +22,14 @@ pub struct Fitted {
     #[schema(nullable = false)]
     pub torque: Option<Torque>,
     /// Brakes that act together, 1 (the default) to 1000.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub count: Option<u32>,
     /// Where they act: required on a vehicle, an error elsewhere.
     #[schema(nullable = false)]
     pub axle: Option<AxlePlace>,
     /// How many of them press the same disc, 1 if left out; divides `count`.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub brakes_per_disc: Option<u32>,
     /// Brake speed over wheel speed, or over that of the reference brake shaft; 1 if left out.
