@@ -395,7 +395,7 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
                 .find(Finding::notice(code, severity, subject, detail).in_case(case.friction_case));
         }
     };
-    if input.deceleration.is_some() && !case.stop.is_modulated {
+    if input.deceleration.is_some() && !case.stop.is_modulated && case.hardest.is_some() {
         let detail =
             "the deceleration asked for is more than brakes and tires give: full torque was taken";
         let member = match input.machine.coordinate() {
