@@ -328,7 +328,7 @@ const DEGREE: f64 = std::f64::consts::PI / 180.0;
 fn factor(unit: &str) -> f64 {
     match unit {
         "1" | "m" | "m2" | "kg" | "N" | "N.m" | "m/s" | "rad/s" | "m/s2" | "rad/s2" | "s" | "K"
-        | "rad" | "kg.m2" => 1.0,
+        | "rad" | "kg.m2" | "kg/m3" | "%" => 1.0,
         "mm" => 1e-3,
         "mm2" => 1e-6,
         "mm3" => 1e-9,
