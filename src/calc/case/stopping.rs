@@ -3,7 +3,7 @@
 use crate::calc::actuation::Pressing;
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{
-    Caution, CheckCode, Comparison, Finding, Notice, Remarks, Severity, Subject, WarningCode,
+    Caution, CheckCode, Finding, Notice, Remarks, Severity, Subject, WarningCode,
 };
 use crate::calc::fitted::{Fitted, Place, Pressed, friction_cases, needed, operator_stroke, press};
 use crate::calc::friction::FrictionCase;
@@ -77,9 +77,10 @@ impl CaseOutcome {
     #[must_use]
     pub fn limited_by(&self) -> LimitedBy {
         match self.hardest {
-            Some((instant, _)) if instant.limited_by != LimitedBy::Brake => instant.limited_by,
+            // The operator asks for no more, even if one axle holds no more on the way there.
             _ if self.stop.is_modulated => LimitedBy::Operator,
-            _ => LimitedBy::Brake,
+            Some((instant, _)) => instant.limited_by,
+            None => LimitedBy::Brake,
         }
     }
 
@@ -349,17 +350,22 @@ fn note_ending(remarks: &mut Remarks, case: &CaseOutcome) {
         Coordinate::Angle => Dimension::Torque,
     };
     match stop.ending {
-        Ending::NotReached { .. } => remarks.compare(
-            Comparison {
-                code: CheckCode::Stops,
-                subject: Subject::Request("fitted"),
-                friction_case: Some(case.friction_case),
-                actual: Amount { dimension, si: stop.driving },
-                limit: Amount { dimension, si: stop.available },
-                what: "what drives the machine against its brakes",
-            },
-            0.0,
-        ),
+        Ending::NotReached { .. } => {
+            let code = WarningCode::Check(CheckCode::Stops);
+            // Cases come from low to high friction: the first that fails is the worst. Balanced is not stopped.
+            if remarks.findings().iter().all(|known| known.code != code) {
+                remarks.find(Finding {
+                    code,
+                    severity: Severity::Exceeded,
+                    subject: Subject::Request("fitted"),
+                    friction_case: Some(case.friction_case),
+                    actual: Some(Amount { dimension, si: stop.driving }),
+                    limit: Some(Amount { dimension, si: stop.available }),
+                    detail: "what drives the machine is not less than what its brakes hold: it does not stop"
+                        .to_owned(),
+                });
+            }
+        }
         Ending::Reached(Some(run_back)) => {
             let is_held = run_back.time.is_some();
             let (severity, detail) = if is_held {
