@@ -4,4 +4,5 @@ mod accept;
 mod frame;
 mod openapi;
 mod problems;
+mod properties;
 mod v1;

@@ -443,3 +443,10 @@ pub(crate) async fn assert_both_unit_systems(path: &str, body: &Value) {
     assert_same_physics(&in_si, &in_us, 1e-12);
     assert_ne!(in_si["results"], in_us["results"]);
 }
+
+/// Status and body of whatever comes back.
+pub(crate) async fn bytes_or_problem(path: &str, body: &str) -> (u16, Value) {
+    let request = Request::post(path).header("content-type", "application/json");
+    let answer = TestApp::new().send_any(request.body(Body::from(body.to_owned())).unwrap()).await;
+    (answer.status.as_u16(), answer.json())
+}

@@ -1,7 +1,7 @@
 //! The calculations, seen through the front door.
 
 mod actuation_force;
-mod common;
+pub(crate) mod common;
 mod conformity;
 mod faults;
 mod pad_capacity;
