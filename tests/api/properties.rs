@@ -154,7 +154,7 @@ struct Road {
 prop_compose! {
     fn road()(
         mass in 100.0..4e4_f64, radius in 0.2..0.6_f64, rotating in 1.0..1.2_f64, rolling in 0.0..0.03_f64,
-        drag in 0.0..5.0_f64, adhesion in 0.2..1.1_f64, speed in 2.0..40.0_f64, percent in -5.0..8.0_f64,
+        drag in prop_oneof![Just(0.0), 0.1..5.0_f64], adhesion in 0.2..1.1_f64, speed in 2.0..40.0_f64, percent in -5.0..8.0_f64,
         delays in [0.0..1.5_f64, 0.0..0.6, 0.0..0.8], share in [0.1..0.6_f64, 0.1..0.6],
     ) -> Road {
         let brake_force = share.map(|share| share * mass * 9.8);
@@ -200,8 +200,12 @@ const US: Units = Units { is_us: true };
 /// What two roundings of every input and some cancellation leave.
 const CONVERTED: f64 = 1e-9;
 
+/// What is left where air resistance is integrated: steps fall elsewhere when an input moves by a rounding, and the
+/// power course that heats a surface is divided along them.
+const INTEGRATED: f64 = 1e-5;
+
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 48, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(ProptestConfig { cases: 32, max_shrink_iters: 64, failure_persistence: None, ..ProptestConfig::default() })]
 
     #[test]
     fn the_unit_system_of_a_pad_never_changes_physics(pressed in pressed()) {
@@ -231,7 +235,7 @@ proptest! {
         };
         for path in [STOPPING, STOP_ENERGY] {
             let [si, us] = [SI, US].map(|units| answer(path, &body(units)));
-            assert_same_physics(&si, &us, CONVERTED);
+            assert_same_physics(&si, &us, if road.drag > 0.0 { INTEGRATED } else { CONVERTED });
         }
     }
 
@@ -334,53 +338,65 @@ proptest! {
         let sum = |member: &str, unit: &str| phases.iter().map(|phase| of(&phase[member], unit)).sum::<f64>();
         close(sum("time", "s"), of(&stop["total_time"], "s"), 1e-12)?;
         close(sum("distance", "m"), of(&stop["total_distance"], "m"), 1e-12)?;
-        let ends = phases.iter().map(|phase| of(&phase["end_speed"], "m/s"));
-        prop_assert!(ends.last().unwrap().abs() < 1e-6 * road.speed);
+        prop_assert_eq!(of(&phases.last().unwrap()["end_speed"], "m/s"), 0.0);
     }
 }
 
-/// Bodies with as many members as there are, for all kinds of pads, chains and machines.
-fn examples() -> Vec<(&'static str, Value)> {
-    let pads = [
-        json!({"shape": "annular_sector", "inner_radius": q(100.0, "mm"), "outer_radius": q(150.0, "mm"), "angle": q(60.0, "deg"), "wear_allowance": q(9.0, "mm")}),
-        json!({"shape": "round", "radius": q(20.0, "mm"), "center_radius": q(125.0, "mm")}),
+/// A pad of each shape.
+fn pads() -> [Value; 3] {
+    let wear = q(9.0, "mm");
+    [
+        json!({"shape": "annular_sector", "inner_radius": q(100.0, "mm"), "outer_radius": q(150.0, "mm"), "angle": q(60.0, "deg"), "wear_allowance": wear}),
+        json!({"shape": "round", "radius": q(20.0, "mm"), "center_radius": q(125.0, "mm"), "wear_allowance": wear}),
         json!({"shape": "outline", "unit": "mm", "points": [[100, -30], [140, -42], [140, 42], [100, 30]]}),
-    ];
-    let lining = json!({
+    ]
+}
+
+/// A lining with every member.
+fn full_lining() -> Value {
+    json!({
         "friction": {"low": 0.33, "nominal": 0.38, "high": 0.44}, "max_pressure": q(2.4, "MPa"),
-        "max_rubbing_speed": q(20.0, "m/s"), "max_pressure_velocity": q(10.0, "MPa.m/s"), "max_power_flux": q(3.0, "W/mm2"),
-        "max_energy_flux": q(9.0, "J/mm2"), "max_temperature_continuous": q(250.0, "degC"), "max_temperature_peak": q(400.0, "degC"),
+        "max_rubbing_speed": q(20.0, "m/s"), "max_pressure_velocity": q(10.0, "MPa.m/s"),
+        "max_power_flux": q(3.0, "W/mm2"), "max_energy_flux": q(9.0, "J/mm2"),
+        "max_temperature_continuous": q(250.0, "degC"), "max_temperature_peak": q(400.0, "degC"),
         "fade": [{"temperature": q(100.0, "degC"), "factor": 1.0}, {"temperature": q(400.0, "degC"), "factor": 0.7}],
-        "specific_wear": q(120.0, "mm3/MJ"), "conductivity": q(1.0, "W/(m.K)"), "density": q(2200.0, "kg/m3"),
-        "specific_heat": q(1000.0, "J/(kg.K)"),
-    });
-    let chains = [
+        "specific_wear": q(120.0, "mm3/MJ"), "conductivity": q(1.0, "W/(m.K)"),
+        "density": q(2200.0, "kg/m3"), "specific_heat": q(1000.0, "J/(kg.K)"),
+    })
+}
+
+/// A chain of each kind, with every member but the input that it is to find.
+fn chains() -> [Value; 4] {
+    [
         json!({"kind": "hydraulic", "piston_diameter": q(54.0, "mm"), "pistons_per_side": 1, "efficiency": 0.97,
             "threshold_pressure": q(0.7, "bar"), "max_line_pressure": q(120.0, "bar"), "running_clearance": q(0.2, "mm"),
             "compliance": q(100.0, "mm3/MPa"),
-            "master_cylinder": {"bore": q(22.2, "mm"), "lever_ratio": 4.5, "efficiency": 0.9, "max_operator_force": q(400.0, "N"), "max_stroke": q(120.0, "mm")}}),
-        json!({"kind": "cable", "lever_ratio": 4, "cable_efficiency": 0.8, "caliper_ratio": 10, "caliper_efficiency": 0.9, "max_operator_force": q(200.0, "N")}),
-        json!({"kind": "pneumatic", "chamber_area": q(120.0, "cm2"), "max_air_pressure": q(0.8, "MPa"), "return_spring_force": q(300.0, "N"), "force_ratio": 1.2, "efficiency": 0.9}),
-    ];
-    let spring = json!({"kind": "spring", "spring_force": q(9.6, "kN"), "spring_rate": q(800.0, "N/mm"), "pad_wear_travel": q(2.0, "mm"), "release_travel": q(1.0, "mm"),
-        "force_ratio": 1, "efficiency": 0.9, "release_piston_diameter": q(60.0, "mm"), "max_release_pressure": q(7.0, "MPa")});
+            "master_cylinder": {"bore": q(22.2, "mm"), "lever_ratio": 4.5, "efficiency": 0.9,
+                "max_operator_force": q(400.0, "N"), "max_stroke": q(120.0, "mm")}}),
+        json!({"kind": "cable", "lever_ratio": 4, "cable_efficiency": 0.8, "caliper_ratio": 10,
+            "caliper_efficiency": 0.9, "max_operator_force": q(200.0, "N")}),
+        json!({"kind": "pneumatic", "chamber_area": q(120.0, "cm2"), "max_air_pressure": q(0.8, "MPa"),
+            "return_spring_force": q(300.0, "N"), "force_ratio": 1.2, "efficiency": 0.9}),
+        json!({"kind": "spring", "spring_rate": q(800.0, "N/mm"), "pad_wear_travel": q(2.0, "mm"),
+            "release_travel": q(1.0, "mm"), "force_ratio": 1, "efficiency": 0.9,
+            "release_piston_diameter": q(60.0, "mm"), "max_release_pressure": q(7.0, "MPa")}),
+    ]
+}
+
+fn full_brake(pad: &Value, chain: &Value) -> Value {
     let mut plate = disc();
     plate["outer_radius"] = q(170.0, "mm");
     plate["mass"] = q(8.0, "kg");
     plate["cooling"] = json!({"coefficient": q(60.0, "W/(m2.K)")});
-    let brake = |pad: &Value, chain: &Value| json!({"pad": pad, "lining": lining, "faces": 2, "disc": plate, "actuation": chain});
-    let mut found = Vec::new();
-    for pad in &pads {
-        found.push((PAD_CAPACITY, json!({"ref": "a", "report_units": "us", "pad": pad, "lining": lining, "faces": 2, "clamp_force": q(9.0, "kN")})));
-        found.push((PAD_CAPACITY, json!({"pad": pad, "lining": {"id": "sintered_metal_dry"}, "pressure_distribution": "uniform_pressure"})));
-    }
-    for chain in &chains {
-        found.push((
-            ACTUATION_FORCE,
-            json!({"brake": brake(&pads[0], chain), "torque": q(700.0, "N.m")}),
-        ));
-    }
-    let mut vehicle = Road {
+    json!({"pad": pad, "lining": full_lining(), "faces": 2, "disc": plate, "actuation": chain})
+}
+
+/// Stops of every machine, with brakes in their parts and with known torques.
+fn stops() -> Vec<Value> {
+    let [sector, round, outline] = pads();
+    let [hydraulic, cable, air, mut spring] = chains();
+    spring["spring_force"] = q(9.6, "kN");
+    let road = Road {
         mass: 1500.0,
         radius: 0.3,
         rotating: 1.04,
@@ -391,29 +407,42 @@ fn examples() -> Vec<(&'static str, Value)> {
         percent: -4.0,
         delays: [0.7, 0.2, 0.3],
         brake_force: [5e3, 3e3],
-    }
-    .stop(SI);
-    vehicle["fitted"] = json!([
-        {"brake": brake(&pads[0], &chains[0]), "axle": "front", "count": 2, "brakes_per_disc": 1, "speed_ratio": 1, "control": "pedal", "operator_share": 0.6, "rolling_radius": q(310.0, "mm")},
-        {"brake": brake(&pads[2], &chains[0]), "axle": "rear", "count": 2, "control": "pedal", "operator_share": 0.4},
-    ]);
-    vehicle["drive_force"] = q(-200.0, "N");
-    let mut held = vehicle.clone();
-    held["deceleration"] = q(3.0, "m/s2");
-    let pressed = |body: Value, chain: &Value| {
-        with(&body, "/fitted/0", json!({"brake": brake(&pads[1], chain)}))
     };
-    let stops = [
+    let fitted = json!([
+        {"brake": full_brake(&sector, &hydraulic), "axle": "front", "count": 2, "brakes_per_disc": 1, "speed_ratio": 1,
+            "control": "pedal", "operator_share": 0.6, "rolling_radius": q(310.0, "mm")},
+        {"brake": full_brake(&outline, &hydraulic), "axle": "rear", "count": 2, "control": "pedal", "operator_share": 0.4},
+    ]);
+    let mut vehicle = road.body(SI, &fitted);
+    vehicle["drive_force"] = q(-200.0, "N");
+    let held = with(&vehicle, "/deceleration", q(3.0, "m/s2"));
+    let pressed = |body: Value, chain: &Value| {
+        with(&body, "/fitted/0", json!({"brake": full_brake(&round, chain)}))
+    };
+    vec![
         vehicle,
         held,
         pressed(hoist(), &spring),
-        pressed(conveyor(), &chains[1]),
-        pressed(shaft(), &chains[2]),
+        pressed(conveyor(), &cable),
+        pressed(shaft(), &air),
         shaft(),
         hoist(),
         conveyor(),
-    ];
-    for body in stops {
+    ]
+}
+
+/// Bodies with as many members as there are, for all kinds of pads, chains and machines.
+fn examples() -> Vec<(&'static str, Value)> {
+    let mut found = Vec::new();
+    for pad in &pads() {
+        found.push((PAD_CAPACITY, json!({"ref": "a", "report_units": "us", "pad": pad, "lining": full_lining(), "faces": 2, "clamp_force": q(9.0, "kN")})));
+        found.push((PAD_CAPACITY, json!({"pad": pad, "lining": {"id": "sintered_metal_dry"}, "pressure_distribution": "uniform_pressure"})));
+    }
+    for chain in &chains() {
+        let brake = full_brake(&pads()[0], chain);
+        found.push((ACTUATION_FORCE, json!({"brake": brake, "torque": q(700.0, "N.m")})));
+    }
+    for body in stops() {
         found.push((STOPPING, with(&body, "/trace", json!({"points": 20}))));
         let warm = with(&body, "/ambient_temperature", q(30.0, "degC"));
         found.push((STOP_ENERGY, with(&warm, "/start_temperature", q(80.0, "degC"))));
@@ -500,7 +529,7 @@ fn anything() -> impl Strategy<Value = Value> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 600, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(ProptestConfig { cases: 600, max_shrink_iters: 256, failure_persistence: None, ..ProptestConfig::default() })]
 
     #[test]
     fn no_replaced_value_breaks_the_service(

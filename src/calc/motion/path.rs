@@ -191,15 +191,21 @@ const GAUSS: [(f64, f64); 5] = [
 pub struct Path {
     forces: Forces,
     pieces: Vec<Piece>,
+    final_speed: Option<f64>,
 }
 
 impl Path {
     pub(super) fn new(forces: &Forces) -> Self {
-        Self { forces: *forces, pieces: Vec::with_capacity(8) }
+        Self { forces: *forces, pieces: Vec::with_capacity(8), final_speed: None }
     }
 
     pub(super) fn push(&mut self, piece: Piece) {
         self.pieces.push(piece);
+    }
+
+    /// Says that the path ends at exactly this speed; the pieces come within some roundings of it.
+    pub(super) fn finish(&mut self, final_speed: f64) {
+        self.final_speed = Some(final_speed);
     }
 
     /// The forces on the machine.
@@ -211,12 +217,17 @@ impl Path {
     /// The end of the stop; zeros for an empty path.
     #[must_use]
     pub fn end(&self) -> Point {
-        self.pieces.last().map_or(Point { time: 0.0, speed: 0.0, distance: 0.0 }, Piece::end)
+        let end =
+            self.pieces.last().map_or(Point { time: 0.0, speed: 0.0, distance: 0.0 }, Piece::end);
+        Point { speed: self.final_speed.unwrap_or(end.speed), ..end }
     }
 
     /// Where the machine is `time` after the start, held at the end.
     #[must_use]
     pub fn at(&self, time: f64) -> Point {
+        if time >= self.end().time {
+            return self.end();
+        }
         let index = self.pieces.partition_point(|piece| piece.start + piece.duration < time);
         self.pieces
             .get(index)
@@ -251,6 +262,9 @@ impl Path {
                     end_speed: piece.end().speed,
                 }),
             }
+        }
+        if let Some(last) = totals.last_mut() {
+            last.end_speed = self.end().speed;
         }
         totals
     }
@@ -290,7 +304,7 @@ impl Path {
     pub fn hardest(&self) -> Option<(Instant, f64, f64)> {
         let mut hardest: Option<(Instant, f64, f64)> = None;
         for piece in self.torque_pieces() {
-            for time in [0.0, piece.duration] {
+            for time in [0.0, self.time_of_summit(piece), piece.duration] {
                 let instant = self.instant(piece, time);
                 // Equal decelerations: the later state is the one in which all limits show.
                 if hardest.is_none_or(|(found, ..)| instant.deceleration >= found.deceleration) {
@@ -299,6 +313,25 @@ impl Path {
             }
         }
         hardest
+    }
+
+    /// When the deceleration of a piece is highest: within it only where the torque rises while the air's force falls.
+    ///
+    /// Within a step of the integrator there is one summit, smooth or at the edge where a limit takes over; of
+    /// an edge the later side is taken, on which the limit shows.
+    fn time_of_summit(&self, piece: &Piece) -> f64 {
+        let is_bent = matches!(piece.motion, Motion::Integrated(_))
+            && matches!(piece.effort, Effort::Ramp(_, rate) if rate > 0.0);
+        if !is_bent {
+            return 0.0;
+        }
+        let deceleration = |time: f64| self.instant(piece, time).deceleration;
+        let (mut low, mut high) = (0.0, piece.duration);
+        for _ in 0..64 {
+            let (one, other) = (low + (high - low) / 3.0, high - (high - low) / 3.0);
+            if deceleration(one) < deceleration(other) { low = one } else { high = other }
+        }
+        high
     }
 
     /// Integral over time, while torque acts, of a function of the force balance and the speed.

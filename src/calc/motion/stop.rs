@@ -92,6 +92,7 @@ pub fn stop(forces: &Forces, demand: &Demand) -> Option<Stop> {
     let mut run = Run::new(forces, demand);
     let is_over = run.reaction() || run.dead()? || run.build_up()? || run.full()?;
     let ending = if is_over {
+        run.path.finish(demand.final_speed);
         Ending::Reached(run.run_back())
     } else {
         Ending::NotReached { tending_speed: tending_speed(forces, &run) }

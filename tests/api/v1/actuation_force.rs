@@ -182,7 +182,7 @@ async fn the_use_of_the_lining_is_told_and_warned_of() {
         match severity {
             None => assert!(!codes(&answer).contains(&"pad_peak_pressure")),
             Some(severity) => {
-                assert_warns(&answer, "pad_peak_pressure", severity, "#/brake/lining/max_pressure")
+                assert_warns(&answer, "pad_peak_pressure", severity, "#/brake/lining/max_pressure");
             }
         }
     }
@@ -324,13 +324,15 @@ async fn what_is_to_be_found_may_not_be_given() {
     }
 }
 
+/// Demands one fault of a chain with one member changed, at that member.
+async fn refused(body: &Value, member: &str, value: Value, code: &str) {
+    let (at, pointer) =
+        (format!("/brake/actuation/{member}"), format!("#/brake/actuation/{member}"));
+    assert_each(ACTUATION_FORCE, body, &[(&at, value, &pointer, code)]).await;
+}
+
 #[tokio::test]
 async fn impossible_demands_and_chains_are_refused() {
-    async fn refused(body: &Value, member: &str, value: Value, code: &str) {
-        let (at, pointer) =
-            (format!("/brake/actuation/{member}"), format!("#/brake/actuation/{member}"));
-        assert_each(ACTUATION_FORCE, body, &[(&at, value, &pointer, code)]).await;
-    }
     for value in [0.0, -1.0] {
         for (body, member, unit) in [
             (hydraulic(), "piston_diameter", "mm"),
@@ -362,6 +364,10 @@ async fn impossible_demands_and_chains_are_refused() {
         )
         .await;
     }
+}
+
+#[tokio::test]
+async fn efficiencies_offsets_and_counts_out_of_range_are_refused() {
     for value in [0.0, -0.5, 1.001] {
         for (body, member) in [
             (hydraulic(), "efficiency"),
@@ -390,9 +396,16 @@ async fn impossible_demands_and_chains_are_refused() {
     }
 }
 
+/// A disc of a catalog material between two radii, mm.
+fn disc(inner: f64, outer: f64) -> Value {
+    json!({
+        "material": {"id": "gray_cast_iron"}, "inner_radius": q(inner, "mm"), "outer_radius": q(outer, "mm"),
+        "thickness": q(20.0, "mm"),
+    })
+}
+
 #[tokio::test]
 async fn a_disc_that_does_not_fit_is_refused() {
-    let disc = |inner: f64, outer: f64| json!({"material": {"id": "gray_cast_iron"}, "inner_radius": q(inner, "mm"), "outer_radius": q(outer, "mm"), "thickness": q(20.0, "mm")});
     let beyond = "pad_beyond_disc";
     for (inner, outer, at, code) in [
         (90.0, 149.0, "#/brake/pad", beyond),
@@ -417,6 +430,11 @@ async fn a_disc_that_does_not_fit_is_refused() {
         &[0, 1, 2].map(|index: usize| (material[index].as_str(), "missing")),
     )
     .await;
+}
+
+#[tokio::test]
+async fn impossible_discs_are_refused() {
+    let fitting = with(&actuation_force(), "/brake/disc", disc(100.0, 150.0));
     assert_each(
         ACTUATION_FORCE,
         &fitting,

@@ -124,9 +124,11 @@ pub(crate) fn disc() -> Value {
 pub(crate) fn with(body: &Value, pointer: &str, value: impl Into<Value>) -> Value {
     let mut body = body.clone();
     let (parent, member) = pointer.rsplit_once('/').unwrap();
-    match body.pointer_mut(parent).unwrap_or_else(|| panic!("{parent} is not there")) {
-        Value::Array(items) => items[member.parse::<usize>().unwrap()] = value.into(),
-        parent => parent[member] = value.into(),
+    let parent = body.pointer_mut(parent).unwrap_or_else(|| panic!("{parent} is not there"));
+    if let Value::Array(items) = parent {
+        items[member.parse::<usize>().unwrap()] = value.into();
+    } else {
+        parent[member] = value.into();
     }
     body
 }
@@ -321,7 +323,7 @@ const INCH: f64 = 0.0254;
 const FOOT: f64 = 0.3048;
 const POUND: f64 = 0.453_592_37;
 const POUND_FORCE: f64 = POUND * G;
-const BTU: f64 = 1055.055_852_62;
+const BTU: f64 = 1_055.055_852_62;
 const DEGREE: f64 = std::f64::consts::PI / 180.0;
 
 /// Coherent SI of one unit: factors written again here, so that the service's table is not its own witness.
@@ -339,14 +341,13 @@ fn factor(unit: &str) -> f64 {
         "deg" => DEGREE,
         "lb" => POUND,
         "lbf" => POUND_FORCE,
-        "MPa" => 1e6,
+        "MPa" | "W/mm2" | "J/mm2" | "MPa.m/s" => 1e6,
         "psi" => POUND_FORCE / (INCH * INCH),
         "lbf.in" => POUND_FORCE * INCH,
         "kJ" | "kW" => 1e3,
         "Btu" => BTU,
         "hp" => 550.0 * FOOT * POUND_FORCE,
         "rpm" => std::f64::consts::PI / 30.0,
-        "W/mm2" | "J/mm2" | "MPa.m/s" => 1e6,
         "hp/in2" => 550.0 * FOOT * POUND_FORCE / (INCH * INCH),
         "Btu/in2" => BTU / (INCH * INCH),
         "psi.ft/min" => POUND_FORCE / (INCH * INCH) * FOOT / 60.0,

@@ -230,31 +230,31 @@ async fn impossible_entries_are_refused() {
 }
 
 /// The vehicle with one brake in its parts.
-fn with_brake(brake: Value) -> Value {
+fn with_brake(brake: &Value) -> Value {
     with(&stopping(), "/fitted/0", json!({"brake": brake, "axle": "all"}))
 }
 
 #[tokio::test]
 async fn a_brake_in_a_stop_needs_something_that_presses() {
     let at = "#/fitted/0/brake/actuation";
-    both(&with_brake(without(&brake(), "/actuation")), &[(at, "missing")]).await;
-    both(&with_brake(brake()), &[(at, "missing")]).await;
+    both(&with_brake(&without(&brake(), "/actuation")), &[(at, "missing")]).await;
+    both(&with_brake(&brake()), &[(at, "missing")]).await;
     for chain in [
         json!({"kind": "clamp_force"}),
         json!({"kind": "cable"}),
         json!({"kind": "pneumatic", "chamber_area": q(100.0, "cm2")}),
         json!({"kind": "spring"}),
     ] {
-        both(&with_brake(with(&brake(), "/actuation", chain)), &[(at, "missing")]).await;
+        both(&with_brake(&with(&brake(), "/actuation", chain)), &[(at, "missing")]).await;
     }
     let mut pressed = brake();
     pressed["actuation"]["line_pressure"] = q(1.0, "MPa");
     pressed["actuation"]["master_cylinder"] =
         json!({"bore": q(20.0, "mm"), "operator_force": q(100.0, "N")});
     let at = "#/fitted/0/brake/actuation/line_pressure";
-    both(&with_brake(pressed), &[(at, "conflict")]).await;
+    both(&with_brake(&pressed), &[(at, "conflict")]).await;
     let negative = json!({"kind": "clamp_force", "force": q(-1.0, "N")});
-    let body = with_brake(with(&brake(), "/actuation", negative));
+    let body = with_brake(&with(&brake(), "/actuation", negative));
     both(&body, &[("#/fitted/0/brake/actuation/force", "negative")]).await;
 }
 
@@ -281,7 +281,7 @@ async fn a_pad_beyond_its_disc_is_refused_at_the_pad() {
     small["outer_radius"] = q(140.0, "mm");
     let mut brake = with(&brake(), "/disc", small);
     brake["actuation"]["line_pressure"] = q(1.0, "MPa");
-    both(&with_brake(brake), &[("#/fitted/0/brake/pad", "pad_beyond_disc")]).await;
+    both(&with_brake(&brake), &[("#/fitted/0/brake/pad", "pad_beyond_disc")]).await;
 }
 
 #[tokio::test]
@@ -364,7 +364,7 @@ async fn faults_all_over_a_stop_come_in_one_answer() {
 
 #[tokio::test]
 async fn a_missing_input_joins_the_other_faults() {
-    let mut body = with_brake(brake());
+    let mut body = with_brake(&brake());
     body["machine"]["mass"] = q(-1.0, "kg");
     body["initial_speed"] = q(-1.0, "m/s");
     let expected = [
