@@ -18,3 +18,4 @@ pub mod motion;
 pub mod pad;
 pub mod pressure;
 pub mod quantity;
+pub mod wear;

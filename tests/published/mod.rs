@@ -1,3 +1,4 @@
+mod cooling;
 mod heat;
 mod linings;
 mod motion;

@@ -6,16 +6,19 @@ use utoipa::ToSchema;
 use super::block::delays::Response;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
-use super::block::stop::{Direction, StopMembers, stood_in};
+use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
 use crate::api::extract::{Answer, Json};
 use crate::api::measure::{
-    Acceleration, AngularAcceleration, Energy, EnergyFlux, Finite, Force, Grade, Power, PowerFlux,
-    ReportUnits, RotationalSpeed, Speed, Temperature, TemperatureDifference,
+    Acceleration, AngularAcceleration, Energy, EnergyFlux, Finite, Force, Grade,
+    HeatTransferCoefficient, Power, PowerFlux, ReportUnits, RotationalSpeed, Speed, StopFrequency,
+    Temperature, TemperatureDifference, Time,
 };
 use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, CautionText, FrictionCase, Record, Recorded, Warning};
 use crate::calc::case::stop_energy::{self, CaseOutcome, Energies, EntryEnergy, Input, Outcome};
+use crate::calc::fault::FaultCode;
+use crate::calc::quantity::Si;
 
 /// A machine, its brakes and the stop whose energy is asked for.
 #[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
@@ -69,6 +72,15 @@ pub struct StopEnergyRequest {
     /// Temperature of the discs before the stop; that of the air if left out.
     #[schema(nullable = false)]
     pub start_temperature: Option<Temperature>,
+    /// Time between the starts of repeated stops, longer than the braking; asks for temperatures of repeated stops.
+    #[schema(nullable = false)]
+    pub interval: Option<Time>,
+    /// The same as stops per time. Give this or `interval`, not both.
+    #[schema(nullable = false)]
+    pub stop_frequency: Option<StopFrequency>,
+    /// How many repeated stops to follow, 1 to 100000; until steady if left out.
+    #[schema(nullable = false)]
+    pub stop_count: Option<u32>,
 }
 
 /// What the stop costs.
@@ -162,6 +174,38 @@ pub struct FittedEnergy {
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schema(nullable = false)]
     pub surface_peak_temperature: Option<Temperature>,
+    /// Highest bulk temperature of the interval that ends where it began; absent if none does below 3000 K.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub steady_bulk_peak: Option<Temperature>,
+    /// Bulk temperature when the next braking starts, in that interval.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub steady_bulk_trough: Option<Temperature>,
+    /// Highest temperature of the rubbed surface in that interval.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub steady_surface_peak: Option<Temperature>,
+    /// Highest bulk temperature of the last stop of `stop_count`.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub peak_after_stops: Option<Temperature>,
+    /// Bulk temperature one interval after its start.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub trough_after_stops: Option<Temperature>,
+    /// The stop in which the bulk first reaches the lining's continuous limit; absent if none of 100000 does.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub stops_to_continuous_limit: Option<u32>,
+    /// Coefficient of cooling between the stops, at the hottest bulk temperature.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub cooling_coefficient: Option<HeatTransferCoefficient>,
+    /// Stops until the usable pad is worn off; needs `specific_wear` and `wear_allowance`.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false, value_type = Option<f64>)]
+    pub pad_life_stops: Option<Finite>,
 }
 
 /// Compute what a stop costs.
@@ -185,16 +229,20 @@ impl StopEnergyRequest {
         StopMembers {
             machine: &self.machine,
             fitted: &self.fitted,
-            initial_speed: self.initial_speed.as_ref(),
-            final_speed: self.final_speed.as_ref(),
-            initial_rotational_speed: self.initial_rotational_speed.as_ref(),
-            final_rotational_speed: self.final_rotational_speed.as_ref(),
-            grade: self.grade.as_ref(),
-            drive_force: self.drive_force.as_ref(),
-            direction: self.direction,
-            deceleration: self.deceleration.as_ref(),
-            angular_deceleration: self.angular_deceleration.as_ref(),
-            response: self.response.as_ref(),
+            stopping: Stopping {
+                initial_speed: self.initial_speed.as_ref(),
+                final_speed: self.final_speed.as_ref(),
+                initial_rotational_speed: self.initial_rotational_speed.as_ref(),
+                final_rotational_speed: self.final_rotational_speed.as_ref(),
+                deceleration: self.deceleration.as_ref(),
+                angular_deceleration: self.angular_deceleration.as_ref(),
+                response: self.response.as_ref(),
+            },
+            surroundings: Surroundings {
+                grade: self.grade.as_ref(),
+                drive_force: self.drive_force.as_ref(),
+                direction: self.direction,
+            },
         }
     }
 
@@ -216,7 +264,52 @@ impl StopEnergyRequest {
                 );
                 ambient_temperature
             });
-        reader.finish(stop.map(|stop| Input { stop, ambient_temperature, start_temperature }))
+        let interval = self.interval(&at, &mut reader);
+        let at_count = at.member("stop_count");
+        let is_wanted = self.interval.is_some() || self.stop_frequency.is_some();
+        reader.not_applicable(
+            &at_count,
+            self.stop_count.is_some() && !is_wanted,
+            "needs interval or stop_frequency",
+        );
+        let stop_count = self.stop_count;
+        reader.finish(stop.map(|stop| Input {
+            stop,
+            ambient_temperature,
+            start_temperature,
+            interval,
+            stop_count,
+        }))
+    }
+
+    /// The time between the starts of two stops, if repeated stops are asked for.
+    fn interval(&self, at: &At<'_>, reader: &mut Reader) -> Option<crate::calc::quantity::Time> {
+        let (at_interval, at_frequency) = (at.member("interval"), at.member("stop_frequency"));
+        let interval = reader.optional(&at_interval, self.interval.as_ref());
+        let frequency = reader.optional(&at_frequency, self.stop_frequency.as_ref());
+        match (interval, frequency) {
+            (Some(_), Some(_)) => {
+                reader.fault(
+                    &at_frequency,
+                    FaultCode::Conflict,
+                    "give either this or interval, not both",
+                );
+                None
+            }
+            (None, Some(frequency)) if frequency.si() > 0.0 => {
+                Some(crate::calc::quantity::Time::from_si(1.0 / frequency.si()))
+            }
+            (None, Some(_)) => {
+                reader.fault(&at_frequency, FaultCode::NotPositive, "must be above 0");
+                None
+            }
+            (Some(interval), None) if interval.si() > 0.0 => Some(interval),
+            (Some(_), None) => {
+                reader.fault(&at_interval, FaultCode::NotPositive, "must be above 0");
+                None
+            }
+            (None, None) => None,
+        }
     }
 
     fn answer(
@@ -264,6 +357,10 @@ impl StopEnergyCase {
 impl FittedEnergy {
     fn new(fitted_index: usize, entry: &EntryEnergy, units: ReportUnits) -> Self {
         let (brake, disc) = (entry.brake, entry.brake.and_then(|brake| brake.disc));
+        let repeated = brake.and_then(|brake| brake.repeated);
+        let steady = repeated.and_then(|repeated| repeated.steady);
+        let after = repeated.and_then(|repeated| repeated.series.after_count);
+        let temperature = |kelvins: f64| Temperature::report_si(kelvins, units);
         Self {
             fitted_index,
             energy: Energy::report(entry.energy, units),
@@ -277,6 +374,17 @@ impl FittedEnergy {
             disc_bulk_rise: disc.map(|disc| TemperatureDifference::report(disc.bulk_rise, units)),
             surface_peak_temperature: disc
                 .map(|disc| Temperature::report(disc.surface_peak_temperature, units)),
+            steady_bulk_peak: steady.map(|swing| temperature(swing.peak)),
+            steady_bulk_trough: steady.map(|swing| temperature(swing.trough)),
+            steady_surface_peak: repeated
+                .and_then(|repeated| repeated.steady_surface_peak)
+                .map(temperature),
+            peak_after_stops: after.map(|swing| temperature(swing.peak)),
+            trough_after_stops: after.map(|swing| temperature(swing.trough)),
+            stops_to_continuous_limit: repeated.and_then(|repeated| repeated.series.stops_to_limit),
+            cooling_coefficient: repeated
+                .map(|repeated| HeatTransferCoefficient::report_si(repeated.coefficient, units)),
+            pad_life_stops: brake.and_then(|brake| brake.pad_life_stops).map(Finite),
         }
     }
 }

@@ -1,7 +1,7 @@
 //! What must press so that one brake gives a torque.
 
 use crate::calc::actuation::{Actuation, Chosen, Input as Driving, Pressing};
-use crate::calc::brake::Brake;
+use crate::calc::brake::{Brake, Spot};
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{Finding, Notice, Remarks, Severity, Subject, WarningCode};
 use crate::calc::friction::FrictionCase;
@@ -97,13 +97,9 @@ fn computed(input: &Input, case: FrictionCase, remarks: &mut Remarks) -> CaseOut
     let highest = needed.map_or(clamp_force, |needed| needed.highest_clamp_force);
     let peak_pressure = input.brake.peak_pressure(highest);
     let operator_stroke = needed.and_then(|needed| stroke(parts.actuation.as_ref()?, &needed));
-    input.brake.compare_pressing(
-        remarks,
-        None,
-        &needed.unwrap_or(Pressing::by(clamp_force)),
-        Some(case),
-    );
-    input.brake.compare_stroke(remarks, None, operator_stroke, Some(case));
+    let spot = Spot { fitted_index: None, friction_case: Some(case) };
+    input.brake.hold_pressing(remarks, &needed.unwrap_or(Pressing::by(clamp_force)), spot);
+    input.brake.hold_stroke(remarks, operator_stroke, spot);
     remark_shortfall(remarks, input, case);
     CaseOutcome {
         friction_case: case,

@@ -1,8 +1,8 @@
 //! What a pad carries: force, pressure and torque.
 
-use crate::calc::brake::{check_faces, compare_peak_pressure, remark_lining, remark_pad};
+use crate::calc::brake::{Spot, check_faces, lining_bound, remark_lining, remark_pad};
 use crate::calc::fault::{FaultCode, Faults};
-use crate::calc::finding::Remarks;
+use crate::calc::finding::{CheckCode, Remarks};
 use crate::calc::friction::FrictionCase;
 use crate::calc::lining::Lining;
 use crate::calc::pad::Pad;
@@ -129,8 +129,10 @@ fn remarks(input: &Input, peak_pressure: Pressure) -> Remarks {
     remark_pad(&mut remarks, &input.pad, None);
     remark_lining(&mut remarks, &input.lining, None);
     // At the lining's own limit the pressure equals it by choice: no warning for what was asked.
-    if input.clamp_force.is_some() {
-        compare_peak_pressure(&mut remarks, &input.lining, peak_pressure, None, None);
+    let bound = lining_bound(&input.lining, CheckCode::PadPeakPressure);
+    if let (Some(bound), Some(_)) = (bound, input.clamp_force) {
+        let spot = Spot { fitted_index: None, friction_case: None };
+        bound.hold(&mut remarks, peak_pressure.si(), spot, 0.0);
     }
     remarks
 }

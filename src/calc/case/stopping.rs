@@ -1,6 +1,8 @@
 //! How a machine stops: time, way, deceleration, and what limits it.
 
 use crate::calc::actuation::Pressing;
+use crate::calc::brake::Spot;
+use crate::calc::disc::Cooling;
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{
     Caution, CheckCode, Finding, Notice, Remarks, Severity, Subject, WarningCode,
@@ -9,13 +11,11 @@ use crate::calc::fitted::{Fitted, Place, Pressed, friction_cases, needed, operat
 use crate::calc::friction::FrictionCase;
 use crate::calc::machine::{Machine, Situation, Vehicle};
 use crate::calc::motion::{
-    AXLE_FORCES, Coordinate, DRAG, Delays, Demand, Ending, Forces, Instant, LOCK_ORDER, LimitedBy,
+    AXLE_FORCES, Coordinate, DRAG, Demand, Ending, Forces, Instant, LOCK_ORDER, LimitedBy,
     LockFactors, MEAN_FULLY_DEVELOPED, PHASES, Reduced, Stop, lock_factors, stop,
 };
 use crate::calc::pressure::FRICTION_TORQUE;
-use crate::calc::quantity::{
-    Amount, Angle, Dimension, Force, STANDARD_GRAVITY, Si, Torque, Volume,
-};
+use crate::calc::quantity::{Amount, Dimension, Force, STANDARD_GRAVITY, Si, Torque, Volume};
 
 /// A machine, its brakes and the stop asked of them. Speeds and the deceleration are SI along the coordinate:
 /// m/s and m/s² of a vehicle, load or belt, rad/s and rad/s² of a shaft.
@@ -27,14 +27,8 @@ pub struct Input {
     pub fitted: Vec<Fitted>,
     /// What surrounds the stop.
     pub situation: Situation,
-    /// Speed at the start.
-    pub initial_speed: f64,
-    /// Speed at the end.
-    pub final_speed: f64,
-    /// Deceleration that the operator holds after build-up.
-    pub deceleration: Option<f64>,
-    /// The delays.
-    pub delays: Delays,
+    /// What the stop is asked to do.
+    pub demand: Demand,
 }
 
 /// The stop, once per friction case.
@@ -73,6 +67,18 @@ impl CaseOutcome {
         Torque::from_si(full * self.stop.fraction)
     }
 
+    /// What part of the brake work of each axle, front (or all) and rear, one brake of an entry does.
+    #[must_use]
+    pub fn shares_of_one_brake(&self, index: usize, entry: &Fitted) -> [f64; 2] {
+        let own = self.demands.get(index).copied().unwrap_or([0.0; 2]);
+        let count = f64::from(entry.parts().count);
+        let total = self.stop.path.forces().demand;
+        [0, 1].map(|axle: usize| match (own.get(axle), total.get(axle)) {
+            (Some(own), Some(total)) if *total > 0.0 => own / total / count,
+            _ => 0.0,
+        })
+    }
+
     /// What limits the deceleration where it is highest.
     #[must_use]
     pub fn limited_by(&self) -> LimitedBy {
@@ -109,73 +115,39 @@ impl CaseOutcome {
 }
 
 impl Input {
-    /// What the stop is asked to do.
-    #[must_use]
-    pub fn demand(&self) -> Demand {
-        Demand {
-            initial_speed: self.initial_speed,
-            final_speed: self.final_speed,
-            delays: self.delays,
-            deceleration: self.deceleration,
-        }
-    }
-
     /// What is impossible about the stop. Members are those of the request.
     #[must_use]
     pub fn faults(&self) -> Faults {
-        let speeds = (self.initial_speed, self.final_speed);
-        let mut faults = speed_faults(self.machine.coordinate(), speeds, self.deceleration);
-        faults.part("", grade_faults(self.situation.grade).into_result(()));
+        let mut faults = Faults::new();
+        faults.part("", self.demand.faults(self.machine.coordinate()).into_result(()));
+        faults.part("", self.situation.faults().into_result(()));
         let holds = (1..=100).contains(&self.fitted.len());
         faults.require(holds, "fitted", FaultCode::WrongCount, "must have 1 to 100 entries");
-        let is_vehicle = self.machine.vehicle().is_some();
-        for (index, entry) in self.fitted.iter().enumerate() {
-            let parts = entry.parts();
-            let found = place_faults(is_vehicle, parts.place, parts.rolling_radius.is_some());
-            faults.part(&format!("fitted/{index}"), found.into_result(()));
-        }
+        place_faults(&self.machine, &self.fitted, &mut faults);
         faults
     }
 }
 
-/// What is impossible about initial and final speed and the deceleration, in SI along the coordinate.
-#[must_use]
-pub fn speed_faults(
-    coordinate: Coordinate,
-    (initial, end): (f64, f64),
-    deceleration: Option<f64>,
-) -> Faults {
-    let mut faults = Faults::new();
-    let [at_initial, at_end, at_deceleration] = match coordinate {
-        Coordinate::Way => ["initial_speed", "final_speed", "deceleration"],
-        Coordinate::Angle => {
-            ["initial_rotational_speed", "final_rotational_speed", "angular_deceleration"]
+/// What does not fit between a machine and its brakes. Members are those of the request.
+pub fn place_faults(machine: &Machine, fitted: &[Fitted], faults: &mut Faults) {
+    let is_vehicle = machine.vehicle().is_some();
+    for (index, entry) in fitted.iter().enumerate() {
+        let at = format!("fitted/{index}");
+        let parts = entry.parts();
+        let found = entry_faults(is_vehicle, parts.place, parts.rolling_radius.is_some());
+        faults.part(&at, found.into_result(()));
+        let cooling = entry.brake().and_then(|brake| brake.parts().disc.as_ref()?.cooling());
+        if !is_vehicle && cooling == Some(Cooling::Airstream) {
+            let detail = "belongs to vehicles only: nothing else moves its disc through the air";
+            let at = format!("{at}/brake/disc/cooling/model");
+            faults.add(at, FaultCode::NotApplicable, detail);
         }
-    };
-    faults.positive(at_initial, initial);
-    faults.not_negative(at_end, end);
-    if faults.is_empty() {
-        let detail = "must be below the initial speed";
-        faults.require(end < initial, at_end, FaultCode::NotBelowInitialSpeed, detail);
     }
-    if let Some(deceleration) = deceleration {
-        faults.positive(at_deceleration, deceleration);
-    }
-    faults
-}
-
-/// Refuses a grade that is too steep to stand for a road.
-#[must_use]
-pub fn grade_faults(grade: Angle) -> Faults {
-    let mut faults = Faults::new();
-    let holds = grade.si().abs() <= std::f64::consts::FRAC_PI_4 * (1.0 + 1e-12);
-    faults.require(holds, "grade", FaultCode::OutOfRange, "must not be steeper than 100 %");
-    faults
 }
 
 /// Demands an axle on a vehicle, and neither axle nor rolling radius elsewhere. Members are those of an entry.
 #[must_use]
-pub fn place_faults(is_vehicle: bool, place: Option<Place>, has_rolling_radius: bool) -> Faults {
+pub fn entry_faults(is_vehicle: bool, place: Option<Place>, has_rolling_radius: bool) -> Faults {
     let mut faults = Faults::new();
     match (is_vehicle, place) {
         (true, None) => {
@@ -221,29 +193,42 @@ fn computed(
     pressed: &[Option<Pressed>],
     case: FrictionCase,
 ) -> Option<CaseOutcome> {
-    let torque =
-        |(entry, pressed): (&Fitted, &Option<Pressed>)| entry.torque(case, pressed.as_ref());
-    let full_torques: Vec<Torque> = input.fitted.iter().zip(pressed).map(torque).collect();
-    let demands: Vec<[f64; 2]> = input
-        .fitted
-        .iter()
-        .zip(&full_torques)
-        .map(|(entry, torque)| brake_force(&input.machine, entry, *torque))
-        .collect();
+    let torques = full_torques(&input.fitted, pressed, case);
+    let demands = brake_forces(&input.machine, &input.fitted, &torques);
     let forces = Forces::new(*system, total(&demands));
-    let stop = stop(&forces, &input.demand())?;
+    let stop = stop(&forces, &input.demand)?;
     let hardest = stop.path.hardest();
-    let lock = forces.lock_factors(hardest.map_or(input.initial_speed, |(.., speed)| speed));
+    let lock = forces.lock_factors(hardest.map_or(input.demand.initial_speed, |(.., speed)| speed));
     let is_finite = stop.path.end().time.is_finite() && stop.path.end().distance.is_finite();
     let hardest = hardest.map(|(instant, fraction, _)| (instant, fraction));
     is_finite.then_some(CaseOutcome {
         friction_case: case,
         stop,
-        full_torques,
+        full_torques: torques,
         demands,
         hardest,
         lock,
     })
+}
+
+/// Torque of one brake of each entry at full application.
+#[must_use]
+pub fn full_torques(
+    fitted: &[Fitted],
+    pressed: &[Option<Pressed>],
+    case: FrictionCase,
+) -> Vec<Torque> {
+    fitted
+        .iter()
+        .zip(pressed)
+        .map(|(entry, pressed)| entry.torque(case, pressed.as_ref()))
+        .collect()
+}
+
+/// Brake force of each entry's brakes together along the coordinate, split into front (or all) and rear.
+#[must_use]
+pub fn brake_forces(machine: &Machine, fitted: &[Fitted], torques: &[Torque]) -> Vec<[f64; 2]> {
+    fitted.iter().zip(torques).map(|(entry, torque)| brake_force(machine, entry, *torque)).collect()
 }
 
 /// The brake force of an entry along the coordinate, front (or all) and rear, with `torque` per brake.
@@ -261,7 +246,9 @@ fn brake_force(machine: &Machine, entry: &Fitted, torque: Torque) -> [f64; 2] {
     }
 }
 
-fn total(demands: &[[f64; 2]]) -> [f64; 2] {
+/// The sum of brake forces, front (or all) and rear.
+#[must_use]
+pub fn total(demands: &[[f64; 2]]) -> [f64; 2] {
     demands.iter().fold([0.0; 2], |sum, demand| [sum[0] + demand[0], sum[1] + demand[1]])
 }
 
@@ -304,7 +291,9 @@ fn note_methods(remarks: &mut Remarks, input: &Input, system: &Reduced) {
     if system.drag > 0.0 {
         remarks.method(&DRAG);
     }
-    if system.coordinate == Coordinate::Way && input.final_speed <= 0.1 * input.initial_speed {
+    if system.coordinate == Coordinate::Way
+        && input.demand.final_speed <= 0.1 * input.demand.initial_speed
+    {
         remarks.method(&MEAN_FULLY_DEVELOPED);
     }
     if let Some(tires) = system.tires
@@ -401,7 +390,7 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
                 .find(Finding::notice(code, severity, subject, detail).in_case(case.friction_case));
         }
     };
-    if input.deceleration.is_some() && !case.stop.is_modulated && case.hardest.is_some() {
+    if input.demand.deceleration.is_some() && !case.stop.is_modulated && case.hardest.is_some() {
         let detail =
             "the deceleration asked for is more than brakes and tires give: full torque was taken";
         let member = match input.machine.coordinate() {
@@ -427,7 +416,7 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
     if !matches!(case.stop.ending, Ending::Reached(_)) {
         return;
     }
-    if case.stop.path.end().time - input.delays.reaction() < 0.1 {
+    if case.stop.path.end().time - input.demand.delays.reaction() < 0.1 {
         let detail = "the stop takes less than 0.1 s; look for a slip of units";
         find(Notice::StopUnusuallyShort, Severity::Info, "fitted", detail);
     }
@@ -467,18 +456,13 @@ fn note_pressing(
     let friction_case = case.stop.is_modulated.then_some(case.friction_case);
     for (index, (entry, acting)) in input.fitted.iter().zip(&actings).enumerate() {
         let (Some(brake), Some(acting)) = (entry.brake(), acting) else { continue };
-        brake.compare_pressing(remarks, Some(index), acting, friction_case);
-        let stroke = operator_stroke(&input.fitted, &volumes, index);
-        brake.compare_stroke(remarks, Some(index), stroke, friction_case);
+        let spot = Spot { fitted_index: Some(index), friction_case };
+        brake.hold_pressing(remarks, acting, spot);
+        brake.hold_stroke(remarks, operator_stroke(&input.fitted, &volumes, index), spot);
         if matches!(case.stop.ending, Ending::Reached(_)) {
             let speed = highest_brake_speed(input, entry, &case.stop);
-            brake.compare_rubbing(
-                remarks,
-                Some(index),
-                speed,
-                acting.highest_clamp_force,
-                Some(case.friction_case),
-            );
+            let spot = Spot { friction_case: Some(case.friction_case), ..spot };
+            brake.hold_rubbing(remarks, speed, acting.highest_clamp_force, spot);
         }
     }
 }
@@ -492,7 +476,7 @@ fn note_lock_order(remarks: &mut Remarks, input: &Input, system: &Reduced, cases
     let worst = match (cases.first(), cases.last()) {
         (Some(low), Some(high)) => {
             let [front, rear] = [total(&low.demands)[0], total(&high.demands)[1]];
-            lock_factors(system, [front, rear], input.initial_speed)
+            lock_factors(system, [front, rear], input.demand.initial_speed)
         }
         _ => None,
     };

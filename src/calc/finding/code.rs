@@ -98,6 +98,16 @@ codes! {
         DiscMassNotGiven = "disc_mass_not_given";
         /// The lining's thermal properties are not given: all heat was taken to enter the disc.
         HeatPartitionNotGiven = "heat_partition_not_given";
+        /// The coefficient of cooling comes from a correlation.
+        CoolingEstimated = "cooling_estimated";
+        /// The cooling of a disc is not given: no temperatures of repeated stops.
+        CoolingNotGiven = "cooling_not_given";
+        /// Repeated stops heat a disc without end.
+        NoSteadyState = "no_steady_state";
+        /// No fade points: friction was taken not to change with temperature.
+        FadeNotGiven = "fade_not_given";
+        /// An event of a duty cannot be done.
+        DutyNotCompleted = "duty_not_completed";
     }
 }
 

@@ -51,6 +51,14 @@ impl Remarks {
         }
     }
 
+    /// Adds a finding, unless one of the same code on the same input is there already.
+    pub fn find_once(&mut self, finding: Finding) {
+        let same = |known: &Finding| known.code == finding.code && known.subject == finding.subject;
+        if !self.findings.iter().any(same) {
+            self.findings.push(finding);
+        }
+    }
+
     /// Adds a remark without numbers.
     pub fn notice(
         &mut self,

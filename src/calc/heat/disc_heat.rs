@@ -5,7 +5,6 @@ use super::partition::{PARTITION, SWEPT_RING, SweptRing, disc_share};
 use super::property::ENTHALPY;
 use super::slab::{PiecewiseLinearFlux, SLAB_SURFACE, Slab};
 use crate::calc::brake::Brake;
-use crate::calc::disc::Disc;
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::Remarks;
 use crate::calc::quantity::{
@@ -36,15 +35,23 @@ pub struct DiscHeat {
     pub surface_peak_temperature: ThermodynamicTemperature,
 }
 
-/// The mass that takes up the heat of a brake; none if it cannot be told.
+/// The ring that a brake's pads sweep and the mass that takes up its heat; none if they cannot be told.
 #[must_use]
-pub fn heated_mass_of(brake: &Brake, disc: &Disc) -> Option<Mass> {
-    heated_mass(disc, &ring(brake, disc)?)
+pub fn heated_ring(brake: &Brake) -> Option<(SweptRing, Mass)> {
+    let disc = brake.parts().disc.as_ref()?;
+    let pad = &brake.parts().pad;
+    let ring = SweptRing::new(pad.smallest_radius(), pad.largest_radius(), disc).ok()?;
+    let mass = heated_mass(disc, &ring)?;
+    Some((ring, mass))
 }
 
-fn ring(brake: &Brake, disc: &Disc) -> Option<SweptRing> {
-    let pad = &brake.parts().pad;
-    SweptRing::new(pad.smallest_radius(), pad.largest_radius(), disc).ok()
+/// The disc's share of the heat, at the start temperature; 1 if the lining's thermal properties are not known.
+#[must_use]
+pub fn share_of(brake: &Brake, ring: &SweptRing, heating: &Heating<'_>) -> f64 {
+    let parts = brake.parts();
+    let (Some(disc), Some(lining)) = (&parts.disc, parts.lining.substance()) else { return 1.0 };
+    let pad_area = parts.pad.area() * f64::from(heating.brakes_per_disc);
+    disc_share(pad_area, ring.area(), &lining, &disc.material().substance_at(heating.start))
 }
 
 /// Heats the disc of a brake. None without a disc or its mass.
@@ -56,19 +63,12 @@ fn ring(brake: &Brake, disc: &Disc) -> Option<SweptRing> {
 /// A temperature beyond the scale of any material.
 pub fn of_one_stop(brake: &Brake, heating: &Heating<'_>) -> Result<Option<DiscHeat>, Faults> {
     let parts = brake.parts();
-    let Some(disc) = &parts.disc else { return Ok(None) };
-    let Some(ring) = ring(brake, disc) else { return Ok(None) };
-    let Some(mass) = heated_mass(disc, &ring) else { return Ok(None) };
+    let (Some(disc), Some((ring, mass))) = (&parts.disc, heated_ring(brake)) else {
+        return Ok(None);
+    };
     let brakes = f64::from(heating.brakes_per_disc);
     let material = disc.material();
-    let share = parts.lining.substance().map_or(1.0, |lining| {
-        disc_share(
-            parts.pad.area() * brakes,
-            ring.area(),
-            &lining,
-            &material.substance_at(heating.start),
-        )
-    });
+    let share = share_of(brake, &ring, heating);
     let heat = Energy::from_si(share * heating.energy * brakes);
     let Some(end) = bulk_temperature_after(heating.start, heat, mass, material.specific_heat())
     else {

@@ -1,8 +1,12 @@
 //! Heat of one stop: what a disc takes up, how warm its body and its surface become.
 
 pub mod bulk;
+pub mod cooling;
 pub mod disc_heat;
+pub mod disc_series;
+pub mod lumped;
 pub mod partition;
 pub mod property;
+pub mod repeated;
 pub mod slab;
 pub mod substance;

@@ -2,3 +2,4 @@ mod bulk;
 mod property;
 mod reference;
 mod slab;
+mod volumes;

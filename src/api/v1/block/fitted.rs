@@ -6,7 +6,7 @@ use utoipa::ToSchema;
 use super::brake::Brake;
 use crate::api::measure::{Length, Torque};
 use crate::api::parse::{At, Reader};
-use crate::calc::case::stopping::place_faults;
+use crate::calc::case::stopping::entry_faults;
 use crate::calc::fault::FaultCode;
 use crate::calc::fitted::{Fitted as Entry, FittedParts, Place, Source};
 use crate::calc::quantity::{Si, Torque as Moment};
@@ -93,7 +93,7 @@ impl Fitted {
             // Without a source: read on for the faults of the other members; the result is of no use.
             source: source.unwrap_or(Source::Torque(Moment::from_si(1.0))),
         };
-        let found = place_faults(is_vehicle, parts.place, parts.rolling_radius.is_some());
+        let found = entry_faults(is_vehicle, parts.place, parts.rolling_radius.is_some());
         reader.take(at, found.into_result(()));
         reader.take(at, Entry::new(parts)).filter(|_| has_source)
     }

@@ -14,10 +14,10 @@ use crate::api::measure::{
 use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
 use crate::api::record::pointer_to;
 use crate::calc::actuation::{Actuation as Chain, Input as Driving};
-use crate::calc::case::stopping::{Input, grade_faults, speed_faults};
+use crate::calc::case::stopping::Input;
 use crate::calc::fitted::{Fitted as Entry, Pressed, press};
 use crate::calc::machine::{Direction as Way, Situation};
-use crate::calc::motion::Coordinate;
+use crate::calc::motion::{Coordinate, Delays, Demand};
 use crate::calc::quantity::Si;
 
 /// Which way a hoist's load moves.
@@ -30,13 +30,9 @@ pub enum Direction {
     Raising,
 }
 
-/// The members of a request for a stop.
+/// What a stop is asked to do, as given.
 #[derive(Debug, Clone, Copy)]
-pub struct StopMembers<'a> {
-    /// What is braked.
-    pub machine: &'a Machine,
-    /// Its brakes.
-    pub fitted: &'a [Fitted],
+pub struct Stopping<'a> {
     /// Speed at the start, of a vehicle, load or belt.
     pub initial_speed: Option<&'a Speed>,
     /// Speed at the end, of a vehicle, load or belt.
@@ -45,12 +41,6 @@ pub struct StopMembers<'a> {
     pub initial_rotational_speed: Option<&'a RotationalSpeed>,
     /// Speed at the end, of a shaft.
     pub final_rotational_speed: Option<&'a RotationalSpeed>,
-    /// Slope, of a vehicle.
-    pub grade: Option<&'a Grade>,
-    /// Drive, of a vehicle.
-    pub drive_force: Option<&'a Force>,
-    /// Of a hoist.
-    pub direction: Option<Direction>,
     /// Held after build-up, of a vehicle, load or belt.
     pub deceleration: Option<&'a Acceleration>,
     /// Held after build-up, of a shaft.
@@ -59,37 +49,66 @@ pub struct StopMembers<'a> {
     pub response: Option<&'a Response>,
 }
 
+/// What surrounds a stop, as given.
+#[derive(Debug, Clone, Copy)]
+pub struct Surroundings<'a> {
+    /// Slope, of a vehicle.
+    pub grade: Option<&'a Grade>,
+    /// Drive, of a vehicle.
+    pub drive_force: Option<&'a Force>,
+    /// Of a hoist.
+    pub direction: Option<Direction>,
+}
+
+/// The members of a request for a stop.
+#[derive(Debug, Clone, Copy)]
+pub struct StopMembers<'a> {
+    /// What is braked.
+    pub machine: &'a Machine,
+    /// Its brakes.
+    pub fitted: &'a [Fitted],
+    /// What the stop is asked to do.
+    pub stopping: Stopping<'a>,
+    /// What surrounds it.
+    pub surroundings: Surroundings<'a>,
+}
+
 impl StopMembers<'_> {
     /// The stop that is meant.
     pub fn read(&self, at: &At<'_>, reader: &mut Reader) -> Option<Input> {
         let machine = self.machine.read(&at.member("machine"), reader);
         let is_vehicle = matches!(self.machine, Machine::Vehicle(_));
         let fitted = Fitted::read_all(self.fitted, is_vehicle, &at.member("fitted"), reader);
-        let is_shaft = matches!(self.machine, Machine::Shaft(_));
-        let (initial_speed, final_speed) =
-            if is_shaft { self.turning(at, reader) } else { self.moving(at, reader) };
-        let deceleration = self.held(is_shaft, at, reader);
-        let situation = self.situation(at, reader);
-        let delays = Response::read(self.response, &at.member("response"), reader);
-        let coordinate = if is_shaft { Coordinate::Angle } else { Coordinate::Way };
-        if let Some(initial) = initial_speed {
-            let found = speed_faults(coordinate, (initial, final_speed), deceleration);
-            reader.take(at, found.into_result(()));
-        }
         if let Some(fitted) = &fitted {
             reader.take(&at.member("fitted"), press(fitted).map(drop));
         }
-        let input = Input {
-            machine: machine?,
-            fitted: fitted?,
-            situation: situation?,
-            initial_speed: initial_speed?,
-            final_speed,
-            deceleration,
-            delays: delays?,
-        };
+        let demand = self.stopping.read(self.machine, at, reader);
+        let situation = self.surroundings.read(self.machine, at, reader);
+        let input =
+            Input { machine: machine?, fitted: fitted?, situation: situation?, demand: demand? };
         reader.take(at, input.faults().into_result(()))?;
         Some(input)
+    }
+}
+
+impl Stopping<'_> {
+    /// What the stop is asked to do.
+    pub fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Demand> {
+        let is_shaft = matches!(machine, Machine::Shaft(_));
+        let (initial_speed, final_speed) =
+            if is_shaft { self.turning(at, reader) } else { self.moving(at, reader) };
+        let deceleration = self.held(is_shaft, at, reader);
+        let delays = Response::read(self.response, &at.member("response"), reader);
+        let coordinate = if is_shaft { Coordinate::Angle } else { Coordinate::Way };
+        // Without delays: read on for the faults of the other members; the result is of no use.
+        let demand = Demand {
+            initial_speed: initial_speed?,
+            final_speed,
+            delays: delays.unwrap_or(Delays::NONE),
+            deceleration,
+        };
+        let demand = reader.take(at, demand.faults(coordinate).into_result(demand));
+        delays.and(demand)
     }
 
     fn moving(&self, at: &At<'_>, reader: &mut Reader) -> (Option<f64>, f64) {
@@ -148,13 +167,15 @@ impl StopMembers<'_> {
             linear
         }
     }
+}
 
-    fn situation(&self, at: &At<'_>, reader: &mut Reader) -> Option<Situation> {
+impl Surroundings<'_> {
+    /// The surroundings that are meant.
+    pub fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Situation> {
         let level = Situation::level();
         let (at_grade, at_drive) = (at.member("grade"), at.member("drive_force"));
-        let (grade, drive_force) = if matches!(self.machine, Machine::Vehicle(_)) {
+        let (grade, drive_force) = if matches!(machine, Machine::Vehicle(_)) {
             let grade = reader.or_default(&at_grade, self.grade, 0.0, "%");
-            reader.take(at, grade_faults(grade).into_result(()));
             (grade, reader.or_default(&at_drive, self.drive_force, 0.0, "N"))
         } else {
             reader.not_applicable(&at_grade, self.grade.is_some(), "belongs to vehicles only");
@@ -166,7 +187,7 @@ impl StopMembers<'_> {
             (level.grade, level.drive_force)
         };
         let at_direction = at.member("direction");
-        let direction = if matches!(self.machine, Machine::Hoist(_)) {
+        let direction = if matches!(machine, Machine::Hoist(_)) {
             reader.required(
                 &at_direction,
                 self.direction,
@@ -184,7 +205,8 @@ impl StopMembers<'_> {
             Direction::Lowering => Way::Lowering,
             Direction::Raising => Way::Raising,
         };
-        Some(Situation { grade, drive_force, direction })
+        let situation = Situation { grade, drive_force, direction };
+        reader.take(at, situation.faults().into_result(situation))
     }
 }
 

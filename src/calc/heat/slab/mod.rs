@@ -4,7 +4,9 @@ mod flux;
 mod peak;
 mod response;
 mod rise;
+mod volumes;
 
 pub use flux::PiecewiseLinearFlux;
 pub use response::{SLAB_SURFACE, constant_flux_response, flux_ramp_response};
 pub use rise::Slab;
+pub use volumes::{SLAB_VOLUMES, SlabStep, SlabVolumes};

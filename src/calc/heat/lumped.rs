@@ -1,0 +1,199 @@
+//! A disc of one temperature that is heated and cools.
+
+use super::cooling::{CoolingSurface, Speeds};
+use super::property::{SpecificEnergy, SpecificHeat};
+use crate::calc::method::Method;
+use crate::calc::quantity::{Si, ThermodynamicTemperature};
+
+crate::method_sheet! {
+    LUMPED_DISC {
+        id: "heat.lumped_disc",
+        name: "Disc temperature under heating and cooling",
+        equation: "m c(T) dT/dt = P(t) - h(T) A (T - T_a)",
+        symbols: [("m", "heated mass", "kg"), ("c", "specific heat", "J/(kg.K)"), ("P", "heat into the disc", "W"),
+            ("h", "heat transfer coefficient", "W/(m2.K)"), ("A", "cooling area", "m2"), ("T, T_a", "bulk and ambient temperature", "K")],
+        valid: "One temperature over the disc; below 10000 K.",
+        accuracy: "Marched in steps of at most 5 K with exponentials, extrapolated; exact for constant properties and power; without cooling exact by enthalpy.",
+        source: "Lumped capacity (Newton's law of cooling); repeated stops in closed form in Shigley, Mechanical Engineering Design, equations 16-59 to 16-61 (from memory).",
+        provenance: Memory,
+        worked: "60 K a stop, time constant 700 s, every 120 s: after the ninth stop 299.441188 K above ambient, at last 380.856723 K.",
+    }
+}
+
+/// The sheets of this file.
+pub static METHODS: &[&Method] = &[&LUMPED_DISC];
+
+/// The most that the temperature may change in one step, K.
+const STEP: f64 = 5.0;
+/// A step that changes the temperature by less than this is exact enough at once, K.
+const NARROW: f64 = 0.25;
+/// More steps than any way from 0 K to the ceiling and back takes; a fence against endless work.
+const MOST_STEPS: usize = 5000;
+/// Where following a disc ends, K: no disc is solid there.
+const CEILING: f64 = 10_000.0;
+
+/// A disc of one temperature.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct LumpedDisc<'a> {
+    /// Mass that takes up the heat, kg.
+    pub mass: f64,
+    /// Of the disc's material.
+    pub specific_heat: &'a SpecificHeat,
+    /// How it cools; none: it does not.
+    pub cooling: Option<CoolingSurface>,
+}
+
+/// Heating and speeds over a stretch of time: power linear from start to end, speeds held.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Stretch {
+    /// s.
+    pub duration: f64,
+    /// Heat into the disc at the start, W.
+    pub power_at_start: f64,
+    /// Heat into the disc at the end, W.
+    pub power_at_end: f64,
+    /// Of the disc and its vehicle.
+    pub speeds: Speeds,
+}
+
+impl LumpedDisc<'_> {
+    /// The temperature after a stretch, K, and the highest on the way. None beyond the ceiling.
+    #[must_use]
+    pub fn after(&self, temperature: f64, stretch: &Stretch) -> Option<(f64, f64)> {
+        match &self.cooling {
+            None => {
+                let energy =
+                    0.5 * (stretch.power_at_start + stretch.power_at_end) * stretch.duration;
+                let end = self.without_cooling(temperature, energy)?;
+                Some((end, end.max(temperature)))
+            }
+            Some(surface) => self.with_cooling(temperature, stretch, surface),
+        }
+    }
+
+    fn without_cooling(&self, temperature: f64, energy: f64) -> Option<f64> {
+        let start = ThermodynamicTemperature::from_si(temperature);
+        let heat = SpecificEnergy::from_si(energy / self.mass);
+        self.specific_heat.temperature_after(start, heat).map(Si::si)
+    }
+
+    fn with_cooling(
+        &self,
+        start: f64,
+        stretch: &Stretch,
+        surface: &CoolingSurface,
+    ) -> Option<(f64, f64)> {
+        let (mut time, mut temperature, mut highest) = (0.0, start, start);
+        for _ in 0..MOST_STEPS {
+            let rest = stretch.duration - time;
+            if rest <= 0.0 {
+                return Some((temperature, highest));
+            }
+            let step = self.step(temperature, time, rest, stretch, surface);
+            let power = power_at(stretch, time + 0.5 * step);
+            let before = temperature;
+            temperature = self.refined(before, power, step, stretch.speeds, surface);
+            if temperature.is_nan() || temperature >= CEILING {
+                return None;
+            }
+            let rate = |temperature: f64, time: f64| {
+                self.rate(temperature, power_at(stretch, time), stretch.speeds, surface)
+            };
+            let rates = (rate(before, time), rate(temperature, time + step));
+            highest = highest.max(temperature).max(summit(before, rates, step));
+            time = if step >= rest { stretch.duration } else { time + step };
+        }
+        None
+    }
+
+    /// A step in which the temperature changes by about [`STEP`] at most, and in which it can follow the power.
+    fn step(
+        &self,
+        temperature: f64,
+        time: f64,
+        rest: f64,
+        stretch: &Stretch,
+        surface: &CoolingSurface,
+    ) -> f64 {
+        let conductance = surface.conductance(temperature, stretch.speeds);
+        let time_constant = self.capacity(temperature) / conductance;
+        let gap = surface.ambient() + power_at(stretch, time) / conductance - temperature;
+        let by_gap =
+            if gap.abs() > STEP { -time_constant * libm::log1p(-STEP / gap.abs()) } else { rest };
+        let shift = (stretch.power_at_end - stretch.power_at_start).abs() / conductance;
+        if shift <= STEP {
+            return rest.min(by_gap);
+        }
+        // The equilibrium moves: by no more than a step at a time, or slowly against the time constant. And the
+        // highest temperature, where heating has fallen to what cooling takes, must not be stepped over.
+        let by_power = (stretch.duration * STEP / shift).max(0.25 * time_constant);
+        rest.min(by_gap).min(by_power).min(stretch.duration / 16.0)
+    }
+
+    fn capacity(&self, temperature: f64) -> f64 {
+        self.mass * self.specific_heat.at(ThermodynamicTemperature::from_si(temperature)).si()
+    }
+
+    /// dT/dt, K/s.
+    fn rate(&self, temperature: f64, power: f64, speeds: Speeds, surface: &CoolingSurface) -> f64 {
+        let loss = surface.conductance(temperature, speeds) * (temperature - surface.ambient());
+        (power - loss) / self.capacity(temperature)
+    }
+
+    /// A step by the midpoint rule; a wide one also in two halves, extrapolated to take its error off.
+    fn refined(
+        &self,
+        start: f64,
+        power: f64,
+        time: f64,
+        speeds: Speeds,
+        surface: &CoolingSurface,
+    ) -> f64 {
+        let step = |start: f64, time: f64| {
+            let towards = |at: f64| self.towards(at, power, speeds, surface);
+            let half = towards(start).after(start, 0.5 * time);
+            towards(half).after(start, time)
+        };
+        let whole = step(start, time);
+        if (whole - start).abs() <= NARROW {
+            return whole;
+        }
+        let halves = step(step(start, 0.5 * time), 0.5 * time);
+        halves + (halves - whole) / 3.0
+    }
+
+    /// Where the temperature tends to, with properties held at `at`.
+    fn towards(&self, at: f64, power: f64, speeds: Speeds, surface: &CoolingSurface) -> Relaxation {
+        let conductance = surface.conductance(at, speeds);
+        Relaxation {
+            equilibrium: surface.ambient() + power / conductance,
+            time_constant: self.capacity(at) / conductance,
+        }
+    }
+}
+
+/// The exact way of a temperature with properties held.
+struct Relaxation {
+    equilibrium: f64,
+    time_constant: f64,
+}
+
+impl Relaxation {
+    fn after(&self, start: f64, time: f64) -> f64 {
+        start - (self.equilibrium - start) * libm::expm1(-time / self.time_constant)
+    }
+}
+
+/// The highest temperature within a step that first warms and then cools, its rate taken as linear.
+fn summit(start: f64, (first, last): (f64, f64), duration: f64) -> f64 {
+    if first > 0.0 && last < 0.0 {
+        start + 0.5 * first * first * duration / (first - last)
+    } else {
+        start
+    }
+}
+
+fn power_at(stretch: &Stretch, time: f64) -> f64 {
+    let share = if stretch.duration > 0.0 { time / stretch.duration } else { 0.0 };
+    stretch.power_at_start + (stretch.power_at_end - stretch.power_at_start) * share
+}
