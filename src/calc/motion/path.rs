@@ -186,6 +186,22 @@ const GAUSS: [(f64, f64); 5] = [
     (0.953_089_922_969_332, 0.118_463_442_528_094_54),
 ];
 
+/// Integral of `value` from `from` to `to`, five points.
+fn gauss(from: f64, to: f64, value: &impl Fn(f64) -> f64) -> f64 {
+    let width = to - from;
+    GAUSS.iter().map(|(node, weight)| weight * width * value(from + node * width)).sum()
+}
+
+/// The same, halved until the halves agree with the `whole`: forces bend where another limit takes over.
+fn halved(from: f64, to: f64, whole: f64, depth: u32, value: &impl Fn(f64) -> f64) -> f64 {
+    let middle = f64::midpoint(from, to);
+    let (first, second) = (gauss(from, middle, value), gauss(middle, to, value));
+    if depth == 0 || (first + second - whole).abs() <= 1e-10 * whole.abs() {
+        return first + second;
+    }
+    halved(from, middle, first, depth - 1, value) + halved(middle, to, second, depth - 1, value)
+}
+
 /// The course of a stop with the forces that caused it.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Path {
@@ -336,16 +352,15 @@ impl Path {
 
     /// Integral over time, while torque acts, of a function of the force balance and the speed.
     fn integral(&self, value: impl Fn(&Instant, f64) -> f64) -> f64 {
-        let mut total = 0.0;
-        for piece in self.torque_pieces() {
-            for (node, weight) in GAUSS {
-                let time = node * piece.duration;
-                total += weight
-                    * piece.duration
-                    * value(&self.instant(piece, time), piece.speed_at(time));
+        let of_piece = |piece: &Piece| {
+            let at = |time: f64| value(&self.instant(piece, time), piece.speed_at(time));
+            let whole = gauss(0.0, piece.duration, &at);
+            match piece.motion {
+                Motion::Polynomial { .. } => whole,
+                Motion::Integrated(_) => halved(0.0, piece.duration, whole, 16, &at),
             }
-        }
-        total
+        };
+        self.torque_pieces().map(of_piece).sum()
     }
 
     /// Work of the brakes of each axle, front (or all) and rear, J.
