@@ -290,7 +290,7 @@ impl Path {
     pub fn hardest(&self) -> Option<(Instant, f64, f64)> {
         let mut hardest: Option<(Instant, f64, f64)> = None;
         for piece in self.torque_pieces() {
-            for time in [0.0, piece.duration] {
+            for time in [0.0, self.time_of_summit(piece), piece.duration] {
                 let instant = self.instant(piece, time);
                 // Equal decelerations: the later state is the one in which all limits show.
                 if hardest.is_none_or(|(found, ..)| instant.deceleration >= found.deceleration) {
@@ -299,6 +299,25 @@ impl Path {
             }
         }
         hardest
+    }
+
+    /// When the deceleration of a piece is highest: within it only where the torque rises while the air's force falls.
+    ///
+    /// Within a step of the integrator there is one summit, smooth or at the edge where a limit takes over; of
+    /// an edge the later side is taken, on which the limit shows.
+    fn time_of_summit(&self, piece: &Piece) -> f64 {
+        let is_bent = matches!(piece.motion, Motion::Integrated(_))
+            && matches!(piece.effort, Effort::Ramp(_, rate) if rate > 0.0);
+        if !is_bent {
+            return 0.0;
+        }
+        let deceleration = |time: f64| self.instant(piece, time).deceleration;
+        let (mut low, mut high) = (0.0, piece.duration);
+        for _ in 0..64 {
+            let (one, other) = (low + (high - low) / 3.0, high - (high - low) / 3.0);
+            if deceleration(one) < deceleration(other) { low = one } else { high = other }
+        }
+        high
     }
 
     /// Integral over time, while torque acts, of a function of the force balance and the speed.
