@@ -3,3 +3,4 @@ mod heat;
 mod linings;
 mod motion;
 mod pads;
+mod stops;
