@@ -1,3 +1,4 @@
+mod chain;
 mod cooling;
 mod heat;
 mod linings;
