@@ -1,7 +1,9 @@
+mod actuation;
 mod chain;
 mod cooling;
 mod heat;
 mod linings;
 mod motion;
 mod pads;
+mod sheets;
 mod stops;
