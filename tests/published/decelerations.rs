@@ -20,7 +20,7 @@ async fn stop(request: &Value) -> (Value, Value) {
 /// 2 s after 36.666 667 m; 2 m/s another (225 − 4)/10 m on. d_m = 252/(2·25.374 719) = 4.965 571 m/s².
 #[tokio::test]
 async fn the_mean_fully_developed_deceleration_begins_within_the_build_up() {
-    let mut request = braked(5.0, q(20.0, "m/s"));
+    let mut request = braked(5.0, &q(20.0, "m/s"));
     request["response"] = json!({"build_up_time": q(2.0, "s")});
     let (found, _) = stop(&request).await;
     let mean = si(&found["mean_fully_developed_deceleration"]);
@@ -33,7 +33,7 @@ async fn the_mean_fully_developed_deceleration_begins_within_the_build_up() {
 #[tokio::test]
 async fn the_mean_fully_developed_deceleration_needs_the_speed_to_fall_to_a_tenth() {
     for (end, is_there) in [(0.0, true), (2.0, true), (2.001, false)] {
-        let mut request = braked(5.0, q(20.0, "m/s"));
+        let mut request = braked(5.0, &q(20.0, "m/s"));
         request["final_speed"] = q(end, "m/s");
         let (found, _) = stop(&request).await;
         let mean = &found["mean_fully_developed_deceleration"];

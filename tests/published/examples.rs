@@ -42,8 +42,8 @@ async fn bhandari_12_1_stops_its_disc_in_a_second_and_a_half() {
 fn brake(
     ring: (f64, f64),
     thickness: f64,
-    mass: Value,
-    specific_heat: Value,
+    mass: &Value,
+    specific_heat: &Value,
     cooling: f64,
 ) -> Value {
     let unit = mass["unit"].as_str().unwrap();
@@ -64,7 +64,7 @@ fn brake(
 /// 5 kg of 460 J/(kg K) warm by 7.300885 K.
 #[tokio::test]
 async fn bhandari_12_14_warms_its_drum_end_to_end() {
-    let brake = brake((0.1, 0.15), 0.02, q(5.0, "kg"), q(460.0, "J/(kg.K)"), 1.0);
+    let brake = brake((0.1, 0.15), 0.02, &q(5.0, "kg"), &q(460.0, "J/(kg.K)"), 1.0);
     let request = shaft(100.0 * 0.35 * 0.35, 500.0, &json!({"brake": brake}));
     let found = case("/v1/stop-energy", &request).await;
     assert_eq!(found["fitted"][0]["disc_share"], 1.0);
@@ -79,7 +79,7 @@ async fn bhandari_12_14_warms_its_drum_end_to_end() {
 #[tokio::test]
 async fn shigley_16_5_heats_its_disc_stop_after_stop() {
     const BOOKS_BTU: f64 = 9336.0; // in lbf per Btu in the book; exact 9338.03
-    const BTU: f64 = 1055.055_852_62; // J, exact
+    const BTU: f64 = 1_055.055_852_62; // J, exact
     let inch_pound = POUND_FORCE * FOOT / 12.0;
     let rounding = BTU / inch_pound / BOOKS_BTU;
     assert_close(rounding, 9338.03 / BOOKS_BTU, 1e-6);
@@ -89,7 +89,7 @@ async fn shigley_16_5_heats_its_disc_stop_after_stop() {
     let unit = BTU / ((FOOT / 12.0).powi(2) * 5.0 / 9.0);
     assert_close(unit, 2.943_61e6, 2e-6); // conversion of the reference file [V]
     let coefficient = 12.6e-6 * unit * 50.0 / area;
-    let brake = brake((1.0, 3.0), 0.25, q(mass, "lb"), q(0.108, "Btu/(lb.degF)"), coefficient);
+    let brake = brake((1.0, 3.0), 0.25, &q(mass, "lb"), &q(0.108, "Btu/(lb.degF)"), coefficient);
     // The book's Btu instead of the exact one: so much more inertia.
     let inertia = 289.0 * inch_pound;
     let mut request = shaft(inertia * rounding, 250.0, &json!({"brake": brake}));
@@ -137,7 +137,7 @@ async fn test_snubs_take_the_energy_and_time_recomputed_from_their_text() {
         (q(40.0, "mph"), q(20.0, "mph"), 10.0 * FOOT, 119.9, 2.93),
     ];
     for (from, to, deceleration, energy, time) in rows {
-        let mut request = braked(deceleration, from);
+        let mut request = braked(deceleration, &from);
         request["final_speed"] = to;
         let found = case("/v1/stop-energy", &request).await;
         assert_within(si(&found["brake_energy"]) / 1000.0, energy, 0.05);
@@ -145,7 +145,7 @@ async fn test_snubs_take_the_energy_and_time_recomputed_from_their_text() {
         assert_within(si(&found["total_time"]), time, 0.005);
     }
     // 571.121 S5.4.2: 50 to 15 mph at 9 ft/s² takes 5.70 s and 91 % of the energy.
-    let mut snub = braked(9.0 * FOOT, q(50.0, "mph"));
+    let mut snub = braked(9.0 * FOOT, &q(50.0, "mph"));
     let whole = si(&case("/v1/stop-energy", &snub).await["brake_energy"]);
     snub["final_speed"] = q(15.0, "mph");
     assert_within(si(&case("/v1/stopping", &snub).await["total_time"]), 5.70, 0.005);
@@ -156,7 +156,7 @@ async fn test_snubs_take_the_energy_and_time_recomputed_from_their_text() {
 /// 49 CFR 571.135 S7.13 with 2000 kg [V]: 833 kJ a snub, 150 kW mean, 200 kW at its start. 571.105: 258 ft.
 #[tokio::test]
 async fn a_heating_snub_has_the_recomputed_powers() {
-    let mut request = braked(3.0, q(120.0, "km/h"));
+    let mut request = braked(3.0, &q(120.0, "km/h"));
     request["final_speed"] = q(60.0, "km/h");
     request["machine"]["mass"] = q(2000.0, "kg");
     request["fitted"][0]["torque"] = q(6000.0, "N.m");
@@ -164,6 +164,6 @@ async fn a_heating_snub_has_the_recomputed_powers() {
     assert_within(si(&found["brake_energy"]), 833e3, 500.0);
     assert_within(si(&found["fitted"][0]["mean_power"]), 150e3, 500.0);
     assert_within(si(&found["fitted"][0]["peak_power"]), 200e3, 500.0);
-    let found = case("/v1/stopping", &braked(15.0 * FOOT, q(60.0, "mph"))).await;
+    let found = case("/v1/stopping", &braked(15.0 * FOOT, &q(60.0, "mph"))).await;
     assert_within(si(&found["total_distance"]) / FOOT, 258.0, 0.5);
 }

@@ -10,3 +10,4 @@ mod pads;
 mod rules;
 mod sheets;
 mod stops;
+mod units;

@@ -18,7 +18,7 @@ async fn stop(request: &Value) -> Value {
 
 /// Distance in feet from a speed in mph at a deceleration in ft/s², `dead` seconds after the control moves.
 async fn feet(miles_per_hour: f64, deceleration: f64, dead: f64) -> f64 {
-    let mut request = braked(deceleration * FOOT, q(miles_per_hour, "mph"));
+    let mut request = braked(deceleration * FOOT, &q(miles_per_hour, "mph"));
     request["response"] = serde_json::json!({"dead_time": q(dead, "s")});
     si(&stop(&request).await["distance_from_control"]) / FOOT
 }
@@ -46,7 +46,7 @@ async fn the_decelerations_of_393_52_miss_its_distances_as_the_text_says() {
 #[tokio::test]
 async fn the_forces_of_393_52_give_its_decelerations() {
     for (percent, deceleration) in [(65.2, 21.0), (52.8, 17.0), (43.5, 14.0)] {
-        let found = stop(&braked(percent / 100.0 * 32.2 * FOOT, q(20.0, "mph"))).await;
+        let found = stop(&braked(percent / 100.0 * 32.2 * FOOT, &q(20.0, "mph"))).await;
         assert_close(si(&found["peak_deceleration"]) / FOOT, deceleration, 1e-3);
     }
 }
@@ -98,7 +98,7 @@ async fn the_highway_code_prints_thinking_and_braking_of_one_rule() {
     let rows = [(20, 6, 6), (30, 9, 14), (40, 12, 24), (50, 15, 38), (60, 18, 55), (70, 21, 75)];
     for (speed, thinking, braking) in rows {
         let mut request =
-            braked(0.5 * (88.0_f64 / 60.0).powi(2) * 20.0 * FOOT, q(f64::from(speed), "mph"));
+            braked(0.5 * (88.0_f64 / 60.0).powi(2) * 20.0 * FOOT, &q(f64::from(speed), "mph"));
         request["response"] = serde_json::json!({"reaction_time": q(0.671, "s")});
         let found = stop(&request).await;
         let phases = found["phases"].as_array().unwrap();
@@ -120,7 +120,7 @@ async fn both_bicycle_rows_come_out() {
 #[tokio::test]
 async fn a_crane_bridge_stops_in_a_tenth_of_its_feet_a_minute() {
     for (speed, deceleration, within) in [(200.0, 0.278, 0.02), (150.0, 150.0 / 720.0, 1e-9)] {
-        let found = stop(&braked(deceleration * FOOT, q(speed, "ft/min"))).await;
+        let found = stop(&braked(deceleration * FOOT, &q(speed, "ft/min"))).await;
         assert_within(si(&found["total_distance"]) / FOOT, speed / 10.0, within);
     }
     assert_within(0.278 * FOOT, 0.0847, 5e-5);
@@ -144,7 +144,7 @@ async fn printed_distances_follow_from_constant_deceleration() {
         assert_within(feet(speed, deceleration, 0.0).await, distance, within);
     }
     for (deceleration, metres) in [(1.6, 21.7), (1.0, 34.7)] {
-        let found = stop(&braked(deceleration, q(30.0, "km/h"))).await;
+        let found = stop(&braked(deceleration, &q(30.0, "km/h"))).await;
         assert_within(si(&found["total_distance"]), metres, 0.05);
     }
 }
@@ -153,7 +153,7 @@ async fn printed_distances_follow_from_constant_deceleration() {
 #[tokio::test]
 async fn a_ropeway_stops_within_its_bounds() {
     for (deceleration, metres) in [(0.45, 6.94), (1.5, 2.08)] {
-        let found = stop(&braked(deceleration, q(2.5, "m/s"))).await;
+        let found = stop(&braked(deceleration, &q(2.5, "m/s"))).await;
         assert_within(si(&found["total_distance"]), metres, 0.005);
     }
 }
@@ -177,7 +177,7 @@ async fn distance_terms_give_the_mean_fully_developed_deceleration_printed_with_
         (100.0, 0.1, 0.0158, 2.44),
     ];
     for (speed, linear, square, printed) in rows {
-        let mut request = braked(1.0 / (25.92 * square), q(speed, "km/h"));
+        let mut request = braked(1.0 / (25.92 * square), &q(speed, "km/h"));
         request["response"] = serde_json::json!({"dead_time": q(3.6 * linear, "s")});
         let found = stop(&request).await;
         let distance = linear * speed + square * speed * speed;
@@ -190,6 +190,6 @@ async fn distance_terms_give_the_mean_fully_developed_deceleration_printed_with_
 /// The speed of the tables, mph, in the service's own unit.
 #[tokio::test]
 async fn a_mile_an_hour_is_exact() {
-    let found = stop(&braked(1.0, q(1.0, "mph"))).await;
+    let found = stop(&braked(1.0, &q(1.0, "mph"))).await;
     assert_close(si(&found["total_time"]), MILE_PER_HOUR, 1e-15);
 }

@@ -38,7 +38,8 @@ impl Case {
             (true, None) => {}
             (false, Some(expected)) => {
                 let actual = si(actual);
-                if !((actual - expected).abs() <= RELATIVE * expected.abs().max(scale)) {
+                let agrees = (actual - expected).abs() <= RELATIVE * expected.abs().max(scale);
+                if !agrees {
                     off.push(format!("{name}: {what} is {actual}, expected {expected}"));
                 }
             }
