@@ -116,6 +116,7 @@ fn duty(brake: Brake, events: Vec<Event>, repeats: u32) -> Input {
     Input {
         machine: vehicle(),
         fitted: fitted(brake),
+        origins: (0..events.len()).collect(),
         events,
         repeats,
         ambient_temperature: kelvins(AMBIENT),
