@@ -1,3 +1,4 @@
+mod actuation;
 mod disc;
 mod duty;
 mod heat;

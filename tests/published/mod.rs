@@ -1,5 +1,13 @@
+mod actuation;
+mod chain;
 mod cooling;
+mod decelerations;
+mod examples;
 mod heat;
 mod linings;
 mod motion;
 mod pads;
+mod rules;
+mod sheets;
+mod stops;
+mod units;

@@ -2,3 +2,5 @@
 
 pub(crate) mod client;
 pub(crate) mod close;
+pub(crate) mod point;
+pub(crate) mod si;
