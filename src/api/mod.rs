@@ -7,6 +7,7 @@ pub mod error_code;
 pub mod etag;
 pub mod extract;
 pub mod health;
+pub mod heavy;
 pub mod layers;
 pub mod measure;
 pub mod openapi;

@@ -81,6 +81,29 @@ impl PartialSchema for WarningCode {
 
 impl ToSchema for WarningCode {}
 
+/// The code of a check. A closed set.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[serde(transparent)]
+pub struct CheckName(&'static str);
+
+impl From<CheckCode> for CheckName {
+    fn from(code: CheckCode) -> Self {
+        Self(code.as_str())
+    }
+}
+
+impl PartialSchema for CheckName {
+    fn schema() -> RefOr<Schema> {
+        ObjectBuilder::new()
+            .schema_type(Type::String)
+            .enum_values(Some(CheckCode::ALL.iter().map(|code| code.as_str())))
+            .description(Some("The code of a check. A closed set."))
+            .into()
+    }
+}
+
+impl ToSchema for CheckName {}
+
 /// A remark on a result.
 #[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
 pub struct Warning {

@@ -55,6 +55,8 @@ fault_codes! {
     UnknownId = "unknown_id";
     /// The final speed must lie below the initial speed.
     NotBelowInitialSpeed = "not_below_initial_speed";
+    /// Speed falls only in a stop.
+    SpeedNotContinuous = "speed_not_continuous";
     /// Members that must agree differ.
     Differs = "differs";
     /// The friction code letter has no two bounds.

@@ -2,6 +2,7 @@
 
 pub mod actuation_force;
 pub mod block;
+pub mod duty_cycle;
 pub mod pad_capacity;
 pub mod stop_energy;
 pub mod stopping;
@@ -16,4 +17,5 @@ pub(super) fn routes() -> OpenApiRouter {
         .routes(routes!(actuation_force::actuation_force))
         .routes(routes!(stopping::stopping))
         .routes(routes!(stop_energy::stop_energy))
+        .routes(routes!(duty_cycle::duty_cycle))
 }

@@ -6,7 +6,7 @@ use utoipa::ToSchema;
 use super::block::delays::Response;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
-use super::block::stop::{Direction, StopMembers, stood_in};
+use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
 use crate::api::extract::{Answer, Json};
 use crate::api::measure::{
     Acceleration, AngularAcceleration, Energy, EnergyFlux, Finite, Force, Grade,
@@ -229,16 +229,20 @@ impl StopEnergyRequest {
         StopMembers {
             machine: &self.machine,
             fitted: &self.fitted,
-            initial_speed: self.initial_speed.as_ref(),
-            final_speed: self.final_speed.as_ref(),
-            initial_rotational_speed: self.initial_rotational_speed.as_ref(),
-            final_rotational_speed: self.final_rotational_speed.as_ref(),
-            grade: self.grade.as_ref(),
-            drive_force: self.drive_force.as_ref(),
-            direction: self.direction,
-            deceleration: self.deceleration.as_ref(),
-            angular_deceleration: self.angular_deceleration.as_ref(),
-            response: self.response.as_ref(),
+            stopping: Stopping {
+                initial_speed: self.initial_speed.as_ref(),
+                final_speed: self.final_speed.as_ref(),
+                initial_rotational_speed: self.initial_rotational_speed.as_ref(),
+                final_rotational_speed: self.final_rotational_speed.as_ref(),
+                deceleration: self.deceleration.as_ref(),
+                angular_deceleration: self.angular_deceleration.as_ref(),
+                response: self.response.as_ref(),
+            },
+            surroundings: Surroundings {
+                grade: self.grade.as_ref(),
+                drive_force: self.drive_force.as_ref(),
+                direction: self.direction,
+            },
         }
     }
 

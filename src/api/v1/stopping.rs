@@ -6,7 +6,7 @@ use utoipa::ToSchema;
 use super::block::delays::Response;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
-use super::block::stop::{Direction, StopMembers, stood_in};
+use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
 use crate::api::extract::{Answer, Json};
 use crate::api::measure::{
     Acceleration, Angle, AngularAcceleration, Finite, Force, Grade, Length, ReportUnits,
@@ -399,16 +399,20 @@ impl StoppingRequest {
         StopMembers {
             machine: &self.machine,
             fitted: &self.fitted,
-            initial_speed: self.initial_speed.as_ref(),
-            final_speed: self.final_speed.as_ref(),
-            initial_rotational_speed: self.initial_rotational_speed.as_ref(),
-            final_rotational_speed: self.final_rotational_speed.as_ref(),
-            grade: self.grade.as_ref(),
-            drive_force: self.drive_force.as_ref(),
-            direction: self.direction,
-            deceleration: self.deceleration.as_ref(),
-            angular_deceleration: self.angular_deceleration.as_ref(),
-            response: self.response.as_ref(),
+            stopping: Stopping {
+                initial_speed: self.initial_speed.as_ref(),
+                final_speed: self.final_speed.as_ref(),
+                initial_rotational_speed: self.initial_rotational_speed.as_ref(),
+                final_rotational_speed: self.final_rotational_speed.as_ref(),
+                deceleration: self.deceleration.as_ref(),
+                angular_deceleration: self.angular_deceleration.as_ref(),
+                response: self.response.as_ref(),
+            },
+            surroundings: Surroundings {
+                grade: self.grade.as_ref(),
+                drive_force: self.drive_force.as_ref(),
+                direction: self.direction,
+            },
         }
     }
 
@@ -552,11 +556,11 @@ impl Report<'_> {
     fn with_times(&self, case: &CaseOutcome, empty: StoppingCase) -> StoppingCase {
         let path = &case.stop.path;
         let (end, torque) = (path.end(), path.first_torque());
-        let reaction = self.input.delays.reaction();
-        let control = self.input.initial_speed * reaction;
-        let mean = case.mean_deceleration(self.input.final_speed);
+        let reaction = self.input.demand.delays.reaction();
+        let control = self.input.demand.initial_speed * reaction;
+        let mean = case.mean_deceleration(self.input.demand.final_speed);
         let peak = case.hardest.map(|(instant, _)| instant.deceleration);
-        let developed = case.mean_fully_developed_deceleration(&self.input.demand());
+        let developed = case.mean_fully_developed_deceleration(&self.input.demand);
         let Ending::Reached(run_back) = case.stop.ending else { return empty };
         StoppingCase {
             total_time: Some(self.time(end.time)),
@@ -586,7 +590,7 @@ impl Report<'_> {
         if matches!(case.stop.ending, Ending::Reached(_)) {
             return None;
         }
-        let at_end = case.stop.path.forces().at(1.0, self.input.final_speed);
+        let at_end = case.stop.path.forces().at(1.0, self.input.demand.final_speed);
         Some(match at_end.limited_by {
             Limit::Adhesion => NotReachedReason::AdhesionTooLow,
             Limit::RearWheelLift => NotReachedReason::RearWheelLifts,

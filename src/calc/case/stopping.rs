@@ -11,7 +11,7 @@ use crate::calc::fitted::{Fitted, Place, Pressed, friction_cases, needed, operat
 use crate::calc::friction::FrictionCase;
 use crate::calc::machine::{Machine, Situation, Vehicle};
 use crate::calc::motion::{
-    AXLE_FORCES, Coordinate, DRAG, Delays, Demand, Ending, Forces, Instant, LOCK_ORDER, LimitedBy,
+    AXLE_FORCES, Coordinate, DRAG, Demand, Ending, Forces, Instant, LOCK_ORDER, LimitedBy,
     LockFactors, MEAN_FULLY_DEVELOPED, PHASES, Reduced, Stop, lock_factors, stop,
 };
 use crate::calc::pressure::FRICTION_TORQUE;
@@ -27,14 +27,8 @@ pub struct Input {
     pub fitted: Vec<Fitted>,
     /// What surrounds the stop.
     pub situation: Situation,
-    /// Speed at the start.
-    pub initial_speed: f64,
-    /// Speed at the end.
-    pub final_speed: f64,
-    /// Deceleration that the operator holds after build-up.
-    pub deceleration: Option<f64>,
-    /// The delays.
-    pub delays: Delays,
+    /// What the stop is asked to do.
+    pub demand: Demand,
 }
 
 /// The stop, once per friction case.
@@ -120,75 +114,42 @@ impl CaseOutcome {
 }
 
 impl Input {
-    /// What the stop is asked to do.
-    #[must_use]
-    pub fn demand(&self) -> Demand {
-        Demand {
-            initial_speed: self.initial_speed,
-            final_speed: self.final_speed,
-            delays: self.delays,
-            deceleration: self.deceleration,
-        }
-    }
-
     /// What is impossible about the stop. Members are those of the request.
     #[must_use]
     pub fn faults(&self) -> Faults {
         let mut faults = Faults::new();
-        let (initial, end) = match self.machine.coordinate() {
-            Coordinate::Way => ("initial_speed", "final_speed"),
-            Coordinate::Angle => ("initial_rotational_speed", "final_rotational_speed"),
-        };
-        faults.positive(initial, self.initial_speed);
-        faults.not_negative(end, self.final_speed);
-        if faults.is_empty() {
-            let holds = self.final_speed < self.initial_speed;
-            faults.require(
-                holds,
-                end,
-                FaultCode::NotBelowInitialSpeed,
-                "must be below the initial speed",
-            );
-        }
-        let holds = self.situation.grade.si().abs() <= std::f64::consts::FRAC_PI_4 * (1.0 + 1e-12);
-        faults.require(holds, "grade", FaultCode::OutOfRange, "must not be steeper than 100 %");
-        if let Some(deceleration) = self.deceleration {
-            faults.positive("deceleration", deceleration);
-        }
+        faults.part("", self.demand.faults(self.machine.coordinate()).into_result(()));
+        faults.part("", self.situation.faults().into_result(()));
         let holds = (1..=100).contains(&self.fitted.len());
         faults.require(holds, "fitted", FaultCode::WrongCount, "must have 1 to 100 entries");
-        self.place_faults(&mut faults);
+        place_faults(&self.machine, &self.fitted, &mut faults);
         faults
     }
+}
 
-    fn place_faults(&self, faults: &mut Faults) {
-        let is_vehicle = self.machine.vehicle().is_some();
-        for (index, entry) in self.fitted.iter().enumerate() {
-            let at = |member: &str| format!("fitted/{index}/{member}");
-            match (is_vehicle, entry.parts().place) {
-                (true, None) => faults.add(
-                    at("axle"),
-                    FaultCode::Missing,
-                    "is required on a vehicle: front, rear or all",
-                ),
-                (false, Some(_)) => {
-                    faults.add(at("axle"), FaultCode::NotApplicable, "belongs to vehicles only");
-                }
-                _ => {}
+/// What does not fit between a machine and its brakes. Members are those of the request.
+pub fn place_faults(machine: &Machine, fitted: &[Fitted], faults: &mut Faults) {
+    let is_vehicle = machine.vehicle().is_some();
+    for (index, entry) in fitted.iter().enumerate() {
+        let at = |member: &str| format!("fitted/{index}/{member}");
+        match (is_vehicle, entry.parts().place) {
+            (true, None) => faults.add(
+                at("axle"),
+                FaultCode::Missing,
+                "is required on a vehicle: front, rear or all",
+            ),
+            (false, Some(_)) => {
+                faults.add(at("axle"), FaultCode::NotApplicable, "belongs to vehicles only");
             }
-            let cooling = entry.brake().and_then(|brake| brake.parts().disc.as_ref()?.cooling());
-            if !is_vehicle && cooling == Some(Cooling::Airstream) {
-                let detail =
-                    "belongs to vehicles only: nothing else moves its disc through the air";
-                faults.add(at("brake/disc/cooling/model"), FaultCode::NotApplicable, detail);
-            }
-            if !is_vehicle && entry.parts().rolling_radius.is_some() {
-                faults.add(
-                    at("rolling_radius"),
-                    FaultCode::NotApplicable,
-                    "belongs to vehicles only",
-                );
-            }
+            _ => {}
+        }
+        let cooling = entry.brake().and_then(|brake| brake.parts().disc.as_ref()?.cooling());
+        if !is_vehicle && cooling == Some(Cooling::Airstream) {
+            let detail = "belongs to vehicles only: nothing else moves its disc through the air";
+            faults.add(at("brake/disc/cooling/model"), FaultCode::NotApplicable, detail);
+        }
+        if !is_vehicle && entry.parts().rolling_radius.is_some() {
+            faults.add(at("rolling_radius"), FaultCode::NotApplicable, "belongs to vehicles only");
         }
     }
 }
@@ -221,29 +182,42 @@ fn computed(
     pressed: &[Option<Pressed>],
     case: FrictionCase,
 ) -> Option<CaseOutcome> {
-    let torque =
-        |(entry, pressed): (&Fitted, &Option<Pressed>)| entry.torque(case, pressed.as_ref());
-    let full_torques: Vec<Torque> = input.fitted.iter().zip(pressed).map(torque).collect();
-    let demands: Vec<[f64; 2]> = input
-        .fitted
-        .iter()
-        .zip(&full_torques)
-        .map(|(entry, torque)| brake_force(&input.machine, entry, *torque))
-        .collect();
+    let torques = full_torques(&input.fitted, pressed, case);
+    let demands = brake_forces(&input.machine, &input.fitted, &torques);
     let forces = Forces::new(*system, total(&demands));
-    let stop = stop(&forces, &input.demand())?;
+    let stop = stop(&forces, &input.demand)?;
     let hardest = stop.path.hardest();
-    let lock = forces.lock_factors(hardest.map_or(input.initial_speed, |(.., speed)| speed));
+    let lock = forces.lock_factors(hardest.map_or(input.demand.initial_speed, |(.., speed)| speed));
     let is_finite = stop.path.end().time.is_finite() && stop.path.end().distance.is_finite();
     let hardest = hardest.map(|(instant, fraction, _)| (instant, fraction));
     is_finite.then_some(CaseOutcome {
         friction_case: case,
         stop,
-        full_torques,
+        full_torques: torques,
         demands,
         hardest,
         lock,
     })
+}
+
+/// Torque of one brake of each entry at full application.
+#[must_use]
+pub fn full_torques(
+    fitted: &[Fitted],
+    pressed: &[Option<Pressed>],
+    case: FrictionCase,
+) -> Vec<Torque> {
+    fitted
+        .iter()
+        .zip(pressed)
+        .map(|(entry, pressed)| entry.torque(case, pressed.as_ref()))
+        .collect()
+}
+
+/// Brake force of each entry's brakes together along the coordinate, split into front (or all) and rear.
+#[must_use]
+pub fn brake_forces(machine: &Machine, fitted: &[Fitted], torques: &[Torque]) -> Vec<[f64; 2]> {
+    fitted.iter().zip(torques).map(|(entry, torque)| brake_force(machine, entry, *torque)).collect()
 }
 
 /// The brake force of an entry along the coordinate, front (or all) and rear, with `torque` per brake.
@@ -261,7 +235,9 @@ fn brake_force(machine: &Machine, entry: &Fitted, torque: Torque) -> [f64; 2] {
     }
 }
 
-fn total(demands: &[[f64; 2]]) -> [f64; 2] {
+/// The sum of brake forces, front (or all) and rear.
+#[must_use]
+pub fn total(demands: &[[f64; 2]]) -> [f64; 2] {
     demands.iter().fold([0.0; 2], |sum, demand| [sum[0] + demand[0], sum[1] + demand[1]])
 }
 
@@ -304,7 +280,9 @@ fn note_methods(remarks: &mut Remarks, input: &Input, system: &Reduced) {
     if system.drag > 0.0 {
         remarks.method(&DRAG);
     }
-    if system.coordinate == Coordinate::Way && input.final_speed <= 0.1 * input.initial_speed {
+    if system.coordinate == Coordinate::Way
+        && input.demand.final_speed <= 0.1 * input.demand.initial_speed
+    {
         remarks.method(&MEAN_FULLY_DEVELOPED);
     }
     if let Some(tires) = system.tires
@@ -396,7 +374,7 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
                 .find(Finding::notice(code, severity, subject, detail).in_case(case.friction_case));
         }
     };
-    if input.deceleration.is_some() && !case.stop.is_modulated {
+    if input.demand.deceleration.is_some() && !case.stop.is_modulated {
         let detail =
             "the deceleration asked for is more than brakes and tires give: full torque was taken";
         find(Notice::DecelerationNotReached, Severity::Exceeded, "deceleration", detail);
@@ -418,7 +396,7 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
     if !matches!(case.stop.ending, Ending::Reached(_)) {
         return;
     }
-    if case.stop.path.end().time - input.delays.reaction() < 0.1 {
+    if case.stop.path.end().time - input.demand.delays.reaction() < 0.1 {
         let detail = "the stop takes less than 0.1 s; look for a slip of units";
         find(Notice::StopUnusuallyShort, Severity::Info, "fitted", detail);
     }
@@ -478,7 +456,7 @@ fn note_lock_order(remarks: &mut Remarks, input: &Input, system: &Reduced, cases
     let worst = match (cases.first(), cases.last()) {
         (Some(low), Some(high)) => {
             let [front, rear] = [total(&low.demands)[0], total(&high.demands)[1]];
-            lock_factors(system, [front, rear], input.initial_speed)
+            lock_factors(system, [front, rear], input.demand.initial_speed)
         }
         _ => None,
     };

@@ -104,6 +104,10 @@ codes! {
         CoolingNotGiven = "cooling_not_given";
         /// Repeated stops heat a disc without end.
         NoSteadyState = "no_steady_state";
+        /// No fade points: friction was taken not to change with temperature.
+        FadeNotGiven = "fade_not_given";
+        /// An event of a duty cannot be done.
+        DutyNotCompleted = "duty_not_completed";
     }
 }
 

@@ -10,7 +10,7 @@ pub use hoist::{Direction, Hoist, HoistParts};
 pub use shaft::{Shaft, ShaftParts};
 pub use vehicle::{Geometry, GeometryParts, Vehicle, VehicleParts};
 
-use super::fault::Faults;
+use super::fault::{FaultCode, Faults};
 use super::method::Method;
 use super::motion::{Coordinate, Reduced};
 use super::quantity::{Angle, Force, Length, Si};
@@ -48,6 +48,15 @@ impl Situation {
             drive_force: Force::from_si(0.0),
             direction: Direction::Lowering,
         }
+    }
+
+    /// What is impossible about it. Members are those of a request.
+    #[must_use]
+    pub fn faults(&self) -> Faults {
+        let mut faults = Faults::new();
+        let holds = self.grade.si().abs() <= std::f64::consts::FRAC_PI_4 * (1.0 + 1e-12);
+        faults.require(holds, "grade", FaultCode::OutOfRange, "must not be steeper than 100 %");
+        faults
     }
 }
 

@@ -1,10 +1,11 @@
 //! The stop: reaction, dead time, build-up and full braking, each in closed form where forces allow it.
 
+use super::Coordinate;
 use super::forces::Forces;
 use super::integrate::integrate;
 use super::path::{Effort, Motion, Path, Phase, Piece, time_in_step, time_to_speed};
 use super::run_back::{RunBack, run_back};
-use crate::calc::fault::Faults;
+use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::quantity::{Si, Time};
 
 /// The delays between the wish to stop and full torque.
@@ -35,6 +36,12 @@ impl Delays {
         })
     }
 
+    /// The build-up time, s.
+    #[must_use]
+    pub const fn build_up(&self) -> f64 {
+        self.build_up
+    }
+
     /// The reaction time, s.
     #[must_use]
     pub const fn reaction(&self) -> f64 {
@@ -53,6 +60,37 @@ pub struct Demand {
     pub delays: Delays,
     /// Deceleration that the operator holds after build-up.
     pub deceleration: Option<f64>,
+}
+
+impl Demand {
+    /// What is impossible about it. Members are those of a request.
+    #[must_use]
+    pub fn faults(&self, coordinate: Coordinate) -> Faults {
+        let mut faults = Faults::new();
+        let (initial, end) = match coordinate {
+            Coordinate::Way => ("initial_speed", "final_speed"),
+            Coordinate::Angle => ("initial_rotational_speed", "final_rotational_speed"),
+        };
+        faults.positive(initial, self.initial_speed);
+        faults.not_negative(end, self.final_speed);
+        if faults.is_empty() {
+            let holds = self.final_speed < self.initial_speed;
+            faults.require(
+                holds,
+                end,
+                FaultCode::NotBelowInitialSpeed,
+                "must be below the initial speed",
+            );
+        }
+        if let Some(deceleration) = self.deceleration {
+            let member = match coordinate {
+                Coordinate::Way => "deceleration",
+                Coordinate::Angle => "angular_deceleration",
+            };
+            faults.positive(member, deceleration);
+        }
+        faults
+    }
 }
 
 /// How a stop ends.

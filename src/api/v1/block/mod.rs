@@ -4,6 +4,7 @@ pub mod actuation;
 pub mod brake;
 pub mod delays;
 pub mod disc;
+pub mod event;
 pub mod fitted;
 pub mod lining;
 pub mod machine;

@@ -17,6 +17,7 @@ use crate::calc::actuation::{Actuation as Chain, Input as Driving};
 use crate::calc::case::stopping::Input;
 use crate::calc::fitted::{Fitted as Entry, Pressed};
 use crate::calc::machine::{Direction as Way, Situation};
+use crate::calc::motion::{Coordinate, Demand};
 use crate::calc::quantity::Si;
 
 /// Which way a hoist's load moves.
@@ -29,13 +30,9 @@ pub enum Direction {
     Raising,
 }
 
-/// The members of a request for a stop.
+/// What a stop is asked to do, as given.
 #[derive(Debug, Clone, Copy)]
-pub struct StopMembers<'a> {
-    /// What is braked.
-    pub machine: &'a Machine,
-    /// Its brakes.
-    pub fitted: &'a [Fitted],
+pub struct Stopping<'a> {
     /// Speed at the start, of a vehicle, load or belt.
     pub initial_speed: Option<&'a Speed>,
     /// Speed at the end, of a vehicle, load or belt.
@@ -44,12 +41,6 @@ pub struct StopMembers<'a> {
     pub initial_rotational_speed: Option<&'a RotationalSpeed>,
     /// Speed at the end, of a shaft.
     pub final_rotational_speed: Option<&'a RotationalSpeed>,
-    /// Slope, of a vehicle.
-    pub grade: Option<&'a Grade>,
-    /// Drive, of a vehicle.
-    pub drive_force: Option<&'a Force>,
-    /// Of a hoist.
-    pub direction: Option<Direction>,
     /// Held after build-up, of a vehicle, load or belt.
     pub deceleration: Option<&'a Acceleration>,
     /// Held after build-up, of a shaft.
@@ -58,28 +49,56 @@ pub struct StopMembers<'a> {
     pub response: Option<&'a Response>,
 }
 
+/// What surrounds a stop, as given.
+#[derive(Debug, Clone, Copy)]
+pub struct Surroundings<'a> {
+    /// Slope, of a vehicle.
+    pub grade: Option<&'a Grade>,
+    /// Drive, of a vehicle.
+    pub drive_force: Option<&'a Force>,
+    /// Of a hoist.
+    pub direction: Option<Direction>,
+}
+
+/// The members of a request for a stop.
+#[derive(Debug, Clone, Copy)]
+pub struct StopMembers<'a> {
+    /// What is braked.
+    pub machine: &'a Machine,
+    /// Its brakes.
+    pub fitted: &'a [Fitted],
+    /// What the stop is asked to do.
+    pub stopping: Stopping<'a>,
+    /// What surrounds it.
+    pub surroundings: Surroundings<'a>,
+}
+
 impl StopMembers<'_> {
     /// The stop that is meant.
     pub fn read(&self, at: &At<'_>, reader: &mut Reader) -> Option<Input> {
         let machine = self.machine.read(&at.member("machine"), reader);
         let fitted = Fitted::read_all(self.fitted, &at.member("fitted"), reader);
-        let is_shaft = matches!(self.machine, Machine::Shaft(_));
+        let demand = self.stopping.read(self.machine, at, reader);
+        let situation = self.surroundings.read(self.machine, at, reader);
+        let input =
+            Input { machine: machine?, fitted: fitted?, situation: situation?, demand: demand? };
+        reader.take(at, input.faults().into_result(()))?;
+        Some(input)
+    }
+}
+
+impl Stopping<'_> {
+    /// What the stop is asked to do.
+    pub fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Demand> {
+        let is_shaft = matches!(machine, Machine::Shaft(_));
         let (initial_speed, final_speed) =
             if is_shaft { self.turning(at, reader) } else { self.moving(at, reader) };
         let deceleration = self.held(is_shaft, at, reader);
-        let situation = self.situation(at, reader);
         let delays = Response::read(self.response, &at.member("response"), reader);
-        let input = Input {
-            machine: machine?,
-            fitted: fitted?,
-            situation: situation?,
-            initial_speed: initial_speed?,
-            final_speed,
-            deceleration,
-            delays: delays?,
-        };
-        reader.take(at, input.faults().into_result(()))?;
-        Some(input)
+        let demand =
+            Demand { initial_speed: initial_speed?, final_speed, delays: delays?, deceleration };
+        let coordinate = if is_shaft { Coordinate::Angle } else { Coordinate::Way };
+        reader.take(at, demand.faults(coordinate).into_result(demand))
     }
 
     fn moving(&self, at: &At<'_>, reader: &mut Reader) -> (Option<f64>, f64) {
@@ -138,11 +157,14 @@ impl StopMembers<'_> {
             linear
         }
     }
+}
 
-    fn situation(&self, at: &At<'_>, reader: &mut Reader) -> Option<Situation> {
+impl Surroundings<'_> {
+    /// The surroundings that are meant.
+    pub fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Situation> {
         let level = Situation::level();
         let (at_grade, at_drive) = (at.member("grade"), at.member("drive_force"));
-        let (grade, drive_force) = if matches!(self.machine, Machine::Vehicle(_)) {
+        let (grade, drive_force) = if matches!(machine, Machine::Vehicle(_)) {
             let grade = reader.or_default(&at_grade, self.grade, 0.0, "%");
             (grade, reader.or_default(&at_drive, self.drive_force, 0.0, "N"))
         } else {
@@ -155,7 +177,7 @@ impl StopMembers<'_> {
             (level.grade, level.drive_force)
         };
         let at_direction = at.member("direction");
-        let direction = if matches!(self.machine, Machine::Hoist(_)) {
+        let direction = if matches!(machine, Machine::Hoist(_)) {
             reader.required(
                 &at_direction,
                 self.direction,
@@ -173,7 +195,8 @@ impl StopMembers<'_> {
             Direction::Lowering => Way::Lowering,
             Direction::Raising => Way::Raising,
         };
-        Some(Situation { grade, drive_force, direction })
+        let situation = Situation { grade, drive_force, direction };
+        reader.take(at, situation.faults().into_result(situation))
     }
 }
 

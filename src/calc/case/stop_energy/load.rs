@@ -91,7 +91,8 @@ impl<'a> Load<'a> {
         let (begin, end) = (self.path().first_torque(), self.path().end());
         let rest = self.input.interval?.si() - self.braking_time();
         let mean = (end.distance - begin.distance) / self.braking_time();
-        let between = f64::midpoint(self.input.stop.initial_speed, self.input.stop.final_speed);
+        let between =
+            f64::midpoint(self.input.stop.demand.initial_speed, self.input.stop.demand.final_speed);
         let repeating = Repeating {
             heating: *heating,
             braking_speeds: self.speeds(mean),
