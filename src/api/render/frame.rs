@@ -1,0 +1,143 @@
+//! What all charts have in common: numbers in the units of the answer, and the words that travel with it.
+
+use super::chart::{Band, Key, Style, Tone, Weight};
+use super::words;
+use crate::api::measure::ReportUnits;
+use crate::api::record::{Record, Warning, WarningSeverity};
+use crate::calc::friction::FrictionCase;
+use crate::calc::motion::{Path, Phase};
+use crate::calc::quantity::Dimension;
+
+/// Numbers in the units of an answer.
+#[derive(Debug, Clone, Copy)]
+pub struct Figures(pub ReportUnits);
+
+impl Figures {
+    /// The symbol of the unit.
+    #[must_use]
+    pub fn unit(self, dimension: Dimension) -> &'static str {
+        self.0.unit_of(dimension).map_or("1", |unit| unit.symbol)
+    }
+
+    /// The number of units.
+    #[must_use]
+    pub fn number(self, dimension: Dimension, si: f64) -> f64 {
+        self.0.unit_of(dimension).map_or(si, |unit| unit.of_si(si))
+    }
+
+    /// The number in words, with its unit.
+    #[must_use]
+    pub fn text(self, dimension: Dimension, si: f64) -> String {
+        format!("{} {}", words::number(self.number(dimension, si)), self.unit(dimension))
+    }
+
+    /// The name of an axis.
+    #[must_use]
+    pub fn axis(self, name: &str, dimension: Dimension) -> String {
+        format!("{name}, {}", self.unit(dimension))
+    }
+}
+
+impl Tone {
+    /// The look of a friction case.
+    #[must_use]
+    pub const fn of(case: FrictionCase) -> Self {
+        match case {
+            FrictionCase::Low => Self::Low,
+            FrictionCase::Nominal => Self::Nominal,
+            FrictionCase::High => Self::High,
+        }
+    }
+}
+
+/// A line of the key for a friction case.
+#[must_use]
+pub fn case_key(case: FrictionCase, says: &str) -> Key {
+    let style = Style { tone: Tone::of(case), weight: Weight::Heavy };
+    Key { style, label: format!("{} friction{says}", case.as_str()) }
+}
+
+/// The lines below the title: the caller's reference, if there is one.
+#[must_use]
+pub fn subtitle(record: &Record) -> Vec<String> {
+    const MOST_LETTERS: usize = 100;
+    record.reference.iter().map(|reference| words::shortened(reference, MOST_LETTERS)).collect()
+}
+
+/// The lines at the bottom: how far to trust the chart, and which calculation it shows.
+#[must_use]
+pub fn footer(record: &Record, warnings: &[Warning]) -> Vec<String> {
+    let exceeded =
+        warnings.iter().filter(|warning| warning.severity == WarningSeverity::Exceeded).count();
+    let mut lines = Vec::new();
+    if !warnings.is_empty() {
+        let (total, plural) = (warnings.len(), if warnings.len() == 1 { "" } else { "s" });
+        lines.push(format!(
+            "{total} warning{plural}, {exceeded} of a limit exceeded: see the answer as JSON."
+        ));
+    }
+    lines.push(
+        "A calculation for selecting a brake, not a proof: confirm it by test on the machine."
+            .to_owned(),
+    );
+    lines.push(format!(
+        "Brakewright {}, input {}",
+        record.service_version,
+        record.input_digest.chars().take(23).collect::<String>()
+    ));
+    lines
+}
+
+/// A name for the elements of a chart: what it shows and of which input.
+#[must_use]
+pub fn id(kind: &str, record: &Record) -> String {
+    let digest = record.input_digest.trim_start_matches("sha256:");
+    format!("{kind}-{}", digest.chars().take(12).collect::<String>())
+}
+
+/// The phases of stops that share their delays. Times in s.
+#[must_use]
+pub fn phases(paths: &[&Path]) -> Vec<Band> {
+    let mut bands: Vec<(Phase, f64, f64)> = Vec::with_capacity(4);
+    for path in paths {
+        let mut time = 0.0;
+        for phase in path.phases() {
+            let (from, to) = (time, time + phase.time);
+            time = to;
+            match bands.iter_mut().find(|band| band.0 == phase.phase) {
+                Some(band) => band.2 = band.2.max(to),
+                None => bands.push((phase.phase, from, to)),
+            }
+        }
+    }
+    bands.retain(|band| band.2 > band.1);
+    bands.sort_by_key(|band| band.0);
+    let named =
+        |(phase, from, to): (Phase, f64, f64)| Band { label: name(phase).to_owned(), from, to };
+    bands.into_iter().map(named).collect()
+}
+
+const fn name(phase: Phase) -> &'static str {
+    match phase {
+        Phase::Reaction => "reaction",
+        Phase::Dead => "dead time",
+        Phase::BuildUp => "build-up",
+        Phase::Full => "full",
+    }
+}
+
+/// Times of a stop for a curve: even ones and the ends of the phases.
+#[must_use]
+pub fn times(path: &Path) -> Vec<f64> {
+    const EVEN: u32 = 160;
+    let end = path.end().time;
+    let even = (0..=EVEN).map(|index| end * f64::from(index) / f64::from(EVEN));
+    let mut time = 0.0;
+    let ends = path.phases().into_iter().map(|phase| {
+        time += phase.time;
+        time
+    });
+    let mut times: Vec<f64> = even.chain(ends.filter(|time| *time < end)).collect();
+    times.sort_by(f64::total_cmp);
+    times
+}
