@@ -81,7 +81,7 @@ impl Style {
 enum Block<'a> {
     Gap(i32),
     Line { text: String, size: i32, ink: Ink, bold: bool },
-    Key(&'a Key),
+    Key { key: &'a Key, lines: Vec<String> },
     Panel(PanelLayout<'a>),
 }
 
@@ -90,7 +90,7 @@ impl Block<'_> {
         match self {
             Self::Gap(height) => *height,
             Self::Line { size, .. } => size * LINE / LETTERS,
-            Self::Key(_) => LINE,
+            Self::Key { lines, .. } => LINE * i32::try_from(lines.len()).unwrap_or(1),
             Self::Panel(panel) => panel.height(),
         }
     }
@@ -104,20 +104,31 @@ impl Block<'_> {
                 let style = text_style(*size, *ink, *bold, anchor);
                 root.draw(&Text::new(text.as_str(), (MARGIN, middle), style))?;
             }
-            Self::Key(key) => {
-                let ends = vec![(MARGIN, middle), (MARGIN + SAMPLE, middle)];
-                root.draw(&PathElement::new(ends, key.style.line()))?;
-                if key.style.weight == Weight::Heavy {
-                    key.style.mark(root, (MARGIN + SAMPLE / 2, middle))?;
-                }
-                let style = text_style(LETTERS, Ink::Text, false, anchor);
-                let label = words::shortened(&words::plain(&key.label), MOST_LETTERS - 8);
-                root.draw(&Text::new(label, (MARGIN + SAMPLE + 110, middle), style))?;
-            }
+            Self::Key { key, lines } => draw_key(root, top + LINE / 2, key.style, lines)?,
             Self::Panel(panel) => panel.draw(root, top)?,
         }
         Ok(())
     }
+}
+
+/// Draws the sample of a line and what it stands for.
+fn draw_key(
+    root: &Area<'_>,
+    mut middle: i32,
+    style: Style,
+    lines: &[String],
+) -> Result<(), DrawingError> {
+    let ends = vec![(MARGIN, middle), (MARGIN + SAMPLE, middle)];
+    root.draw(&PathElement::new(ends, style.line()))?;
+    if style.weight == Weight::Heavy {
+        style.mark(root, (MARGIN + SAMPLE / 2, middle))?;
+    }
+    for line in lines {
+        let words = text_style(LETTERS, Ink::Text, false, (HPos::Left, VPos::Center));
+        root.draw(&Text::new(line.as_str(), (MARGIN + SAMPLE + 110, middle), words))?;
+        middle += LINE;
+    }
+    Ok(())
 }
 
 /// A chart, laid out.
@@ -135,7 +146,10 @@ impl<'a> Sheet<'a> {
         }
         if !chart.key.is_empty() {
             blocks.push(Block::Gap(90));
-            blocks.extend(chart.key.iter().map(Block::Key));
+            blocks.extend(chart.key.iter().map(|key| {
+                let lines = words::lines(&words::plain(&key.label), MOST_LETTERS - 9);
+                Block::Key { key, lines }
+            }));
         }
         let panels = PanelLayout::all(&chart.panels);
         for panel in panels {

@@ -1,12 +1,14 @@
 //! What all charts have in common: numbers in the units of the answer, and the words that travel with it.
 
-use super::chart::{Band, Key, Style, Tone, Weight};
+use super::chart::{Band, Key, Limit, Style, Tone, Weight};
 use super::words;
 use crate::api::measure::ReportUnits;
 use crate::api::record::{Record, Warning, WarningSeverity};
+use crate::calc::brake::Brake;
+use crate::calc::fitted::{Fitted, Place};
 use crate::calc::friction::FrictionCase;
 use crate::calc::motion::{Path, Phase};
-use crate::calc::quantity::Dimension;
+use crate::calc::quantity::{Dimension, Si, ThermodynamicTemperature};
 
 /// Numbers in the units of an answer.
 #[derive(Debug, Clone, Copy)]
@@ -72,9 +74,12 @@ pub fn footer(record: &Record, warnings: &[Warning]) -> Vec<String> {
     let mut lines = Vec::new();
     if !warnings.is_empty() {
         let (total, plural) = (warnings.len(), if warnings.len() == 1 { "" } else { "s" });
-        lines.push(format!(
-            "{total} warning{plural}, {exceeded} of a limit exceeded: see the answer as JSON."
-        ));
+        let limits = match exceeded {
+            0 => "no limit exceeded".to_owned(),
+            1 => "1 limit exceeded".to_owned(),
+            more => format!("{more} limits exceeded"),
+        };
+        lines.push(format!("{total} warning{plural}, {limits}: the answer as JSON tells which."));
     }
     lines.push(
         "A calculation for selecting a brake, not a proof: confirm it by test on the machine."
@@ -122,7 +127,7 @@ const fn name(phase: Phase) -> &'static str {
         Phase::Reaction => "reaction",
         Phase::Dead => "dead time",
         Phase::BuildUp => "build-up",
-        Phase::Full => "full",
+        Phase::Full => "full braking",
     }
 }
 
@@ -140,4 +145,45 @@ pub fn times(path: &Path) -> Vec<f64> {
     let mut times: Vec<f64> = even.chain(ends.filter(|time| *time < end)).collect();
     times.sort_by(f64::total_cmp);
     times
+}
+
+/// The limits of a brake's temperatures.
+#[must_use]
+pub fn temperature_limits(figures: Figures, brake: &Brake) -> Vec<Limit> {
+    let lining = brake.parts().lining.parts();
+    let disc = brake.parts().disc.as_ref().and_then(|disc| disc.material().max_temperature());
+    let limits = [
+        ("lining, short time (surface)", lining.max_temperature_peak.map(|limit| limit.value)),
+        ("lining, lasting (bulk)", lining.max_temperature_continuous.map(|limit| limit.value)),
+        ("disc (bulk)", disc),
+    ];
+    let limit = |(label, value): (&str, Option<ThermodynamicTemperature>)| {
+        let value = figures.number(Dimension::Temperature, value?.si());
+        Some(Limit { label: label.to_owned(), value })
+    };
+    limits.into_iter().filter_map(limit).collect()
+}
+
+/// The name of a fitted entry, with what is shown of it.
+#[must_use]
+pub fn entry_heading(fitted: &[Fitted], index: usize, shown: &str) -> String {
+    let place = fitted.get(index).and_then(|entry| entry.parts().place);
+    let place = match place {
+        Some(Place::Front) => ", front",
+        Some(Place::Rear) => ", rear",
+        Some(Place::All) | None => "",
+    };
+    if fitted.len() > 1 { format!("Entry {index}{place}: {shown}") } else { shown.to_owned() }
+}
+
+/// The highest of some values with the friction case that it belongs to, in words.
+#[must_use]
+pub fn highest(figures: Figures, name: &str, peaks: &[(FrictionCase, f64)]) -> Option<String> {
+    let highest = peaks.iter().max_by(|one, other| one.1.total_cmp(&other.1))?;
+    let case = if peaks.len() > 1 {
+        format!(" at {} friction", highest.0.as_str())
+    } else {
+        String::new()
+    };
+    Some(format!("{name} {}{case}", figures.text(Dimension::Temperature, highest.1)))
 }

@@ -7,6 +7,7 @@ pub mod frame;
 mod ink;
 mod panel;
 mod scale;
+pub mod stop_energy;
 pub mod stopping;
 mod svg;
 pub mod words;

@@ -15,8 +15,8 @@ use super::words;
 
 /// Height between the axes.
 const PLOT: i32 = 1850;
-/// Room for the numbers below the axis and the words below those.
-const BELOW: i32 = 240 + LINE;
+/// Room for the numbers below the axis.
+const BELOW: i32 = 240;
 /// Room to the right, for the half of the last number.
 const RIGHT: i32 = MARGIN + 150;
 /// Between axis and numbers.
@@ -31,6 +31,8 @@ pub(super) struct PanelLayout<'a> {
     y: Scale,
     /// Where the axis upwards stands; the same for all panels of a sheet.
     left: i32,
+    /// Whether the words below the axis stand here: below the last of several panels.
+    is_last: bool,
     captions: Vec<Caption>,
     /// What cannot be shown in the panel, in words.
     beyond: Vec<String>,
@@ -41,10 +43,16 @@ impl<'a> PanelLayout<'a> {
     pub(super) fn all(panels: &'a [Panel]) -> Vec<Self> {
         let mut laid_out: Vec<Self> = panels.iter().map(Self::new).collect();
         let widths = laid_out.iter().flat_map(|panel| panel.y.labels());
-        let widest = widths.map(|label| words::width(&label, LETTERS)).max().unwrap_or(0);
+        let widest = widths.map(|(_, label)| words::width(&label, LETTERS)).max().unwrap_or(0);
+        let mut before = None;
         for panel in &mut laid_out {
             panel.left = MARGIN + widest + 3 * TICK;
-            panel.place_captions();
+            // Names that stand above the panel before need not be said again.
+            panel.place_captions(before == Some(&panel.panel.bands));
+            before = Some(&panel.panel.bands);
+        }
+        if let Some(last) = laid_out.last_mut() {
+            last.is_last = true;
         }
         laid_out
     }
@@ -71,13 +79,15 @@ impl<'a> PanelLayout<'a> {
             x: Scale::new(0.0, panel.x_end, 6),
             y: Scale::widened(seen.0, seen.1, 5),
             left: MARGIN,
+            is_last: false,
             captions: Vec::new(),
             beyond,
         }
     }
 
-    fn place_captions(&mut self) {
-        let bands = self.panel.bands.iter().map(|band| (&band.label, band.from));
+    fn place_captions(&mut self, bands_are_named: bool) {
+        let bands = self.panel.bands.iter().filter(|_| !bands_are_named);
+        let bands = bands.map(|band| (&band.label, band.from));
         let marks = self.panel.marks.iter().map(|mark| (&mark.label, mark.x));
         let span = (self.left, WIDTH - RIGHT);
         let names =
@@ -90,21 +100,35 @@ impl<'a> PanelLayout<'a> {
         captions::rows(&self.captions) * LINE + lines * LINE + 60
     }
 
+    /// What is said in the place of curves.
+    fn message(&self) -> Option<Vec<String>> {
+        const MOST_LETTERS: usize = 48;
+        self.panel
+            .message
+            .as_ref()
+            .map(|message| words::lines(&words::plain(message), MOST_LETTERS))
+    }
+
     /// Height with everything that belongs to it.
     pub(super) fn height(&self) -> i32 {
-        self.above() + PLOT + BELOW
+        match self.message() {
+            Some(lines) => i32::try_from(lines.len()).unwrap_or(0) * LINE + 2 * LINE,
+            None => self.above() + PLOT + BELOW + if self.is_last { LINE } else { 0 },
+        }
     }
 
     /// Draws the panel with its upper edge at `top`.
     pub(super) fn draw(&self, root: &Area<'_>, top: i32) -> Result<(), DrawingError> {
+        if let Some(lines) = self.message() {
+            return draw_message(root, top + LINE, &lines);
+        }
         let plot_top = top + self.above();
         self.draw_bands(root, plot_top)?;
         self.draw_axes(root, plot_top)?;
         self.draw_captions(root, plot_top)?;
         self.draw_beyond(root, top)?;
         self.draw_limits(root, plot_top)?;
-        self.draw_curves(root, plot_top)?;
-        self.draw_message(root, plot_top)
+        self.draw_curves(root, plot_top)
     }
 
     fn at(&self, (x, y): (f64, f64), plot_top: i32) -> (i32, i32) {
@@ -143,9 +167,19 @@ impl<'a> PanelLayout<'a> {
             .set_all_tick_mark_size(TICK)
             .label_style(numbers)
             .draw()?;
-        let words = text_style(LETTERS, Ink::Soft, false, (HPos::Right, VPos::Center));
-        let at = (WIDTH - RIGHT, plot_top + PLOT + BELOW - LINE / 2);
-        root.draw(&Text::new(self.panel.x_label.clone(), at, words))?;
+        self.draw_words_of_axes(root, plot_top)
+    }
+
+    fn draw_words_of_axes(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
+        let words = || text_style(LETTERS, Ink::Soft, false, (HPos::Right, VPos::Center));
+        for (value, label) in self.y.labels() {
+            let height = self.at((0.0, value), plot_top).1;
+            root.draw(&Text::new(label, (self.left - 2 * TICK, height), words()))?;
+        }
+        if self.is_last {
+            let at = (WIDTH - RIGHT, plot_top + PLOT + BELOW + LINE / 2);
+            root.draw(&Text::new(self.panel.x_label.clone(), at, words()))?;
+        }
         Ok(())
     }
 
@@ -209,19 +243,16 @@ impl<'a> PanelLayout<'a> {
         }
         Ok(())
     }
+}
 
-    fn draw_message(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
-        let Some(message) = &self.panel.message else { return Ok(()) };
-        let lines = words::lines(&words::plain(message), 40);
-        let mut middle = plot_top + PLOT / 2 - i32::try_from(lines.len()).unwrap_or(0) * LINE / 2;
-        for line in lines {
-            let style = text_style(LETTERS, Ink::Text, true, (HPos::Center, VPos::Center));
-            let center = i32::midpoint(self.left, WIDTH - RIGHT);
-            root.draw(&Text::new(line, (center, middle), style))?;
-            middle += LINE;
-        }
-        Ok(())
+fn draw_message(root: &Area<'_>, top: i32, lines: &[String]) -> Result<(), DrawingError> {
+    let mut middle = top + LINE / 2;
+    for line in lines {
+        let style = text_style(LETTERS, Ink::Limit, true, (HPos::Left, VPos::Center));
+        root.draw(&Text::new(line.as_str(), (MARGIN, middle), style))?;
+        middle += LINE;
     }
+    Ok(())
 }
 
 /// The lowest and the highest value of the curves.

@@ -46,9 +46,9 @@ impl Scale {
         (self.low, self.high)
     }
 
-    /// The words of the divisions.
-    pub(super) fn labels(&self) -> impl Iterator<Item = String> + '_ {
-        self.divisions.iter().map(|division| self.label(*division))
+    /// The divisions and their words.
+    pub(super) fn labels(&self) -> impl Iterator<Item = (f64, String)> + '_ {
+        self.divisions.iter().map(|division| (*division, self.label(*division)))
     }
 
     fn label(&self, value: f64) -> String {

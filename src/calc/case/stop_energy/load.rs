@@ -6,7 +6,7 @@ use crate::calc::case::stopping;
 use crate::calc::fault::Faults;
 use crate::calc::fitted::Fitted;
 use crate::calc::heat::cooling::Speeds;
-use crate::calc::heat::disc_heat::{self, Heating};
+use crate::calc::heat::disc_heat::{self, Heating, Warmth};
 use crate::calc::heat::disc_series::{self, Repeated, Repeating};
 use crate::calc::motion::{Coordinate, Path};
 use crate::calc::quantity::{Energy, EnergyFlux, Power, PowerFlux, Si, Velocity};
@@ -60,12 +60,7 @@ impl<'a> Load<'a> {
         let shaft_speed =
             stopping::highest_brake_speed(&self.input.stop, self.entry, &self.case.stop);
         let power = self.power_course();
-        let heating = Heating {
-            energy,
-            power: &power,
-            brakes_per_disc: self.entry.parts().brakes_per_disc,
-            start: self.input.start_temperature,
-        };
+        let heating = self.heating(energy, &power);
         Ok(BrakeLoad {
             energy_per_face: Energy::from_si(energy / faces),
             energy_flux: EnergyFlux::from_si(energy / faces / area),
@@ -75,6 +70,22 @@ impl<'a> Load<'a> {
             repeated: self.repeated(brake, &heating),
             pad_life_stops: brake.pad_life(energy / faces),
         })
+    }
+
+    fn heating<'b>(&self, energy: f64, power: &'b [(f64, f64)]) -> Heating<'b> {
+        Heating {
+            energy,
+            power,
+            brakes_per_disc: self.entry.parts().brakes_per_disc,
+            start: self.input.start_temperature,
+        }
+    }
+
+    /// How the brake's disc warms in the stop; none where that cannot be told.
+    pub(super) fn course(&self, energy: Energy, count: u32) -> Option<Vec<Warmth>> {
+        let power = self.power_course();
+        let heating = self.heating(energy.si(), &power);
+        disc_heat::course(self.entry.brake()?, &heating, count).ok()?
     }
 
     /// Power of the brake over time, as nodes joined by straight lines.
