@@ -24,6 +24,8 @@ pub struct Chart {
 pub struct Key {
     /// The look that is explained.
     pub style: Style,
+    /// Whether the sample bears the mark of its case.
+    pub is_marked: bool,
     /// What it stands for.
     pub label: String,
 }

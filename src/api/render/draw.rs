@@ -104,7 +104,7 @@ impl Block<'_> {
                 let style = text_style(*size, *ink, *bold, anchor);
                 root.draw(&Text::new(text.as_str(), (MARGIN, middle), style))?;
             }
-            Self::Key { key, lines } => draw_key(root, top + LINE / 2, key.style, lines)?,
+            Self::Key { key, lines } => draw_key(root, top + LINE / 2, key, lines)?,
             Self::Panel(panel) => panel.draw(root, top)?,
         }
         Ok(())
@@ -115,13 +115,13 @@ impl Block<'_> {
 fn draw_key(
     root: &Area<'_>,
     mut middle: i32,
-    style: Style,
+    key: &Key,
     lines: &[String],
 ) -> Result<(), DrawingError> {
     let ends = vec![(MARGIN, middle), (MARGIN + SAMPLE, middle)];
-    root.draw(&PathElement::new(ends, style.line()))?;
-    if style.weight == Weight::Heavy {
-        style.mark(root, (MARGIN + SAMPLE / 2, middle))?;
+    root.draw(&PathElement::new(ends, key.style.line()))?;
+    if key.is_marked {
+        key.style.mark(root, (MARGIN + SAMPLE / 2, middle))?;
     }
     for line in lines {
         let words = text_style(LETTERS, Ink::Text, false, (HPos::Left, VPos::Center));

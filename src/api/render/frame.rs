@@ -7,7 +7,8 @@ use crate::api::record::{Record, Warning, WarningSeverity};
 use crate::calc::brake::Brake;
 use crate::calc::fitted::{Fitted, Place};
 use crate::calc::friction::FrictionCase;
-use crate::calc::motion::{Path, Phase};
+use crate::calc::machine::Machine;
+use crate::calc::motion::{Coordinate, Demand, Path, Phase};
 use crate::calc::quantity::{Dimension, Si, ThermodynamicTemperature};
 
 /// Numbers in the units of an answer.
@@ -56,7 +57,29 @@ impl Tone {
 #[must_use]
 pub fn case_key(case: FrictionCase, says: &str) -> Key {
     let style = Style { tone: Tone::of(case), weight: Weight::Heavy };
-    Key { style, label: format!("{} friction{says}", case.as_str()) }
+    Key { style, is_marked: true, label: format!("{} friction{says}", case.as_str()) }
+}
+
+/// What is asked of a stop, in words.
+#[must_use]
+pub fn stop_in_words(figures: Figures, machine: &Machine, demand: &Demand) -> String {
+    let speed = match machine.coordinate() {
+        Coordinate::Way => Dimension::Speed,
+        Coordinate::Angle => Dimension::RotationalSpeed,
+    };
+    let initial = figures.text(speed, demand.initial_speed);
+    if demand.final_speed > 0.0 {
+        format!("braking from {initial} to {}", figures.text(speed, demand.final_speed))
+    } else {
+        format!("stop from {initial}")
+    }
+}
+
+/// The text with a capital letter in front.
+#[must_use]
+pub fn capital(text: &str) -> String {
+    let mut letters = text.chars();
+    letters.next().map_or_else(String::new, |first| first.to_uppercase().chain(letters).collect())
 }
 
 /// The lines below the title: the caller's reference, if there is one.
@@ -79,7 +102,7 @@ pub fn footer(record: &Record, warnings: &[Warning]) -> Vec<String> {
             1 => "1 limit exceeded".to_owned(),
             more => format!("{more} limits exceeded"),
         };
-        lines.push(format!("{total} warning{plural}, {limits}: the answer as JSON tells which."));
+        lines.push(format!("{total} warning{plural}, {limits}: see the answer as JSON."));
     }
     lines.push(
         "A calculation for selecting a brake, not a proof: confirm it by test on the machine."
@@ -153,8 +176,8 @@ pub fn temperature_limits(figures: Figures, brake: &Brake) -> Vec<Limit> {
     let lining = brake.parts().lining.parts();
     let disc = brake.parts().disc.as_ref().and_then(|disc| disc.material().max_temperature());
     let limits = [
-        ("lining, short time (surface)", lining.max_temperature_peak.map(|limit| limit.value)),
-        ("lining, lasting (bulk)", lining.max_temperature_continuous.map(|limit| limit.value)),
+        ("lining peak (surface)", lining.max_temperature_peak.map(|limit| limit.value)),
+        ("lining continuous (bulk)", lining.max_temperature_continuous.map(|limit| limit.value)),
         ("disc (bulk)", disc),
     ];
     let limit = |(label, value): (&str, Option<ThermodynamicTemperature>)| {

@@ -69,7 +69,7 @@ impl<'a> PanelLayout<'a> {
                 let side = if limit.value > high { "above" } else { "below" };
                 beyond.push(format!(
                     "{} {}: {side} this panel",
-                    limit.label,
+                    super::frame::capital(&words::plain(&limit.label)),
                     words::number(limit.value)
                 ));
             }

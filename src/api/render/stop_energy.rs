@@ -11,7 +11,7 @@ use crate::calc::motion::Path;
 use crate::calc::quantity::{Dimension, Si};
 
 /// Parts of a curve.
-const PARTS: u32 = 90;
+const PARTS: u32 = 60;
 
 /// The chart of an answer.
 #[must_use]
@@ -25,17 +25,23 @@ pub fn chart(
     let panels = view.panels();
     let sentences = panels.iter().map(|panel| {
         let says = panel.message.iter().chain(&panel.notes).cloned().collect::<Vec<_>>();
-        format!("{}: {}", panel.heading, says.join(". "))
+        let lead = if panel.heading.is_empty() { "" } else { ": " };
+        format!("{}{lead}{}", panel.heading, says.join(". ").trim_end_matches('.'))
     });
+    let stop = frame::stop_in_words(figures, &input.stop.machine, &input.stop.demand);
     Chart {
         id: frame::id("stop-energy", &answer.record),
-        title: "Disc temperatures in the stop".to_owned(),
+        title: format!("Disc temperatures, {stop}"),
         subtitle: frame::subtitle(&answer.record),
         description: format!(
             "Bulk and surface temperature of each disc over time. {}.",
             sentences.collect::<Vec<_>>().join(". ")
         ),
-        key: view.key(),
+        key: if panels.iter().all(|panel| panel.message.is_some()) {
+            Vec::new()
+        } else {
+            view.key()
+        },
         panels,
         footer: frame::footer(&answer.record, &answer.warnings),
     }
@@ -63,10 +69,10 @@ impl View<'_> {
                 if case.energies.is_some() { "" } else { ": the final speed is not reached" };
             key.push(frame::case_key(case.friction_case, says));
         }
-        let weights =
-            [(Weight::Heavy, "surface (heavy line)"), (Weight::Light, "bulk (light line)")];
+        let weights = [(Weight::Heavy, "surface"), (Weight::Light, "bulk")];
         let plain = |(weight, label): (Weight, &str)| Key {
             style: Style { tone: Tone::Nominal, weight },
+            is_marked: false,
             label: label.to_owned(),
         };
         key.extend(weights.map(plain));
@@ -109,7 +115,7 @@ impl View<'_> {
         }
         let longest = paths.iter().fold(0.0_f64, |longest, path| longest.max(path.end().time));
         Panel {
-            heading: capital(&frame::entry_heading(&self.input.stop.fitted, index, &shown)),
+            heading: frame::capital(&frame::entry_heading(&self.input.stop.fitted, index, &shown)),
             notes: self.notes(index, curves),
             x_label: self.figures.axis("Time from the start", Dimension::Time),
             x_end: self.seconds(longest),
@@ -185,7 +191,7 @@ impl View<'_> {
             "No temperatures: the final speed is not reached."
         };
         Panel {
-            heading: "Temperature of the disc".to_owned(),
+            heading: String::new(),
             notes: Vec::new(),
             x_label: String::new(),
             x_end: 1.0,
@@ -197,9 +203,4 @@ impl View<'_> {
             message: Some(message.to_owned()),
         }
     }
-}
-
-fn capital(text: &str) -> String {
-    let mut letters = text.chars();
-    letters.next().map_or_else(String::new, |first| first.to_uppercase().chain(letters).collect())
 }

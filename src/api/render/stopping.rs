@@ -1,6 +1,6 @@
 //! The chart of a stop: speed and distance over time, with the phases.
 
-use super::chart::{Chart, Panel, Series, Style, Tone, Weight};
+use super::chart::{Chart, Key, Panel, Series, Style, Tone, Weight};
 use super::frame::{self, Figures};
 use crate::api::v1::stopping::{NotReachedReason, StoppingAnswer, StoppingCase};
 use crate::calc::case::stopping::{CaseOutcome, Input, Outcome};
@@ -15,7 +15,7 @@ pub fn chart(figures: Figures, input: &Input, outcome: &Outcome, answer: &Stoppi
     let sentences = cases.iter().map(|(case, told)| {
         format!("At {} friction {}.", case.friction_case.as_str(), view.says(case, told))
     });
-    let title = view.title();
+    let stop = frame::stop_in_words(figures, &input.machine, &input.demand);
     Chart {
         id: frame::id("stopping", &answer.record),
         description: format!(
@@ -23,14 +23,9 @@ pub fn chart(figures: Figures, input: &Input, outcome: &Outcome, answer: &Stoppi
             view.way_name(),
             sentences.collect::<Vec<_>>().join(" ")
         ),
-        title,
+        title: frame::capital(&stop),
         subtitle: frame::subtitle(&answer.record),
-        key: cases
-            .iter()
-            .map(|(case, told)| {
-                frame::case_key(case.friction_case, &format!(": {}", view.says(case, told)))
-            })
-            .collect(),
+        key: view.key(&cases),
         panels: view.panels(&cases),
         footer: frame::footer(&answer.record, &answer.warnings),
     }
@@ -62,16 +57,6 @@ impl<'a> View<'a> {
         if self.way == Dimension::Angle { "angle" } else { "distance" }
     }
 
-    fn title(&self) -> String {
-        let initial = self.figures.text(self.speed, self.input.demand.initial_speed);
-        if self.input.demand.final_speed > 0.0 {
-            let end = self.figures.text(self.speed, self.input.demand.final_speed);
-            format!("Braking from {initial} to {end}")
-        } else {
-            format!("Stop from {initial}")
-        }
-    }
-
     fn says(&self, case: &CaseOutcome, told: &StoppingCase) -> String {
         let end = case.stop.path.end();
         match case.stop.ending {
@@ -89,6 +74,14 @@ impl<'a> View<'a> {
 
     fn aim(&self) -> &'static str {
         if self.input.demand.final_speed > 0.0 { "reach the final speed" } else { "stop" }
+    }
+
+    fn key(&self, cases: &[(&CaseOutcome, &StoppingCase)]) -> Vec<Key> {
+        let line = |(case, told): &(&CaseOutcome, &StoppingCase)| {
+            frame::case_key(case.friction_case, &format!(": {}", self.says(case, told)))
+        };
+        // Without curves there is nothing to explain; the message says it all.
+        if self.reached.is_empty() { Vec::new() } else { cases.iter().map(line).collect() }
     }
 
     fn panels(&self, cases: &[(&CaseOutcome, &StoppingCase)]) -> Vec<Panel> {
@@ -112,12 +105,12 @@ impl<'a> View<'a> {
             marks: Vec::new(),
             message: message.clone(),
         };
-        let way = if self.way == Dimension::Angle { "Angle" } else { "Distance" };
-        let speed = panel("Speed", self.speed, |point| point.speed);
         if message.is_some() {
-            return vec![speed];
+            return vec![Panel { heading: String::new(), ..panel("", self.speed, |_| 0.0) }];
         }
-        vec![speed, panel(way, self.way, |point| point.distance)]
+        let speed = panel("Speed", self.speed, |point| point.speed);
+        let way = frame::capital(self.way_name());
+        vec![speed, panel(&way, self.way, |point| point.distance)]
     }
 
     fn series(&self, case: &CaseOutcome, dimension: Dimension, value: fn(&Point) -> f64) -> Series {
@@ -135,8 +128,11 @@ impl<'a> View<'a> {
 
     /// What is said if there is nothing to draw.
     fn message(&self, cases: &[(&CaseOutcome, &StoppingCase)]) -> Option<String> {
-        let reason = cases.first().and_then(|(_, told)| told.reason).map_or("", why);
-        self.reached.is_empty().then(|| format!("The machine does not {}: {reason}.", self.aim()))
+        let mut reasons: Vec<&str> =
+            cases.iter().filter_map(|(_, told)| told.reason).map(why).collect();
+        reasons.dedup();
+        let message = format!("The machine does not {}: {}.", self.aim(), reasons.join("; "));
+        self.reached.is_empty().then_some(message)
     }
 }
 

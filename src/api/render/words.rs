@@ -1,7 +1,7 @@
 //! Words and numbers of charts: shortened, broken into lines, and free of what a document cannot hold.
 
 /// Widths of letters differ; a line of text is about this many ems a letter, on average.
-const EMS_PER_LETTER: f64 = 0.54;
+const EMS_PER_LETTER: f64 = 0.6;
 
 /// About how wide a text is, for letters `size` high.
 #[must_use]

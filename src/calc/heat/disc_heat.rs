@@ -33,6 +33,8 @@ pub struct DiscHeat {
     pub bulk_rise: TemperatureInterval,
     /// Highest temperature of the rubbed surface.
     pub surface_peak_temperature: ThermodynamicTemperature,
+    /// When, from the first power on.
+    pub surface_peak_time: Time,
 }
 
 /// The ring that a brake's pads sweep and the mass that takes up its heat; none if they cannot be told.
@@ -105,8 +107,10 @@ fn flux(power: &[(f64, f64)], flux_per_power: f64) -> Option<PiecewiseLinearFlux
 pub fn of_one_stop(brake: &Brake, heating: &Heating<'_>) -> Result<Option<DiscHeat>, Faults> {
     let Some(heated) = heated(brake, heating)? else { return Ok(None) };
     let bulk_rise = heated.end.si() - heating.start.si();
-    let peak = heated.flux.as_ref().map(|flux| heated.slab.surface_peak(flux).1.si());
-    let surface = heating.start.si() + peak.unwrap_or(bulk_rise);
+    // Without power over any time the heat is taken to have spread at once.
+    let at_once = (Time::from_si(0.0), TemperatureInterval::from_si(bulk_rise));
+    let peak = heated.flux.as_ref().map_or(at_once, |flux| heated.slab.surface_peak(flux));
+    let surface = heating.start.si() + peak.1.si();
     if !surface.is_finite() {
         return Err(too_hot());
     }
@@ -114,6 +118,7 @@ pub fn of_one_stop(brake: &Brake, heating: &Heating<'_>) -> Result<Option<DiscHe
         disc_share: heated.share,
         bulk_rise: TemperatureInterval::from_si(bulk_rise),
         surface_peak_temperature: ThermodynamicTemperature::from_si(surface),
+        surface_peak_time: peak.0,
     }))
 }
 
@@ -128,50 +133,33 @@ pub struct Warmth {
     pub surface: ThermodynamicTemperature,
 }
 
-/// How the disc of a brake warms while the power acts. None without a disc, its mass, or power that lasts.
+/// How warm the disc of a brake is at `times` from the first power on. None without a disc, its mass, or power that
+/// lasts.
 ///
-/// `count` parts of the time, shorter at first, where the surface warms fastest; beside them the nodes of the power
-/// and the moment of the peak. The peak and the last bulk temperature are those of [`of_one_stop`].
+/// Bulk by enthalpy, surface by the slab as in [`of_one_stop`]: the peak and the last bulk temperature are the same.
 ///
 /// # Errors
 /// A temperature beyond the scale of any material.
 pub fn course(
     brake: &Brake,
     heating: &Heating<'_>,
-    count: u32,
+    times: &[Time],
 ) -> Result<Option<Vec<Warmth>>, Faults> {
     let (Some(heated), Some(disc)) = (heated(brake, heating)?, &brake.parts().disc) else {
         return Ok(None);
     };
     let Some(flux) = &heated.flux else { return Ok(None) };
     let specific_heat = disc.material().specific_heat();
-    let whole = flux.energy_until(flux.end());
-    let at = |time: Time| {
-        let entered =
-            if whole.si() > 0.0 { flux.energy_until(time).si() / whole.si() } else { 0.0 };
-        let heat = heated.heat * entered;
-        let bulk = bulk_temperature_after(heating.start, heat, heated.mass, specific_heat)?;
+    let whole = flux.energy_until(flux.end()).si();
+    let at = |&time: &Time| {
+        let share = if whole > 0.0 { flux.energy_until(time).si() / whole } else { 0.0 };
+        let bulk =
+            bulk_temperature_after(heating.start, heated.heat * share, heated.mass, specific_heat)?;
         let surface = heating.start.si() + heated.slab.surface_rise_at(flux, time).si();
         Some(Warmth { time, bulk, surface: ThermodynamicTemperature::from_si(surface) })
     };
-    let peak = heated.slab.surface_peak(flux).0;
-    let moments: Option<Vec<Warmth>> =
-        moments(heating.power, flux.end(), peak, count).into_iter().map(at).collect();
-    moments.map(Some).ok_or_else(too_hot)
-}
-
-/// Times from 0 to `end`, in order: `count` parts that grow evenly, the nodes, and `peak`.
-fn moments(power: &[(f64, f64)], end: Time, peak: Time, count: u32) -> Vec<Time> {
-    let parts = count.max(1);
-    let growing = (0..=parts).map(|part| {
-        let share = f64::from(part) / f64::from(parts);
-        end.si() * share * share
-    });
-    let nodes = power.iter().map(|node| node.0);
-    let mut times: Vec<f64> = growing.chain(nodes).chain([peak.si()]).collect();
-    times.sort_by(f64::total_cmp);
-    times.dedup();
-    times.into_iter().map(Time::from_si).collect()
+    let warmth: Option<Vec<Warmth>> = times.iter().map(at).collect();
+    warmth.map(Some).ok_or_else(too_hot)
 }
 
 fn too_hot() -> Faults {

@@ -156,10 +156,10 @@ pub fn course(
     (case, entry): (usize, usize),
     count: u32,
 ) -> Option<Vec<Warmth>> {
-    let energy = outcome.friction_cases.get(case)?.energies.as_ref()?.fitted.get(entry)?.energy;
+    let load = outcome.friction_cases.get(case)?.energies.as_ref()?.fitted.get(entry)?;
     let fitted = input.stop.fitted.get(entry)?;
     let stop = outcome.stop.friction_cases.get(case)?;
-    Load::new(input, stop, (entry, fitted)).course(energy, count)
+    Load::new(input, stop, (entry, fitted)).course(load, count)
 }
 
 fn energies(
