@@ -4,4 +4,5 @@ pub mod disc_materials;
 pub mod friction_codes;
 pub mod linings;
 mod printed;
+pub mod procedures;
 pub mod units;

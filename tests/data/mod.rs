@@ -1,1 +1,2 @@
 mod disc_materials;
+mod procedures;

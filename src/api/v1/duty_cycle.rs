@@ -19,6 +19,7 @@ use crate::calc::case::duty_cycle::{
     self, CaseOutcome, Course, FailureReason, Input, Outcome, TrackedOutcome,
 };
 use crate::calc::fault::FaultCode;
+use crate::calc::finding::Caution;
 use crate::calc::motion::Coordinate;
 use crate::calc::quantity::{Amount, Dimension};
 
@@ -251,7 +252,11 @@ pub(super) async fn duty_cycle(
 impl DutyCycleRequest {
     fn evaluate(&self, body: &[u8]) -> Result<DutyCycleAnswer, Problem> {
         let (input, defaults) = self.read()?;
-        let outcome = duty_cycle::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
+        let mut outcome =
+            duty_cycle::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
+        if self.events.iter().any(|event| matches!(event, Event::Procedure(_))) {
+            outcome.remarks.caution(Caution::NotTheTest);
+        }
         Ok(self.answer(body, &input, &outcome, defaults))
     }
 
@@ -281,16 +286,23 @@ impl DutyCycleRequest {
                 ambient_temperature
             });
         let points = self.points(&at, &mut reader);
-        let events: Option<Vec<_>> = events.into_iter().collect();
+        let events: Option<Vec<Vec<_>>> = events.into_iter().collect();
         let parts = machine.zip(fitted).zip(events);
-        reader.finish(parts.map(|((machine, fitted), events)| Input {
-            machine,
-            fitted,
-            events,
-            repeats,
-            ambient_temperature,
-            start_temperature,
-            points,
+        reader.finish(parts.map(|((machine, fitted), events)| {
+            Input {
+                machine,
+                fitted,
+                origins: events
+                    .iter()
+                    .enumerate()
+                    .flat_map(|(index, events)| vec![index; events.len()])
+                    .collect(),
+                events: events.into_iter().flatten().collect(),
+                repeats,
+                ambient_temperature,
+                start_temperature,
+                points,
+            }
         }))
     }
 

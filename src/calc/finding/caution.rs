@@ -53,6 +53,9 @@ cautions! {
     /// Heat.
     HotSurfaces = "hot_surfaces",
         "Disc, pads and caliper get hot enough to burn skin, and brake fluid may boil. Guard them, and check the fluid's boiling point and the seals.";
+    /// Rules and test cycles.
+    NotTheTest = "not_the_test",
+        "A calculation does not replace the test that a rule or a test cycle prescribes; its own text decides.";
 }
 
 impl Caution {

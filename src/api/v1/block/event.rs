@@ -11,8 +11,10 @@ use crate::api::measure::{
 };
 use crate::api::parse::{At, Reader};
 use crate::calc::case::duty_cycle::Event as Happening;
+use crate::calc::case::duty_cycle::procedure::{self, needs_max_speed};
 use crate::calc::fault::FaultCode;
 use crate::calc::quantity::Si;
+use crate::data::procedures;
 use crate::{only_word, tagged_union};
 
 tagged_union! {
@@ -22,6 +24,7 @@ tagged_union! {
         "run" => Run(RunEvent),
         "descent" => Descent(DescentEvent),
         "stand" => Stand(StandEvent),
+        "procedure" => Procedure(ProcedureEvent),
     }
 }
 
@@ -34,6 +37,8 @@ only_word! {
     DescentKind = "descent";
     /// Says that the machine stands.
     StandKind = "stand";
+    /// Says that a published test cycle is driven.
+    ProcedureKind = "procedure";
 }
 
 /// A stop, or slowing down to a speed.
@@ -128,18 +133,69 @@ pub struct StandEvent {
     pub time: Time,
 }
 
+/// A published test cycle of vehicles: a row of `GET /v1/procedures`. A calculation does not replace the test.
+#[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
+#[serde(deny_unknown_fields)]
+pub struct ProcedureEvent {
+    /// The kind.
+    pub kind: ProcedureKind,
+    /// A row of `GET /v1/procedures`.
+    #[schema(example = "us_571_135_heating_snubs")]
+    pub id: String,
+    /// Maximum speed of the vehicle; required if the cycle counts from it.
+    #[schema(nullable = false)]
+    pub max_speed: Option<Speed>,
+    /// Delays of each stop.
+    #[schema(nullable = false)]
+    pub response: Option<Response>,
+}
+
 impl Event {
-    /// The event that is meant.
-    pub fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Happening> {
+    /// The events that are meant: one, or those of a test cycle.
+    pub fn read(
+        &self,
+        machine: &Machine,
+        at: &At<'_>,
+        reader: &mut Reader,
+    ) -> Option<Vec<Happening>> {
         match self {
-            Self::Stop(event) => event.read(machine, at, reader),
-            Self::Run(event) => event.read(machine, at, reader),
-            Self::Descent(event) => event.read(machine, at, reader),
+            Self::Stop(event) => event.read(machine, at, reader).map(|event| vec![event]),
+            Self::Run(event) => event.read(machine, at, reader).map(|event| vec![event]),
+            Self::Descent(event) => event.read(machine, at, reader).map(|event| vec![event]),
             Self::Stand(event) => {
                 let time = positive(&at.member("time"), event.time, reader)?;
-                Some(Happening::Stand { time })
+                Some(vec![Happening::Stand { time }])
             }
+            Self::Procedure(event) => event.read(machine, at, reader),
         }
+    }
+}
+
+impl ProcedureEvent {
+    fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Vec<Happening>> {
+        let is_vehicle = matches!(machine, Machine::Vehicle(_));
+        reader.not_applicable(
+            &at.member("kind"),
+            !is_vehicle,
+            "published test cycles belong to vehicles only",
+        );
+        let at_speed = at.member("max_speed");
+        let max_speed = self.max_speed.map(|speed| positive(&at_speed, speed, reader));
+        let delays = Response::read(self.response.as_ref(), &at.member("response"), reader);
+        let row = procedures::find(&self.id);
+        if row.is_none() {
+            let near = procedures::closest(&self.id);
+            let hint = near.map_or(String::new(), |near| format!("; did you mean {near}?"));
+            let detail = format!("is not a row of GET /v1/procedures{hint}");
+            reader.fault(&at.member("id"), FaultCode::UnknownId, detail);
+        }
+        let row = row?;
+        let max_speed = if needs_max_speed(row) {
+            reader.required(&at_speed, max_speed, "is required: the cycle counts from it")?
+        } else {
+            Some(0.0)
+        };
+        Some(procedure::events(row, max_speed?, delays?))
     }
 }
 

@@ -2,6 +2,7 @@
 
 mod braked;
 mod course;
+pub mod procedure;
 mod run;
 mod thermal;
 mod track;
@@ -73,11 +74,27 @@ pub enum Event {
         /// Along the coordinate.
         distance: f64,
     },
+    /// Moving without braking until the next stop is due, counted from the start of the last one.
+    Space {
+        /// When it is due.
+        gap: Gap,
+        /// Speed.
+        speed: f64,
+    },
     /// At rest.
     Stand {
         /// s.
         time: f64,
     },
+}
+
+/// What lies between the starts of two stops.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum Gap {
+    /// s.
+    Time(f64),
+    /// Along the coordinate.
+    Distance(f64),
 }
 
 impl Event {
@@ -86,7 +103,9 @@ impl Event {
     pub const fn speeds(&self) -> (f64, f64) {
         match self {
             Self::Stop { demand, .. } => (demand.initial_speed, demand.final_speed),
-            Self::Run { speed, .. } | Self::Descent { speed, .. } => (*speed, *speed),
+            Self::Run { speed, .. } | Self::Descent { speed, .. } | Self::Space { speed, .. } => {
+                (*speed, *speed)
+            }
             Self::Stand { .. } => (0.0, 0.0),
         }
     }
@@ -101,6 +120,8 @@ pub struct Input {
     pub fitted: Vec<Fitted>,
     /// What happens, in order.
     pub events: Vec<Event>,
+    /// For each of them, the event of the request that it came from.
+    pub origins: Vec<usize>,
     /// How often, 1 or more.
     pub repeats: u32,
     /// Of the air.
@@ -208,7 +229,7 @@ impl Input {
     fn faults(&self) -> Faults {
         let mut faults = Faults::new();
         let holds = (1..=MOST_EVENTS).contains(&self.events.len());
-        faults.require(holds, "events", FaultCode::WrongCount, "must have 1 to 1000 entries");
+        faults.require(holds, "events", FaultCode::WrongCount, "must come to 1 to 1000 events");
         let repeats = usize::try_from(self.repeats).unwrap_or(usize::MAX);
         faults.require(repeats >= 1, "repeats", FaultCode::OutOfRange, "must be 1 or more");
         let holds = repeats.saturating_mul(self.events.len()) <= MOST_EVENTS_IN_ALL;
@@ -227,6 +248,12 @@ impl Input {
         faults
     }
 
+    /// The event of the request that an event came from.
+    #[must_use]
+    pub fn origin(&self, index: usize) -> usize {
+        self.origins.get(index).copied().unwrap_or(index)
+    }
+
     /// Speed may jump up between events, but it falls only in a stop.
     fn continuity_faults(&self, faults: &mut Faults) {
         let ends = self.events.iter().map(|event| event.speeds().1);
@@ -240,7 +267,7 @@ impl Input {
         for (index, (event, before)) in self.events.iter().zip(before).enumerate() {
             let start = event.speeds().0;
             let holds = start >= before * (1.0 - 1e-12);
-            let member = format!("events/{index}");
+            let member = format!("events/{}", self.origin(index));
             let detail = "starts slower than the event before ended: speed falls only in a stop";
             faults.require(holds, &member, FaultCode::SpeedNotContinuous, detail);
         }

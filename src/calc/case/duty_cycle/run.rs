@@ -3,7 +3,7 @@
 use super::braked::{Activity, Braking, Hot, Step};
 use super::course::{Course, Moment};
 use super::track::Tracked;
-use super::{CaseOutcome, Event, Failure, FailureReason, Input, LongestStop, Place};
+use super::{CaseOutcome, Event, Failure, FailureReason, Gap, Input, LongestStop, Place};
 use crate::calc::case::stopping;
 use crate::calc::fitted::Pressed;
 use crate::calc::friction::FrictionCase;
@@ -25,7 +25,7 @@ pub(super) fn run(
     let cold = run.cold_stops()?;
     'duty: for repeat in 1..=input.repeats {
         for (event_index, (event, cold)) in input.events.iter().zip(&cold).enumerate() {
-            run.place = Place { event_index, repeat };
+            run.place = Place { event_index: input.origin(event_index), repeat };
             if let Err(reason) = run.event(event, cold.as_ref()) {
                 run.first_failure = Some(Failure { place: run.place, reason });
                 break 'duty;
@@ -44,6 +44,8 @@ pub(super) struct Run<'a> {
     pub(super) place: Place,
     pub(super) time: f64,
     speed: f64,
+    /// Distance and time of the last stop.
+    last_stop: (f64, f64),
     longest_stop: Option<LongestStop>,
     first_failure: Option<Failure>,
     course: Option<Course>,
@@ -66,6 +68,7 @@ impl<'a> Run<'a> {
             place: Place { event_index: 0, repeat: 1 },
             time: 0.0,
             speed: 0.0,
+            last_stop: (0.0, 0.0),
             longest_stop: None,
             first_failure: None,
             course: input.points.map(Course::new),
@@ -82,7 +85,10 @@ impl<'a> Run<'a> {
                 let cold = vec![1.0; self.tracked.len()];
                 stop(&self.forces(situation, &cold), demand).map(Some)
             }
-            Event::Run { .. } | Event::Descent { .. } | Event::Stand { .. } => Some(None),
+            Event::Run { .. }
+            | Event::Descent { .. }
+            | Event::Space { .. }
+            | Event::Stand { .. } => Some(None),
         };
         self.input.events.iter().map(cold).collect()
     }
@@ -140,6 +146,7 @@ impl<'a> Run<'a> {
                 let braking = Braking { situation, demand, cold };
                 let (distance, time) = braking.follow(self)?;
                 self.speed = demand.final_speed;
+                self.last_stop = (distance, time);
                 if self.longest_stop.is_none_or(|longest| distance > longest.distance) {
                     self.longest_stop = Some(LongestStop { place: self.place, distance, time });
                 }
@@ -147,11 +154,22 @@ impl<'a> Run<'a> {
             }
             (Event::Stop { .. }, None) => Err(FailureReason::FinalSpeedNotReached),
             (Event::Run { speed, time }, _) => self.idle(*time, *speed),
+            (Event::Space { gap, speed }, _) => self.idle(self.until_due(gap, *speed), *speed),
             (Event::Stand { time }, _) => self.idle(*time, 0.0),
             (Event::Descent { situation, speed, distance }, _) => {
                 self.descent(situation, *speed, *distance)
             }
         }
+    }
+
+    /// How long until the next stop is due; 0 if the last one took longer.
+    fn until_due(&self, gap: &Gap, speed: f64) -> f64 {
+        let (distance, time) = self.last_stop;
+        match gap {
+            Gap::Time(interval) => interval - time,
+            Gap::Distance(spacing) => (spacing - distance) / speed,
+        }
+        .max(0.0)
     }
 
     /// Time without braking, at a speed.
