@@ -284,6 +284,71 @@ async fn the_highest_temperatures_are_those_of_the_answer() {
     assert!((shown - highest).abs() <= 0.05, "{shown} for {highest}");
 }
 
+/// The vehicle, stopped again and again by linings that fade.
+fn duty() -> Value {
+    let mut body = vehicle();
+    let members = body.as_object_mut().unwrap();
+    members.remove("initial_speed");
+    members.remove("response");
+    for entry in 0..2 {
+        body["fitted"][entry]["brake"]["lining"]["fade"] = json!([
+            {"temperature": {"value": 60, "unit": "degC"}, "factor": 1.0},
+            {"temperature": {"value": 200, "unit": "degC"}, "factor": 0.6},
+        ]);
+    }
+    let speed = json!({"value": 20, "unit": "m/s"});
+    body["events"] = json!([
+        {"kind": "run", "speed": speed, "time": {"value": 10, "unit": "s"}},
+        {"kind": "stop", "initial_speed": speed},
+    ]);
+    body["repeats"] = json!(3);
+    body
+}
+
+#[tokio::test]
+async fn a_duty_is_drawn_with_its_crossings_and_its_friction() {
+    let text = chart("/v1/duty-cycle", &duty()).await;
+    let document = Document::parse(&text).unwrap();
+    // Two entries; bulk, surface and friction; three cases.
+    assert_eq!(curves(&document).len(), 18);
+    let answer = asked("/v1/duty-cycle", "application/json", &duty(), 200).await.json();
+    assert!(answer["results"]["friction_cases"][0].get("trace").is_none());
+    let cases = answer["results"]["friction_cases"].as_array().unwrap();
+    let bulk_first = |case: &Value| {
+        let crossings = case["fitted"][0]["crossings"].as_array().unwrap();
+        let bulk = crossings.iter().find(|crossing| crossing["check"] == "disc_bulk_temperature");
+        bulk.unwrap()["time"]["value"].as_f64().unwrap()
+    };
+    let first = cases.iter().map(bulk_first).fold(f64::INFINITY, f64::min);
+    let words = words(&document);
+    let note =
+        words.iter().find_map(|word| word.strip_prefix("Bulk limit first passed at ")).unwrap();
+    let shown: f64 = note.split(' ').next().unwrap().parse().unwrap();
+    assert!((shown - first).abs() <= 0.005, "{note} for {first}");
+    for wanted in ["bulk limit passed", "Entry 0, front: friction over that of the data sheet"] {
+        assert!(words.iter().any(|word| word == wanted), "{wanted} is missing in {words:?}");
+    }
+    assert_eq!(text, chart("/v1/duty-cycle", &duty()).await);
+}
+
+#[tokio::test]
+async fn a_duty_that_fails_says_where() {
+    let mut body = duty();
+    body["events"] = json!([
+        {"kind": "stand", "time": {"value": 5, "unit": "s"}},
+        {"kind": "stop", "initial_speed": {"value": 20, "unit": "m/s"}, "grade": {"value": -95, "unit": "%"}},
+    ]);
+    let text = chart("/v1/duty-cycle", &body).await;
+    let document = Document::parse(&text).unwrap();
+    let said = words(&document).join(" ");
+    assert!(
+        said.contains("low friction: ends in event 1, repeat 1: the final speed is not reached"),
+        "{said}"
+    );
+    body["events"] = json!([]);
+    asked("/v1/duty-cycle", SVG, &body, 422).await;
+}
+
 #[tokio::test]
 async fn hostile_words_stay_words() {
     let mut body = vehicle();

@@ -84,6 +84,31 @@ pub struct Panel {
     pub message: Option<String>,
 }
 
+impl Panel {
+    /// A panel with nothing in it.
+    #[must_use]
+    pub fn empty() -> Self {
+        Self {
+            heading: String::new(),
+            notes: Vec::new(),
+            x_label: String::new(),
+            x_end: 1.0,
+            from_zero: false,
+            series: Vec::new(),
+            limits: Vec::new(),
+            bands: Vec::new(),
+            marks: Vec::new(),
+            message: None,
+        }
+    }
+
+    /// A message in the place of a panel.
+    #[must_use]
+    pub fn saying(message: impl Into<String>) -> Self {
+        Self { message: Some(message.into()), ..Self::empty() }
+    }
+}
+
 /// A line.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Series {

@@ -60,6 +60,16 @@ pub fn case_key(case: FrictionCase, says: &str) -> Key {
     Key { style, is_marked: true, label: format!("{} friction{says}", case.as_str()) }
 }
 
+/// The lines of the key that tell surface and bulk apart.
+#[must_use]
+pub fn temperature_keys() -> [Key; 2] {
+    [(Weight::Heavy, "surface"), (Weight::Light, "bulk")].map(|(weight, label)| Key {
+        style: Style { tone: Tone::Nominal, weight },
+        is_marked: false,
+        label: label.to_owned(),
+    })
+}
+
 /// What is asked of a stop, in words.
 #[must_use]
 pub fn stop_in_words(figures: Figures, machine: &Machine, demand: &Demand) -> String {

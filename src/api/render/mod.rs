@@ -3,6 +3,7 @@
 mod captions;
 pub mod chart;
 mod draw;
+pub mod duty_cycle;
 pub mod frame;
 mod ink;
 mod panel;
@@ -37,6 +38,12 @@ pub(super) fn pictured(routes: OpenApiRouter) -> OpenApiRouter {
 }
 
 impl Negotiated {
+    /// Whether the client prefers a chart.
+    #[must_use]
+    pub fn is_chart(self) -> bool {
+        self.0 == SVG
+    }
+
     /// The answer in the form that the client prefers: as JSON, or the chart that `picture` makes of it.
     ///
     /// The answer is written as JSON in either case: what JSON refuses, a chart must not show.
@@ -45,7 +52,7 @@ impl Negotiated {
         answer: T,
         picture: impl FnOnce(&T) -> Chart,
     ) -> Response<Body> {
-        let chart = (self.0 == SVG).then(|| picture(&answer));
+        let chart = self.is_chart().then(|| picture(&answer));
         let json = Answer(answer).into_response();
         match chart {
             Some(chart) if json.status().is_success() => chart.into_response(),

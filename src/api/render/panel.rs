@@ -6,7 +6,7 @@ use plotters::style::Color;
 use plotters::style::text_anchor::{HPos, VPos};
 
 use super::captions::{self, Caption};
-use super::chart::{Panel, Weight};
+use super::chart::{Limit, Panel, Weight};
 use super::draw::{Area, LETTERS, LINE, MARGIN, WIDTH, line_style, text_style};
 use super::ink::Ink;
 use super::scale::Scale;
@@ -19,6 +19,8 @@ const PLOT: i32 = 1850;
 const BELOW: i32 = 240;
 /// Room to the right, for the half of the last number.
 const RIGHT: i32 = MARGIN + 150;
+/// Room above, for the half of the highest number.
+const ABOVE: i32 = 130;
 /// Between axis and numbers.
 const TICK: i32 = 30;
 /// A limit is drawn if that leaves the curves at least this part of the height.
@@ -97,7 +99,7 @@ impl<'a> PanelLayout<'a> {
 
     fn above(&self) -> i32 {
         let lines = i32::try_from(self.beyond.len()).unwrap_or(0);
-        captions::rows(&self.captions) * LINE + lines * LINE + 60
+        captions::rows(&self.captions) * LINE + lines * LINE + ABOVE
     }
 
     /// What is said in the place of curves.
@@ -128,7 +130,8 @@ impl<'a> PanelLayout<'a> {
         self.draw_captions(root, plot_top)?;
         self.draw_beyond(root, top)?;
         self.draw_limits(root, plot_top)?;
-        self.draw_curves(root, plot_top)
+        self.draw_curves(root, plot_top)?;
+        self.draw_names_of_limits(root, plot_top)
     }
 
     fn at(&self, (x, y): (f64, f64), plot_top: i32) -> (i32, i32) {
@@ -208,25 +211,53 @@ impl<'a> PanelLayout<'a> {
         Ok(())
     }
 
-    fn draw_limits(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
+    /// The limits within the panel, highest first.
+    fn limits(&self) -> Vec<&Limit> {
         let (low, high) = self.y.ends();
         let mut limits: Vec<_> = self.panel.limits.iter().collect();
         limits.retain(|limit| (low..=high).contains(&limit.value));
         limits.sort_by(|one, other| other.value.total_cmp(&one.value));
-        // The lowest place that a name took; the next one goes below it.
-        let mut taken = plot_top - 2 * LINE;
-        for limit in limits {
+        limits
+    }
+
+    fn draw_limits(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
+        for limit in self.limits() {
             let (left, height) = self.at((0.0, limit.value), plot_top);
             let ends = vec![(left, height), (WIDTH - RIGHT, height)];
             root.draw(&PathElement::new(ends, line_style(Ink::Limit, 14)))?;
+        }
+        Ok(())
+    }
+
+    /// After the curves: words lie on top of them.
+    fn draw_names_of_limits(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
+        // The lowest place that a name took; the next one goes below it.
+        let mut taken = plot_top - 2 * LINE;
+        for limit in self.limits() {
+            let height = self.at((0.0, limit.value), plot_top).1;
             let side = if height - LINE >= plot_top { -1 } else { 1 };
             let middle = (height + side * LINE / 2).max(taken + LINE);
             taken = middle;
-            let style = text_style(LETTERS, Ink::Limit, false, (HPos::Right, VPos::Center));
             let text = format!("{} {}", words::plain(&limit.label), words::number(limit.value));
-            root.draw(&Text::new(text, (WIDTH - RIGHT - 40, middle), style))?;
+            let width = words::width(&text, LETTERS);
+            let (left, right) = (self.left + LINE / 4, WIDTH - RIGHT - LINE / 4);
+            let is_crowded = |from| self.points_in((from, from + width), middle, plot_top);
+            let (at, anchor) = if is_crowded(right - width) > is_crowded(left) {
+                (left, HPos::Left)
+            } else {
+                (right, HPos::Right)
+            };
+            let style = text_style(LETTERS, Ink::Limit, false, (anchor, VPos::Center));
+            root.draw(&Text::new(text, (at, middle), style))?;
         }
         Ok(())
+    }
+
+    /// How many points of curves lie where a line of text would.
+    fn points_in(&self, (from, to): (i32, i32), middle: i32, plot_top: i32) -> usize {
+        let points = self.panel.series.iter().flat_map(|series| &series.points);
+        let places = points.map(|point| self.at(*point, plot_top));
+        places.filter(|(x, y)| (from..=to).contains(x) && (y - middle).abs() < LINE * 2 / 3).count()
     }
 
     fn draw_curves(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {

@@ -69,13 +69,7 @@ impl View<'_> {
                 if case.energies.is_some() { "" } else { ": the final speed is not reached" };
             key.push(frame::case_key(case.friction_case, says));
         }
-        let weights = [(Weight::Heavy, "surface"), (Weight::Light, "bulk")];
-        let plain = |(weight, label): (Weight, &str)| Key {
-            style: Style { tone: Tone::Nominal, weight },
-            is_marked: false,
-            label: label.to_owned(),
-        };
-        key.extend(weights.map(plain));
+        key.extend(frame::temperature_keys());
         key
     }
 
@@ -119,7 +113,6 @@ impl View<'_> {
             notes: self.notes(index, curves),
             x_label: self.figures.axis("Time from the start", Dimension::Time),
             x_end: self.seconds(longest),
-            from_zero: false,
             // The surface is drawn last: it lies above the bulk.
             series: [Weight::Light, Weight::Heavy]
                 .into_iter()
@@ -127,8 +120,7 @@ impl View<'_> {
                 .collect(),
             limits: frame::temperature_limits(self.figures, brake),
             bands,
-            marks: Vec::new(),
-            message: None,
+            ..Panel::empty()
         }
     }
 
@@ -190,17 +182,6 @@ impl View<'_> {
         } else {
             "No temperatures: the final speed is not reached."
         };
-        Panel {
-            heading: String::new(),
-            notes: Vec::new(),
-            x_label: String::new(),
-            x_end: 1.0,
-            from_zero: false,
-            series: Vec::new(),
-            limits: Vec::new(),
-            bands: Vec::new(),
-            marks: Vec::new(),
-            message: Some(message.to_owned()),
-        }
+        Panel::saying(message)
     }
 }

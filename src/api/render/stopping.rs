@@ -85,6 +85,9 @@ impl<'a> View<'a> {
     }
 
     fn panels(&self, cases: &[(&CaseOutcome, &StoppingCase)]) -> Vec<Panel> {
+        if let Some(message) = self.message(cases) {
+            return vec![Panel::saying(message)];
+        }
         let seconds = |time| self.figures.number(Dimension::Time, time);
         let paths: Vec<&Path> = self.reached.iter().map(|case| &case.stop.path).collect();
         let mut bands = frame::phases(&paths);
@@ -92,22 +95,15 @@ impl<'a> View<'a> {
             (band.from, band.to) = (seconds(band.from), seconds(band.to));
         }
         let longest = paths.iter().fold(0.0_f64, |longest, path| longest.max(path.end().time));
-        let message = self.message(cases);
         let panel = |heading: &str, dimension, value: fn(&Point) -> f64| Panel {
             heading: self.figures.axis(heading, dimension),
-            notes: Vec::new(),
             x_label: self.figures.axis("Time from the start", Dimension::Time),
             x_end: seconds(longest),
             from_zero: true,
             series: self.reached.iter().map(|case| self.series(case, dimension, value)).collect(),
-            limits: Vec::new(),
             bands: bands.clone(),
-            marks: Vec::new(),
-            message: message.clone(),
+            ..Panel::empty()
         };
-        if message.is_some() {
-            return vec![Panel { heading: String::new(), ..panel("", self.speed, |_| 0.0) }];
-        }
         let speed = panel("Speed", self.speed, |point| point.speed);
         let way = frame::capital(self.way_name());
         vec![speed, panel(&way, self.way, |point| point.distance)]

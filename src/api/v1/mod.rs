@@ -16,10 +16,10 @@ use super::render::pictured;
 pub(super) fn routes() -> OpenApiRouter {
     let pictures = OpenApiRouter::default()
         .routes(routes!(stopping::stopping))
-        .routes(routes!(stop_energy::stop_energy));
+        .routes(routes!(stop_energy::stop_energy))
+        .routes(routes!(duty_cycle::duty_cycle));
     OpenApiRouter::default()
         .routes(routes!(pad_capacity::pad_capacity))
         .routes(routes!(actuation_force::actuation_force))
         .merge(pictured(pictures))
-        .routes(routes!(duty_cycle::duty_cycle))
 }
