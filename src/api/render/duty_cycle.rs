@@ -4,7 +4,9 @@ use super::chart::{Chart, Key, Mark, Panel, Series, Style, Tone, Weight};
 use super::frame::{self, Figures};
 use crate::api::v1::duty_cycle::{DutyCycleAnswer, DutyCycleCase, DutyFailure, FirstFailure};
 use crate::calc::brake::Brake;
-use crate::calc::case::duty_cycle::{CaseOutcome, Input, Moment, Outcome, Sample, TrackedOutcome};
+use crate::calc::case::duty_cycle::{
+    CaseOutcome, Course, Input, Moment, Outcome, Sample, TrackedOutcome,
+};
 use crate::calc::finding::CheckCode;
 use crate::calc::friction::FrictionCase;
 use crate::calc::quantity::Dimension;

@@ -6,6 +6,7 @@ mod draw;
 pub mod duty_cycle;
 pub mod frame;
 mod ink;
+mod limits;
 mod panel;
 mod scale;
 pub mod stop_energy;

@@ -6,7 +6,7 @@ use plotters::style::Color;
 use plotters::style::text_anchor::{HPos, VPos};
 
 use super::captions::{self, Caption};
-use super::chart::{Limit, Panel, Weight};
+use super::chart::{Panel, Weight};
 use super::draw::{Area, LETTERS, LINE, MARGIN, WIDTH, line_style, text_style};
 use super::ink::Ink;
 use super::scale::Scale;
@@ -18,7 +18,7 @@ const PLOT: i32 = 1850;
 /// Room for the numbers below the axis.
 const BELOW: i32 = 240;
 /// Room to the right, for the half of the last number.
-const RIGHT: i32 = MARGIN + 150;
+pub(super) const RIGHT: i32 = MARGIN + 150;
 /// Room above, for the half of the highest number.
 const ABOVE: i32 = 130;
 /// Between axis and numbers.
@@ -30,9 +30,9 @@ const LEAST_SHARE: f64 = 0.3;
 pub(super) struct PanelLayout<'a> {
     pub(super) panel: &'a Panel,
     x: Scale,
-    y: Scale,
+    pub(super) y: Scale,
     /// Where the axis upwards stands; the same for all panels of a sheet.
-    left: i32,
+    pub(super) left: i32,
     /// Whether the words below the axis stand here: below the last of several panels.
     is_last: bool,
     captions: Vec<Caption>,
@@ -134,7 +134,8 @@ impl<'a> PanelLayout<'a> {
         self.draw_names_of_limits(root, plot_top)
     }
 
-    fn at(&self, (x, y): (f64, f64), plot_top: i32) -> (i32, i32) {
+    /// Where a point lies on the sheet.
+    pub(super) fn at(&self, (x, y): (f64, f64), plot_top: i32) -> (i32, i32) {
         let across = self.x.place(x, (self.left, WIDTH - RIGHT));
         (across, self.y.place(y, (plot_top + PLOT, plot_top)))
     }
@@ -209,55 +210,6 @@ impl<'a> PanelLayout<'a> {
             middle += LINE;
         }
         Ok(())
-    }
-
-    /// The limits within the panel, highest first.
-    fn limits(&self) -> Vec<&Limit> {
-        let (low, high) = self.y.ends();
-        let mut limits: Vec<_> = self.panel.limits.iter().collect();
-        limits.retain(|limit| (low..=high).contains(&limit.value));
-        limits.sort_by(|one, other| other.value.total_cmp(&one.value));
-        limits
-    }
-
-    fn draw_limits(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
-        for limit in self.limits() {
-            let (left, height) = self.at((0.0, limit.value), plot_top);
-            let ends = vec![(left, height), (WIDTH - RIGHT, height)];
-            root.draw(&PathElement::new(ends, line_style(Ink::Limit, 14)))?;
-        }
-        Ok(())
-    }
-
-    /// After the curves: words lie on top of them.
-    fn draw_names_of_limits(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
-        // The lowest place that a name took; the next one goes below it.
-        let mut taken = plot_top - 2 * LINE;
-        for limit in self.limits() {
-            let height = self.at((0.0, limit.value), plot_top).1;
-            let side = if height - LINE >= plot_top { -1 } else { 1 };
-            let middle = (height + side * LINE / 2).max(taken + LINE);
-            taken = middle;
-            let text = format!("{} {}", words::plain(&limit.label), words::number(limit.value));
-            let width = words::width(&text, LETTERS);
-            let (left, right) = (self.left + LINE / 4, WIDTH - RIGHT - LINE / 4);
-            let is_crowded = |from| self.points_in((from, from + width), middle, plot_top);
-            let (at, anchor) = if is_crowded(right - width) > is_crowded(left) {
-                (left, HPos::Left)
-            } else {
-                (right, HPos::Right)
-            };
-            let style = text_style(LETTERS, Ink::Limit, false, (anchor, VPos::Center));
-            root.draw(&Text::new(text, (at, middle), style))?;
-        }
-        Ok(())
-    }
-
-    /// How many points of curves lie where a line of text would.
-    fn points_in(&self, (from, to): (i32, i32), middle: i32, plot_top: i32) -> usize {
-        let points = self.panel.series.iter().flat_map(|series| &series.points);
-        let places = points.map(|point| self.at(*point, plot_top));
-        places.filter(|(x, y)| (from..=to).contains(x) && (y - middle).abs() < LINE * 2 / 3).count()
     }
 
     fn draw_curves(&self, root: &Area<'_>, plot_top: i32) -> Result<(), DrawingError> {
