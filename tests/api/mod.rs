@@ -5,3 +5,5 @@ mod charts;
 mod frame;
 mod openapi;
 mod problems;
+mod properties;
+mod v1;

@@ -278,7 +278,8 @@ impl DutyCycleRequest {
     fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {
         let (at, mut reader) = (At::ROOT, Reader::new());
         let machine = self.machine.read(&at.member("machine"), &mut reader);
-        let fitted = Fitted::read_all(&self.fitted, &at.member("fitted"), &mut reader);
+        let is_vehicle = matches!(self.machine, Machine::Vehicle(_));
+        let fitted = Fitted::read_all(&self.fitted, is_vehicle, &at.member("fitted"), &mut reader);
         let at_events = at.member("events");
         let events = self.events.iter().enumerate();
         let events: Vec<_> = events

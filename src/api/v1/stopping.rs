@@ -81,6 +81,7 @@ pub struct StoppingRequest {
 #[serde(deny_unknown_fields)]
 pub struct TraceRequest {
     /// Points, 2 to 2000, equally spaced in time, both ends included.
+    #[serde(deserialize_with = "crate::api::count::required")]
     pub points: u32,
 }
 
