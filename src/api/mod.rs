@@ -18,6 +18,7 @@ pub mod pointer;
 pub mod problem;
 mod problem_kind;
 pub mod record;
+pub mod render;
 pub mod request_id;
 pub mod shape;
 pub mod tagged;

@@ -1,6 +1,7 @@
 //! The service seen through its front door.
 
 mod accept;
+mod charts;
 mod frame;
 mod openapi;
 mod problems;

@@ -1,5 +1,7 @@
 //! `POST /v1/stopping`: how a machine stops.
 
+use axum::body::Body;
+use axum::http::Response as Reply;
 use serde::{Deserialize, Serialize};
 use utoipa::ToSchema;
 
@@ -7,7 +9,8 @@ use super::block::delays::Response;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
 use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
-use crate::api::extract::{Answer, Json};
+use crate::api::accept::Negotiated;
+use crate::api::extract::Json;
 use crate::api::measure::{
     Acceleration, Angle, AngularAcceleration, Finite, Force, Grade, Length, ReportUnits,
     RotationalSpeed, Speed, Time, Torque,
@@ -15,6 +18,8 @@ use crate::api::measure::{
 use crate::api::parse::{At, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, CautionText, FrictionCase, Record, Recorded, Warning};
+use crate::api::render::frame::Figures;
+use crate::api::render::stopping::chart;
 use crate::calc::case::stopping::{self, CaseOutcome, Input, Outcome};
 use crate::calc::fault::FaultCode;
 use crate::calc::motion::{Coordinate, Ending, LimitedBy as Limit, Phase as Part, PhaseTotals};
@@ -385,14 +390,19 @@ pub struct TraceUnits {
 /// too.
 #[utoipa::path(
     post, path = "/stopping", tag = "Calculations", operation_id = "stopping",
-    responses((status = OK, description = "How the machine stops.", body = StoppingAnswer)),
+    responses((
+        status = OK,
+        description = "How the machine stops; as a picture: speed and distance over time, with the phases.",
+        content((StoppingAnswer = "application/json"), (String = "image/svg+xml")),
+    )),
 )]
 pub(super) async fn stopping(
+    form: Negotiated,
     request: Json<StoppingRequest>,
-) -> Result<Answer<StoppingAnswer>, Problem> {
-    let (input, defaults) = request.value.read()?;
-    let outcome = stopping::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
-    Ok(Answer(request.value.answer(&request.body, &input, &outcome, defaults)))
+) -> Result<Reply<Body>, Problem> {
+    let (input, outcome, answer) = request.value.evaluate(&request.body)?;
+    let figures = Figures(request.value.report_units.unwrap_or_default());
+    Ok(form.render(answer, |answer| chart(figures, &input, &outcome, answer)))
 }
 
 impl StoppingRequest {
@@ -415,6 +425,13 @@ impl StoppingRequest {
                 direction: self.direction,
             },
         }
+    }
+
+    fn evaluate(&self, body: &[u8]) -> Result<(Input, Outcome, StoppingAnswer), Problem> {
+        let (input, defaults) = self.read()?;
+        let outcome = stopping::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
+        let answer = self.answer(body, &input, &outcome, defaults);
+        Ok((input, outcome, answer))
     }
 
     fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {

@@ -4,7 +4,7 @@ use super::FailureReason;
 use super::run::Run;
 use super::track::Tracked;
 use crate::calc::machine::Situation;
-use crate::calc::motion::{Demand, Forces, Phase, Stop};
+use crate::calc::motion::{Demand, Forces, Phase, Point, Stop};
 
 /// Steps of a stop, growing from the first torque on.
 const STEPS: u32 = 40;
@@ -109,7 +109,15 @@ impl Braking<'_> {
     fn until_torque(&self, run: &mut Run<'_>) -> Result<Option<Motion>, FailureReason> {
         let path = &self.cold.path;
         let has_torque = path.phases().iter().any(|phase| phase.phase >= Phase::BuildUp);
-        let begin = if has_torque { path.first_torque() } else { path.end() };
+        let start = Point { time: 0.0, speed: self.demand.initial_speed, distance: 0.0 };
+        let begin = if path.phases().is_empty() {
+            // Without delays, brakes too weak when cold leave no course at all: nothing is over yet.
+            start
+        } else if has_torque {
+            path.first_torque()
+        } else {
+            path.end()
+        };
         run.idle(begin.time, self.demand.initial_speed)?;
         let is_over = !has_torque && begin.speed <= self.demand.final_speed;
         Ok((!is_over).then_some(Motion {

@@ -7,7 +7,7 @@ mod run;
 mod thermal;
 mod track;
 
-pub use course::{Course, Sample};
+pub use course::{Course, Moment, Sample};
 pub use track::{Crossing, TrackedOutcome};
 
 use std::collections::BTreeSet;
