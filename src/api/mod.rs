@@ -5,6 +5,7 @@ mod access_log;
 mod docs;
 pub mod error_code;
 pub mod etag;
+mod examples;
 pub mod extract;
 pub mod health;
 pub mod heavy;

@@ -2,3 +2,4 @@
 
 pub(crate) mod client;
 pub(crate) mod close;
+pub(crate) mod json;
