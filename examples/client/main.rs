@@ -5,7 +5,7 @@
 //! ```
 //!
 //! A file is one of `examples/requests`, or a request alone with its endpoint's name as folder.
-#![allow(clippy::print_stdout, reason = "printing is what this program is for")]
+#![expect(clippy::print_stdout, reason = "printing is what this program is for")]
 
 use std::error::Error;
 use std::fs;
@@ -60,7 +60,8 @@ fn rows(path: &str, part: &Value) {
         println!("{path:<55} {value:>14.4} {unit}");
         return;
     }
-    let below = |name: &str| if path.is_empty() { name.to_owned() } else { format!("{path}.{name}") };
+    let below =
+        |name: &str| if path.is_empty() { name.to_owned() } else { format!("{path}.{name}") };
     match part {
         Value::Object(members) => {
             members.iter().for_each(|(name, member)| rows(&below(name), member));
@@ -72,8 +73,12 @@ fn rows(path: &str, part: &Value) {
             }
         }
         Value::Array(items) => println!("{path:<55} {:>14} points", items.len()),
-        Value::Number(number) => println!("{path:<55} {:>14.4}", number.as_f64().unwrap_or(f64::NAN)),
-        Value::Null | Value::Bool(_) | Value::String(_) => println!("{path:<55} {:>14}", text(part)),
+        Value::Number(number) => {
+            println!("{path:<55} {:>14.4}", number.as_f64().unwrap_or(f64::NAN))
+        }
+        Value::Null | Value::Bool(_) | Value::String(_) => {
+            println!("{path:<55} {:>14}", text(part))
+        }
     }
 }
 

@@ -12,8 +12,8 @@ use utoipa::openapi::{
 };
 use utoipa::{PartialSchema, ToSchema};
 
-use super::{examples, openapi_30};
 use super::problem::{ErrorItem, PROBLEM_JSON, Problem};
+use super::{examples, openapi_30};
 
 const DESCRIPTION: &str = "\
 Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, what \

@@ -2,7 +2,8 @@
 //!
 //! The expected answers are own output, pinned: they show users what comes back and guard it against unnoticed
 //! change. What proves the numbers right is in `tests/published` and `tests/calc`. After a wanted change,
-//! `UPDATE_GOLDEN=1 cargo test --test main examples` writes the new answers; read the difference before it lands.
+//! `UPDATE_GOLDEN=1 cargo test` writes the new answers. Run it twice, because the description holds some of them,
+//! and read the difference before it lands.
 
 use std::collections::BTreeSet;
 use std::fs;
@@ -62,12 +63,17 @@ async fn every_example_is_answered_as_it_says() {
     let app = TestApp::new();
     for mut example in examples() {
         let answer = example.send(&app).await;
-        if update {
-            example.content["response"] = answer;
-            fs::write(&example.path, readable(&example.content)).unwrap();
-        } else {
+        let text = fs::read_to_string(&example.path).unwrap();
+        if !update {
             let path = example.path.display();
             assert_eq!(example.content["response"], answer, "{path}: is the change wanted?");
+            assert!(text == readable(&example.content), "{path} is not laid out for reading");
+            continue;
+        }
+        example.content["response"] = answer;
+        let updated = readable(&example.content);
+        if updated != text {
+            fs::write(&example.path, updated).unwrap();
         }
     }
 }
@@ -99,15 +105,6 @@ fn every_calculation_has_examples_of_success_and_of_faults_in_both_unit_systems(
             warnings.into_iter().flatten().any(|warning| warning["severity"] == "exceeded")
         };
         assert!(here().any(exceeded), "{endpoint}: no example of a brake that is too weak");
-    }
-}
-
-#[test]
-fn the_example_files_are_laid_out_for_reading() {
-    for example in examples() {
-        let text = fs::read_to_string(&example.path).unwrap();
-        let path = example.path.display();
-        assert!(text == readable(&example.content), "{path}: run UPDATE_GOLDEN=1 cargo test");
     }
 }
 

@@ -30,10 +30,8 @@ async fn the_request_of_the_readme_gets_the_answer_of_the_readme() {
     let answer = readable(&TestApp::new().post(path, request, 200).await);
     let shown = between(&readme, "```json\n", "```");
     if std::env::vars_os().any(|(name, _)| name == "UPDATE_GOLDEN") {
-        let updated = readme.replace(
-            &format!("```json\n{shown}```"),
-            &format!("```json\n{answer}```"),
-        );
+        let updated =
+            readme.replace(&format!("```json\n{shown}```"), &format!("```json\n{answer}```"));
         fs::write(Path::new(env!("CARGO_MANIFEST_DIR")).join("README.md"), updated).unwrap();
     } else {
         assert_eq!(shown, answer);

@@ -25,7 +25,9 @@ fn write(part: &Value, indent: usize, used: usize, text: &mut String) {
             let members = members.iter().map(|(name, member)| (Some(name), member));
             block(members, ['{', '}'], indent, text);
         }
-        Value::Array(items) => block(items.iter().map(|item| (None, item)), ['[', ']'], indent, text),
+        Value::Array(items) => {
+            block(items.iter().map(|item| (None, item)), ['[', ']'], indent, text)
+        }
         Value::Null | Value::Bool(_) | Value::Number(_) | Value::String(_) => *text += &line,
     }
 }
@@ -57,9 +59,9 @@ fn is_empty(part: &Value) -> bool {
 fn one_line(part: &Value) -> String {
     match part {
         Value::Object(members) => {
-            let members = members
-                .iter()
-                .map(|(name, member)| format!("{}: {}", Value::from(name.as_str()), one_line(member)));
+            let members = members.iter().map(|(name, member)| {
+                format!("{}: {}", Value::from(name.as_str()), one_line(member))
+            });
             format!("{{{}}}", members.collect::<Vec<_>>().join(", "))
         }
         Value::Array(items) => {
