@@ -6,6 +6,7 @@ pub mod count;
 mod docs;
 pub mod error_code;
 pub mod etag;
+mod examples;
 pub mod extract;
 pub mod health;
 pub mod heavy;

@@ -13,8 +13,8 @@ use utoipa::openapi::{
 use utoipa::{PartialSchema, ToSchema};
 
 use super::error_code::ErrorCode;
-use super::openapi_30;
 use super::problem::{ErrorItem, PROBLEM_JSON, Problem};
+use super::{examples, openapi_30};
 
 const DESCRIPTION: &str = "\
 Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, what \
@@ -97,7 +97,8 @@ static DOCUMENT: LazyLock<(String, String)> = LazyLock::new(|| {
     let mut document = super::described_routes().split_for_parts().1;
     add_failures(&mut document);
     // Made of strings, lists and maps only: serialising cannot fail.
-    let value = serde_json::to_value(document).unwrap_or_default();
+    let mut value = serde_json::to_value(document).unwrap_or_default();
+    examples::insert(&mut value);
     (pretty(&value), pretty(&openapi_30::from_31(value)))
 });
 

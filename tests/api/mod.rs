@@ -2,8 +2,10 @@
 
 mod accept;
 mod charts;
+mod examples;
 mod frame;
 mod openapi;
 mod problems;
 mod properties;
+mod readme;
 mod v1;

@@ -227,6 +227,17 @@ fn each_difference_between_the_versions_is_taken_back() {
     }
 }
 
+/// Inside an `allOf` generators drop the tag of a union.
+#[test]
+fn the_older_description_refers_to_unions_plainly() {
+    let pad = |text: &str| {
+        let document: Value = serde_json::from_str(text).unwrap();
+        document["components"]["schemas"]["Brake"]["properties"]["pad"].clone()
+    };
+    assert!(pad(openapi_json())["description"].is_string());
+    assert_eq!(pad(openapi_30_json()), json!({"$ref": "#/components/schemas/Pad"}));
+}
+
 /// A request of the tests only.
 #[derive(Debug, Deserialize, ToSchema)]
 #[expect(dead_code, reason = "only its shape matters here")]
