@@ -12,6 +12,7 @@ use utoipa::openapi::{
 };
 use utoipa::{PartialSchema, ToSchema};
 
+use super::error_code::ErrorCode;
 use super::openapi_30;
 use super::problem::{ErrorItem, PROBLEM_JSON, Problem};
 
@@ -45,7 +46,8 @@ pub(super) fn base() -> OpenApi {
         ));
     let components = ComponentsBuilder::new()
         .schema(Problem::name(), Problem::schema())
-        .schema(ErrorItem::name(), ErrorItem::schema());
+        .schema(ErrorItem::name(), ErrorItem::schema())
+        .schema(ErrorCode::name(), ErrorCode::schema());
     OpenApiBuilder::new()
         .info(info.build())
         .servers(Some([ServerBuilder::new().url("/").description(Some("This service")).build()]))
