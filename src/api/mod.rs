@@ -6,6 +6,7 @@ mod docs;
 pub mod error_code;
 pub mod etag;
 pub mod extract;
+pub mod finite;
 pub mod health;
 pub mod heavy;
 pub mod layers;

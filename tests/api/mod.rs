@@ -2,5 +2,7 @@
 
 mod accept;
 mod frame;
+mod measure;
 mod openapi;
+mod parse;
 mod problems;
