@@ -8,6 +8,7 @@ pub mod error_code;
 pub mod etag;
 mod examples;
 pub mod extract;
+pub mod finite;
 pub mod health;
 pub mod heavy;
 pub mod layers;

@@ -3,6 +3,7 @@
 pub mod disc_materials;
 pub mod friction_codes;
 pub mod linings;
+pub mod magnitude;
 mod printed;
 pub mod procedures;
 pub mod units;

@@ -1,117 +1,180 @@
-//! The units of the border: plain symbols, UCUM codes and Recommendation 20 codes, with exact factors.
+//! The unit table: what a quantity may be given in, and what answers use.
+//!
+//! The rows stand in `units.tsv`. Units exist only at the border; inside, every quantity is a
+//! number of coherent SI units.
 
 use std::sync::LazyLock;
 
+use crate::calc::method::Provenance;
 use crate::calc::quantity::Dimension;
 
-/// The table as text.
-pub const TEXT: &str = include_str!("units.tsv");
+/// The rows as text.
+const TEXT: &str = include_str!("units.tsv");
 
-/// How a unit's numbers become coherent SI.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub enum Conversion {
-    /// SI = value × factor.
-    Linear(f64),
-    /// SI = (value + offset) × factor: a temperature scale.
-    Scale {
-        /// Kelvins per degree.
-        factor: f64,
-        /// Degrees from absolute zero to the zero of the scale.
-        offset: f64,
-    },
-    /// SI = atan(value/100): rise over run in percent.
-    RiseOverRun,
+/// A converted number is tried with nine decimals.
+const DECIMALS: f64 = 1e9;
+
+/// The relative rounding of the two operations of a conversion.
+const CONVERSION_ROUNDING: f64 = 2.0 * f64::EPSILON;
+
+static TABLE: LazyLock<Vec<Unit>> = LazyLock::new(|| table().unwrap_or_default());
+
+/// The unit of a pure ratio, and of a dimension without rows.
+static ONE: Unit = Unit {
+    dimension: Dimension::Ratio,
+    symbol: "1",
+    is_si: true,
+    is_us: true,
+    ucum: Some("1"),
+    recommendation_20: Some("C62"),
+    scale: Scale::Linear { factor: 1.0 },
+    exact: "1",
+    variant: "ONE",
+    codes: Provenance::Seen,
+    name: "one",
+};
+
+/// Which units an answer uses.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum System {
+    /// International units.
+    Si,
+    /// United States customary units.
+    Us,
 }
 
-/// A unit of one dimension.
-#[derive(Debug, Clone, PartialEq)]
+/// How a number of units becomes a number of coherent SI units.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum Scale {
+    /// si = value × factor.
+    Linear {
+        /// Coherent SI units per unit.
+        factor: f64,
+    },
+    /// si = (value + offset) × numerator / denominator: an absolute temperature.
+    Shifted {
+        /// What lies between the zeros of the scales, in this unit.
+        offset: f64,
+        /// Of the exact ratio.
+        numerator: f64,
+        /// Of the exact ratio.
+        denominator: f64,
+    },
+    /// si = atan(value × factor): a slope as rise over run.
+    RiseOverRun {
+        /// Tangent per unit.
+        factor: f64,
+    },
+}
+
+/// One unit of one dimension.
+#[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Unit {
     /// What it measures.
     pub dimension: Dimension,
-    /// The plain ASCII symbol.
+    /// The plain symbol: what descriptions list and answers use.
     pub symbol: &'static str,
     /// Whether SI reports may use it.
     pub is_si: bool,
     /// Whether US reports may use it.
     pub is_us: bool,
-    /// UCUM code.
+    /// The UCUM code, if there is one.
     pub ucum: Option<&'static str>,
-    /// UN/ECE Recommendation 20 common code.
+    /// The UN/ECE Recommendation 20 common code, if there is one.
     pub recommendation_20: Option<&'static str>,
-    /// To coherent SI.
-    pub conversion: Conversion,
-    /// The factor as a chain of exact constants.
+    /// The conversion.
+    pub scale: Scale,
+    /// The exact factor, as an expression of exact constants.
     pub exact: &'static str,
-    /// In words.
-    pub name: &'static str,
     /// Name for generated code.
     pub variant: &'static str,
+    /// How the codes were found.
+    pub codes: Provenance,
+    /// The name in words.
+    pub name: &'static str,
 }
 
 impl Unit {
-    /// The number of coherent SI units in `value` of this unit.
+    /// The number of coherent SI units of `value` units.
     #[must_use]
     pub fn to_si(&self, value: f64) -> f64 {
-        match self.conversion {
-            Conversion::Linear(factor) => value * factor,
-            // Dividing by 9/5 keeps round Fahrenheit values round; for other scales the factor is 1.
-            Conversion::Scale { factor, offset } => (value + offset) / degrees_per_kelvin(factor),
-            Conversion::RiseOverRun => libm::atan(value / 100.0),
+        match self.scale {
+            Scale::Linear { factor } => value * factor,
+            // Multiplied before divided: 5/9 has no finite binary form.
+            Scale::Shifted { offset, numerator, denominator } => {
+                (value + offset) * numerator / denominator
+            }
+            Scale::RiseOverRun { factor } => libm::atan(value * factor),
         }
     }
 
-    /// The number of this unit in `si` coherent SI units.
+    /// The number of these units of `si` coherent SI units.
     #[must_use]
     pub fn of_si(&self, si: f64) -> f64 {
-        match self.conversion {
-            Conversion::Linear(factor) => si / factor,
-            Conversion::Scale { factor, offset } => tidy(si * degrees_per_kelvin(factor) - offset),
-            Conversion::RiseOverRun => 100.0 * libm::tan(si),
-        }
+        let value = match self.scale {
+            Scale::Linear { factor } => si / factor,
+            Scale::Shifted { offset, numerator, denominator } => {
+                si * denominator / numerator - offset
+            }
+            Scale::RiseOverRun { factor } => libm::tan(si) / factor,
+        };
+        self.rounded(value, si)
     }
 
-    /// Whether `text` names this unit by its symbol or one of its codes.
+    /// Whether `text` is the plain symbol or one of the codes.
     #[must_use]
     pub fn is_named(&self, text: &str) -> bool {
         self.symbol == text || self.ucum == Some(text) || self.recommendation_20 == Some(text)
     }
+
+    /// Coherent SI units per unit; of the tangent for a slope in percent.
+    #[must_use]
+    pub fn factor(&self) -> f64 {
+        match self.scale {
+            Scale::Linear { factor } | Scale::RiseOverRun { factor } => factor,
+            Scale::Shifted { numerator, denominator, .. } => numerator / denominator,
+        }
+    }
+
+    /// What an absolute temperature adds before scaling.
+    #[must_use]
+    pub const fn offset(&self) -> Option<f64> {
+        match self.scale {
+            Scale::Shifted { offset, .. } => Some(offset),
+            Scale::Linear { .. } | Scale::RiseOverRun { .. } => None,
+        }
+    }
+
+    const fn belongs_to(&self, system: System) -> bool {
+        match system {
+            System::Si => self.is_si,
+            System::Us => self.is_us,
+        }
+    }
+
+    /// The rounder of two numbers that differ by no more than a conversion leaves, so that 300 degC
+    /// and 12 in do not come back as 300.00000000000006 degC and 304.79999999999995 mm.
+    fn rounded(&self, value: f64, si: f64) -> f64 {
+        let round = (value * DECIMALS).round() / DECIMALS;
+        let is_same = (self.to_si(round) - si).abs() <= CONVERSION_ROUNDING * si.abs();
+        if is_same { round } else { value }
+    }
 }
-
-fn degrees_per_kelvin(factor: f64) -> f64 {
-    if factor < 1.0 { 1.8 } else { 1.0 }
-}
-
-/// Takes out the digits that the difference of two large numbers leaves behind: 1e-10 of a degree.
-fn tidy(degrees: f64) -> f64 {
-    let rounded = (degrees * 1e10).round() / 1e10;
-    if rounded.is_finite() { rounded } else { degrees }
-}
-
-static UNITS: LazyLock<Vec<Unit>> = LazyLock::new(|| parse(TEXT).unwrap_or_default());
-
-/// Where each dimension's units lie in the table; they stand together.
-static RANGES: LazyLock<Vec<(usize, usize)>> = LazyLock::new(|| {
-    let range = |&dimension: &Dimension| {
-        let start = UNITS.iter().position(|unit| unit.dimension == dimension).unwrap_or_default();
-        (start, UNITS.iter().filter(|unit| unit.dimension == dimension).count())
-    };
-    Dimension::ALL.iter().map(range).collect()
-});
 
 /// Every unit, in the order of the table.
 #[must_use]
 pub fn all() -> &'static [Unit] {
-    &UNITS
+    &TABLE
 }
 
-/// The units of a dimension, in the order of the table.
+/// The units of a dimension, in the order of the table. Travel is given in units of length.
 #[must_use]
 pub fn of(dimension: Dimension) -> &'static [Unit] {
-    let &(start, count) = RANGES.get(dimension as usize).unwrap_or(&(0, 0));
-    UNITS.get(start..start + count).unwrap_or_default()
+    let rows = if dimension == Dimension::Travel { Dimension::Length } else { dimension };
+    RANGES.get(rows as usize).and_then(|&(start, end)| TABLE.get(start..end)).unwrap_or_default()
 }
 
-/// The unit of a dimension that `text` names by symbol, UCUM or Recommendation 20 code.
+/// The unit of a dimension that `text` stands for: plain symbol, UCUM or Recommendation 20 code.
 #[must_use]
 pub fn find(dimension: Dimension, text: &str) -> Option<&'static Unit> {
     let units = of(dimension);
@@ -120,6 +183,27 @@ pub fn find(dimension: Dimension, text: &str) -> Option<&'static Unit> {
         .find(|unit| unit.symbol == text)
         .or_else(|| units.iter().find(|unit| unit.is_named(text)))
 }
+
+/// The unit in which answers of a system give a dimension.
+#[must_use]
+pub fn reported(dimension: Dimension, system: System) -> &'static Unit {
+    let travel = match (dimension, system) {
+        (Dimension::Travel, System::Si) => find(Dimension::Length, "m"),
+        (Dimension::Travel, System::Us) => find(Dimension::Length, "ft"),
+        (_, System::Si | System::Us) => None,
+    };
+    travel.or_else(|| of(dimension).iter().find(|unit| unit.belongs_to(system))).unwrap_or(&ONE)
+}
+
+/// First row and the row after the last of every dimension, in the order of the dimensions.
+static RANGES: LazyLock<Vec<(usize, usize)>> = LazyLock::new(|| {
+    let range = |dimension: &Dimension| {
+        let is_row = |unit: &Unit| unit.dimension == *dimension;
+        let start = TABLE.iter().position(is_row).unwrap_or(0);
+        (start, start + TABLE.iter().filter(|unit| is_row(unit)).count())
+    };
+    Dimension::ALL.iter().map(range).collect()
+});
 
 /// Every further code of the units whose plain symbols are `symbols`, for a check that takes them all.
 #[must_use]
@@ -135,46 +219,64 @@ pub fn further_codes(symbols: &[&str]) -> Vec<String> {
 /// Reads the table.
 ///
 /// # Errors
-/// The first line that does not follow its heading.
-pub fn parse(text: &'static str) -> Result<Vec<Unit>, String> {
-    let lines = text.lines().filter(|line| !line.starts_with('#') && !line.trim().is_empty());
-    lines.skip(1).map(|line| unit(line).ok_or_else(|| format!("not a unit: {line}"))).collect()
+/// The first row that cannot be read. A test proves that there is none.
+pub fn table() -> Result<Vec<Unit>, &'static str> {
+    let rows = TEXT.lines().filter(|line| !line.starts_with('#') && !line.is_empty());
+    rows.map(|row| unit_of_row(row).ok_or(row)).collect()
 }
 
-fn unit(line: &'static str) -> Option<Unit> {
-    let mut cells = line.split('\t');
-    let dimension = cells.next()?;
-    let dimension = *Dimension::ALL.iter().find(|known| known.id() == dimension)?;
-    let symbol = cells.next()?;
-    let systems = cells.next()?;
-    let [ucum, recommendation_20] =
-        [cells.next()?, cells.next()?].map(|code| (code != "-").then_some(code));
-    let factor: f64 = cells.next()?.parse().ok()?;
-    let offset: f64 = cells.next()?.parse().ok()?;
-    let exact = cells.next()?;
-    let conversion = match (exact, dimension) {
-        ("grade", _) => Conversion::RiseOverRun,
-        (_, Dimension::Temperature) => Conversion::Scale { factor, offset },
-        _ => Conversion::Linear(factor),
+fn unit_of_row(row: &'static str) -> Option<Unit> {
+    let cells: Vec<&'static str> = row.split('\t').collect();
+    let &[
+        dimension,
+        symbol,
+        system,
+        ucum,
+        recommendation_20,
+        factor,
+        exact,
+        offset,
+        variant,
+        codes,
+        name,
+    ] = cells.as_slice()
+    else {
+        return None;
     };
-    let (is_si, is_us) = match systems {
-        "si" => (true, false),
-        "us" => (false, true),
-        "both" => (true, true),
+    let dimension = Dimension::ALL.iter().copied().find(|known| known.id() == dimension)?;
+    let factor = factor.parse().ok()?;
+    let scale = match (offset, symbol) {
+        ("-", "%") => Scale::RiseOverRun { factor },
+        ("-", _) => Scale::Linear { factor },
+        _ => shifted(offset.parse().ok()?, exact)?,
+    };
+    matches!(system, "si" | "us" | "both").then_some(())?;
+    let codes = match codes {
+        "seen" => Provenance::Seen,
+        "memory" => Provenance::Memory,
         _ => return None,
     };
-    let (name, variant) = (cells.next()?, cells.next()?);
-    cells.next().is_none().then_some(())?;
     Some(Unit {
         dimension,
         symbol,
-        is_si,
-        is_us,
-        ucum,
-        recommendation_20,
-        conversion,
+        is_si: matches!(system, "si" | "both"),
+        is_us: matches!(system, "us" | "both"),
+        ucum: code(ucum),
+        recommendation_20: code(recommendation_20),
+        scale,
         exact,
-        name,
         variant,
+        codes,
+        name,
     })
+}
+
+fn shifted(offset: f64, exact: &str) -> Option<Scale> {
+    let (numerator, denominator) = exact.split_once('/').unwrap_or((exact, "1"));
+    let (numerator, denominator) = (numerator.parse().ok()?, denominator.parse().ok()?);
+    Some(Scale::Shifted { offset, numerator, denominator })
+}
+
+fn code(cell: &'static str) -> Option<&'static str> {
+    (cell != "-").then_some(cell)
 }

@@ -1,2 +1,3 @@
 mod disc_materials;
 mod procedures;
+mod units;

@@ -19,13 +19,13 @@ impl Figures {
     /// The symbol of the unit.
     #[must_use]
     pub fn unit(self, dimension: Dimension) -> &'static str {
-        self.0.unit_of(dimension).map_or("1", |unit| unit.symbol)
+        self.0.unit_of(dimension).symbol
     }
 
     /// The number of units.
     #[must_use]
     pub fn number(self, dimension: Dimension, si: f64) -> f64 {
-        self.0.unit_of(dimension).map_or(si, |unit| unit.of_si(si))
+        self.0.unit_of(dimension).of_si(si)
     }
 
     /// The number in words, with its unit.

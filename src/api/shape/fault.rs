@@ -6,8 +6,10 @@ use jsonschema::paths::LocationSegment;
 use serde_json::Value;
 
 use super::schema::PUBLISHED;
+use crate::api::error_code::ShapeCode;
 use crate::api::pointer;
 use crate::api::problem::{ErrorItem, MOST_ERRORS, Problem};
+use crate::calc::fault::FaultCode;
 
 /// Names longer than this are neither repeated in an answer nor compared with the known ones.
 const LONGEST_NAME: usize = 64; // bytes
@@ -84,7 +86,7 @@ fn unknown_member(violation: &ValidationError<'_>, schema: &Value, name: &str) -
     };
     ErrorItem {
         pointer: pointer_below(violation, Some(name)),
-        code: "unknown_member",
+        code: ShapeCode::UnknownMember.as_str(),
         detail: format!("`{}` is not a member of this object; {advice}", shortened(name)),
     }
 }
@@ -109,27 +111,38 @@ fn fault(violation: &ValidationError<'_>, schema: &Value) -> ErrorItem {
         let name = property.as_str().unwrap_or_default();
         return ErrorItem {
             pointer: pointer_below(violation, Some(name)),
-            code: "missing_member",
+            code: ShapeCode::MissingMember.as_str(),
             detail: format!("`{name}` is required"),
         };
     }
     let value: &Value = violation.instance();
     let (code, detail) = match violation.kind().keyword() {
-        _ if value.is_null() => {
-            ("null_not_allowed", "null is not a value; leave the member out".to_owned())
+        _ if value.is_null() => (
+            ShapeCode::NullNotAllowed.as_str(),
+            "null is not a value; leave the member out".to_owned(),
+        ),
+        "type" => {
+            (ShapeCode::WrongType.as_str(), wrong_type(parent(violation, schema), limit, value))
         }
-        "type" => ("wrong_type", wrong_type(parent(violation, schema), limit, value)),
         "enum" | "const" => wrong_choice(violation, schema, limit),
-        "minItems" => ("wrong_count", format!("must have at least {limit} items")),
-        "maxItems" => ("wrong_count", format!("must have at most {limit} items")),
-        "minimum" => ("out_of_range", format!("must be at least {limit}")),
-        "maximum" => ("out_of_range", format!("must be at most {limit}")),
-        "exclusiveMinimum" => ("out_of_range", format!("must be above {limit}")),
-        "exclusiveMaximum" => ("out_of_range", format!("must be below {limit}")),
-        "minLength" => ("out_of_range", format!("must have at least {limit} characters")),
-        "maxLength" => ("out_of_range", format!("must have at most {limit} characters")),
-        "oneOf" | "anyOf" => ("wrong_type", "fits none of the forms allowed here".to_owned()),
-        keyword => ("invalid_value", format!("breaks the rule `{keyword}` of the schema")),
+        "minItems" => (FaultCode::WrongCount.as_str(), format!("must have at least {limit} items")),
+        "maxItems" => (FaultCode::WrongCount.as_str(), format!("must have at most {limit} items")),
+        "minimum" => (FaultCode::OutOfRange.as_str(), format!("must be at least {limit}")),
+        "maximum" => (FaultCode::OutOfRange.as_str(), format!("must be at most {limit}")),
+        "exclusiveMinimum" => (FaultCode::OutOfRange.as_str(), format!("must be above {limit}")),
+        "exclusiveMaximum" => (FaultCode::OutOfRange.as_str(), format!("must be below {limit}")),
+        "minLength" => {
+            (FaultCode::OutOfRange.as_str(), format!("must have at least {limit} characters"))
+        }
+        "maxLength" => {
+            (FaultCode::OutOfRange.as_str(), format!("must have at most {limit} characters"))
+        }
+        "oneOf" | "anyOf" => {
+            (ShapeCode::WrongType.as_str(), "fits none of the forms allowed here".to_owned())
+        }
+        keyword => {
+            (ShapeCode::InvalidValue.as_str(), format!("breaks the rule `{keyword}` of the schema"))
+        }
     };
     ErrorItem { pointer: pointer_below(violation, None), code, detail }
 }
@@ -157,11 +170,18 @@ fn wrong_choice(
     let value: &Value = violation.instance();
     let Some(text) = value.as_str() else {
         let listed = texts.join(", ");
-        return ("wrong_type", format!("must be one of {listed}, not {}", name_of(value)));
+        return (
+            ShapeCode::WrongType.as_str(),
+            format!("must be one of {listed}, not {}", name_of(value)),
+        );
     };
     let is_unit = matches!(violation.instance_path().segments().last(),
         Some(LocationSegment::Property(name)) if name == "unit");
-    let (code, noun) = if is_unit { ("unknown_unit", "unit") } else { ("unknown_value", "value") };
+    let (code, noun) = if is_unit {
+        (ShapeCode::UnknownUnit.as_str(), "unit")
+    } else {
+        (ShapeCode::UnknownValue.as_str(), "value")
+    };
     let advice = match nearest(text, &texts) {
         Some(meant) if texts.len() > 1 => format!("did you mean `{meant}`? "),
         _ => String::new(),

@@ -430,8 +430,8 @@ impl DutyTrace {
             Coordinate::Angle => Dimension::RotationalSpeed,
         };
         let unit = |dimension| units.unit_of(dimension);
-        let symbol = |dimension| unit(dimension).map_or("1", |unit| unit.symbol);
-        let number = |dimension, si: f64| Finite(unit(dimension).map_or(si, |unit| unit.of_si(si)));
+        let symbol = |dimension| unit(dimension).symbol;
+        let number = |dimension, si: f64| Finite(unit(dimension).of_si(si));
         let moments = course.moments();
         let entries = moments.first().map_or(0, |moment| moment.fitted.len());
         let samples =

@@ -697,9 +697,8 @@ impl Report<'_> {
         let points = case.stop.path.trace(count);
         let column = |dimension, value: fn(&crate::calc::motion::Point) -> f64| {
             let unit = self.units.unit_of(dimension);
-            let in_unit = |si: f64| unit.map_or(si, |unit| unit.of_si(si));
-            let numbers = points.iter().map(|point| Finite(in_unit(value(point)))).collect();
-            (numbers, unit.map_or("1", |unit| unit.symbol))
+            let numbers = points.iter().map(|point| Finite(unit.of_si(value(point)))).collect();
+            (numbers, unit.symbol)
         };
         let (time, time_unit) = column(Dimension::Time, |point| point.time);
         let (speed, speed_unit) = column(speed, |point| point.speed);
