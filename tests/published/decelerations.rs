@@ -128,3 +128,22 @@ async fn the_rear_wheel_lifts_at_the_published_ratio() {
     let codes = warnings.as_array().unwrap().iter().map(|warning| warning["code"].clone());
     assert!(codes.into_iter().any(|code| code == "rear_wheel_lift"));
 }
+
+/// By hand, no source: 1000 kg raised at 0.5 m/s, drive efficiency 0.8, 0.5 s without torque, then 25 kN at the load.
+/// Gravity over 0.8 stops it after 0.0407886 s; gravity times 0.8 drives it back, for 0.4592114 s to 3.60266 m/s;
+/// the brake less that drive, 17.15468 m/s², takes another 0.2100103 s. In all 0.6692217 s and 1.2054891 m.
+#[tokio::test]
+async fn losses_of_the_drive_slow_a_load_both_ways() {
+    let request = json!({
+        "machine": {"kind": "hoist", "load_mass": q(1000.0, "kg"), "drum_radius": q(0.25, "m"), "gear_ratio": 25, "efficiency": 0.8},
+        "fitted": [{"torque": q(250.0, "N.m")}], "direction": "raising", "initial_speed": q(0.5, "m/s"),
+        "response": {"dead_time": q(0.5, "s")},
+    });
+    let (found, _) = stop(&request).await;
+    assert_close(si(&found["total_time"]), 0.5 * 0.8 / GRAVITY, 1e-12);
+    assert_eq!(found["runs_back"], true);
+    let back = &found["run_back"];
+    assert_within(si(&back["peak_speed"]), 3.602_66, 5e-6);
+    assert_within(si(&back["time"]), 0.669_221_7, 5e-8);
+    assert_within(si(&back["distance"]), 1.205_489_1, 5e-8);
+}

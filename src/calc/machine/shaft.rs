@@ -51,6 +51,7 @@ impl Shaft {
             rotating: 0.0,
             translating: 0.0,
             outside: self.0.driving_torque.si(),
+            reversal: 1.0,
             resistance: 0.0,
             drag: 0.0,
             tires: None,

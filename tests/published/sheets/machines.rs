@@ -73,6 +73,7 @@ fn sliding(mass: f64, drag: f64) -> Reduced {
         outside: 0.0,
         resistance: 0.0,
         drag,
+        reversal: 1.0,
         tires: None,
     }
 }
