@@ -1,4 +1,5 @@
 mod cooling;
+mod duty;
 mod heat;
 mod linings;
 mod motion;
