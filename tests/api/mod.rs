@@ -4,3 +4,4 @@ mod accept;
 mod frame;
 mod openapi;
 mod problems;
+mod v1;

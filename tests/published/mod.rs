@@ -4,3 +4,4 @@ mod heat;
 mod linings;
 mod motion;
 mod pads;
+mod repeated;
