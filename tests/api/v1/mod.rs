@@ -3,9 +3,13 @@
 mod actuation_force;
 pub(crate) mod common;
 mod conformity;
+mod duty_cycle;
+mod duty_faults;
+mod duty_requests;
 mod faults;
 mod pad_capacity;
 mod record;
+mod repeated_stops;
 mod stop_energy;
 mod stopping;
 mod stopping_faults;

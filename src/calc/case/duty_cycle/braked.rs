@@ -16,12 +16,21 @@ const MOST_STEPS: u32 = 4000;
 pub(super) struct Step {
     /// s.
     pub(super) duration: f64,
-    /// Along the coordinate, at the end of the step (at its start while braking).
+    /// Along the coordinate, at the start of the step.
     pub(super) speed: f64,
+    /// Along the coordinate, at its end.
+    pub(super) end_speed: f64,
     /// Along the coordinate, for the cooling.
     pub(super) cooled_at: f64,
     /// What the brakes do.
     pub(super) activity: Activity,
+}
+
+impl Step {
+    /// A step at one speed.
+    pub(super) const fn steady(duration: f64, speed: f64, activity: Activity) -> Self {
+        Self { duration, speed, end_speed: speed, cooled_at: speed, activity }
+    }
 }
 
 /// What the brakes do in a step.
@@ -70,9 +79,14 @@ impl Braking<'_> {
         for (time, power) in refined(&nodes, braking_time) {
             let now = powers(power);
             if let Some((last, then)) = before.replace((time, now.clone())) {
-                let speed = path.at(begin.time + last).speed;
-                let step =
-                    Step { duration: time - last, speed, cooled_at, activity: Activity::Stopping };
+                let speed_at = |since: f64| path.at(begin.time + since).speed;
+                let step = Step {
+                    duration: time - last,
+                    speed: speed_at(last),
+                    end_speed: speed_at(time),
+                    cooled_at,
+                    activity: Activity::Stopping,
+                };
                 run.step(&step, &then.into_iter().zip(now).collect::<Vec<_>>())?;
             }
         }
@@ -181,10 +195,14 @@ impl Braking<'_> {
             .zip(&last)
             .map(|(from, to)| (from * motion.speed, to * speed))
             .collect();
-        run.step(
-            &Step { duration: time, speed: motion.speed, cooled_at, activity: Activity::Stopping },
-            &powers,
-        )?;
+        let step = Step {
+            duration: time,
+            speed: motion.speed,
+            end_speed: speed,
+            cooled_at,
+            activity: Activity::Stopping,
+        };
+        run.step(&step, &powers)?;
         motion.way += time * (motion.speed - time * (0.5 * start.deceleration + rise * time / 6.0));
         motion.time += time;
         motion.speed = speed;
@@ -221,7 +239,7 @@ impl Hot {
         Self::at(run, situation, &factors)
     }
 
-    fn at(run: &Run<'_>, situation: &Situation, factors: &[f64]) -> Self {
+    pub(super) fn at(run: &Run<'_>, situation: &Situation, factors: &[f64]) -> Self {
         Self { forces: run.forces(situation, factors), shares: run.shares(factors) }
     }
 }
@@ -283,17 +301,16 @@ impl BuildUp {
     }
 }
 
-/// When a speed has fallen by `gap`, within `duration`, under a deceleration that changes linearly.
+/// When a speed has fallen by `gap`, 0 or more, within `duration`, under a deceleration that changes linearly.
 fn time_to(gap: f64, deceleration: f64, rise: f64, duration: f64) -> Option<f64> {
-    if duration * (deceleration + 0.5 * rise * duration) < gap {
-        return None;
-    }
-    let mut time = duration;
-    for _ in 0..4 {
-        let mean = deceleration + 0.5 * rise * time;
-        time = (gap / mean).clamp(0.0, duration);
-    }
-    Some(time)
+    // The first root of rise/2·t² + deceleration·t − gap = 0, in the form that does not cancel.
+    let root = (deceleration * deceleration + 2.0 * rise * gap).sqrt();
+    let time = if deceleration >= 0.0 {
+        2.0 * gap / (deceleration + root)
+    } else {
+        (root - deceleration) / rise
+    };
+    (time >= 0.0 && time <= duration).then_some(time)
 }
 
 /// Power over time with nodes close enough for the slab: dense after the first torque, never wider than a fortieth.

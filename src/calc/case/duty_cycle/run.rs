@@ -182,10 +182,7 @@ impl<'a> Run<'a> {
         }
         let none = vec![(0.0, 0.0); self.tracked.len()];
         self.graded(duration, IDLE_STEPS, |run, step| {
-            run.step(
-                &Step { duration: step, speed, cooled_at: speed, activity: Activity::Idle },
-                &none,
-            )
+            run.step(&Step::steady(step, speed, Activity::Idle), &none)
         })
     }
 
@@ -213,20 +210,31 @@ impl<'a> Run<'a> {
         }
         self.begin(&hot, driving * distance);
         self.graded(duration, DESCENT_STEPS, |run, step| {
-            let hot = Hot::new(run, situation);
-            if hot.forces.at(1.0, speed).total_ground() < driving {
-                return Err(FailureReason::SpeedNotHeld);
-            }
-            let fraction = hot.forces.fraction_for(0.0, speed).unwrap_or(1.0);
-            let brake = hot.forces.at(fraction, speed).brake;
-            let power = |shares: &[f64; 2]| (brake[0] * shares[0] + brake[1] * shares[1]) * speed;
-            let powers: Vec<(f64, f64)> =
-                hot.shares.iter().map(power).map(|power| (power, power)).collect();
-            run.step(
-                &Step { duration: step, speed, cooled_at: speed, activity: Activity::Holding },
-                &powers,
-            )
-        })
+            run.held(situation, (speed, driving), step)
+        })?;
+        // What is left at the end must still hold the speed.
+        Self::holding(&Hot::new(self, situation), speed, driving).map(|_| ())
+    }
+
+    /// One step at a held speed, by Heun's method: what each brake does shifts as their friction changes.
+    fn held(&mut self, situation: &Situation, (speed, driving): (f64, f64), duration: f64) -> Done {
+        let start = Self::holding(&Hot::new(self, situation), speed, driving)?;
+        let steady: Vec<(f64, f64)> = start.iter().map(|power| (*power, *power)).collect();
+        let factors = self.factors_after(duration, &steady, speed)?;
+        let end = Self::holding(&Hot::at(self, situation, &factors), speed, driving)?;
+        let powers: Vec<(f64, f64)> = start.into_iter().zip(end).collect();
+        self.step(&Step::steady(duration, speed, Activity::Holding), &powers)
+    }
+
+    /// Power of one brake of each entry while they hold a speed against a driving force.
+    fn holding(hot: &Hot, speed: f64, driving: f64) -> Result<Vec<f64>, FailureReason> {
+        if hot.forces.at(1.0, speed).total_ground() < driving {
+            return Err(FailureReason::SpeedNotHeld);
+        }
+        let fraction = hot.forces.fraction_for(0.0, speed).unwrap_or(1.0);
+        let brake = hot.forces.at(fraction, speed).brake;
+        let power = |shares: &[f64; 2]| (brake[0] * shares[0] + brake[1] * shares[1]) * speed;
+        Ok(hot.shares.iter().map(power).collect())
     }
 
     /// Starts a braking in which all brakes together will take up about `energy`.
@@ -251,7 +259,7 @@ impl<'a> Run<'a> {
             tracked.advance(step.duration, *power, step.cooled_at).ok_or(FailureReason::TooHot)?;
             tracked.look((place, time), power.0.max(power.1), step);
         }
-        self.record(step.speed);
+        self.record(step.end_speed);
         Ok(())
     }
 
