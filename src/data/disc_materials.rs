@@ -4,6 +4,7 @@ use std::sync::LazyLock;
 
 use serde::Deserialize;
 
+use super::nearest::nearest;
 use crate::calc::disc::{CatalogOrigin, DiscMaterial};
 use crate::calc::fault::Faults;
 use crate::calc::heat::property::{Conductivity, Curve, Piece, Pole, SpecificHeat};
@@ -19,8 +20,18 @@ static ROWS: LazyLock<Vec<DiscMaterialRow>> = LazyLock::new(|| parse(TEXT).unwra
 const MEMBERS: [&str; 5] =
     ["density", "specific_heat", "conductivity", "emissivity", "max_temperature"];
 
-/// How alike an identifier must be to be proposed instead of an unknown one, from 0 to 1.
-const ALIKE: f64 = 0.75;
+/// How a source prints a property over temperature.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum CurveForm {
+    /// One value for every temperature.
+    Constant,
+    /// Points, straight between them, constant outside.
+    Table,
+    /// Mean values from a base temperature.
+    MeanValues,
+    /// Formulas by ranges.
+    Formulas,
+}
 
 /// One material of the catalog.
 #[derive(Debug, Clone, PartialEq)]
@@ -35,6 +46,10 @@ pub struct DiscMaterialRow {
     pub provenance: Provenance,
     /// What to know about them.
     pub note: String,
+    /// How the specific heat is printed.
+    pub specific_heat_form: CurveForm,
+    /// How the conductivity is printed.
+    pub conductivity_form: CurveForm,
     /// The material itself.
     pub material: DiscMaterial,
 }
@@ -54,11 +69,7 @@ pub fn find(id: &str) -> Option<&'static DiscMaterialRow> {
 /// The identifier most like `id`, if one is much like it.
 #[must_use]
 pub fn closest(id: &str) -> Option<&'static str> {
-    let alike = |row: &'static DiscMaterialRow| {
-        (strsim::normalized_damerau_levenshtein(id, &row.id), row.id.as_str())
-    };
-    let candidates = all().iter().map(alike).filter(|(alike, _)| *alike >= ALIKE);
-    candidates.max_by(|one, other| one.0.total_cmp(&other.0)).map(|(_, id)| id)
+    nearest(id, all().iter().map(|row| row.id.as_str()))
 }
 
 /// Reads a table of disc materials.
@@ -136,14 +147,18 @@ impl Row {
     }
 
     fn checked(self) -> Result<DiscMaterialRow, String> {
-        let provenance = match self.provenance.as_str() {
-            "seen" => Provenance::Seen,
-            "memory" => Provenance::Memory,
-            other => return Err(format!("unknown provenance {other}")),
-        };
-        let material = self.material(provenance)?;
-        let Self { id, name, source, note, .. } = self;
-        Ok(DiscMaterialRow { id, name, source, provenance, note, material })
+        let provenance = Provenance::named(&self.provenance)
+            .ok_or_else(|| format!("unknown provenance {}", self.provenance))?;
+        Ok(DiscMaterialRow {
+            material: self.material(provenance)?,
+            specific_heat_form: self.specific_heat.form(),
+            conductivity_form: self.conductivity.form(),
+            id: self.id,
+            name: self.name,
+            source: self.source,
+            provenance,
+            note: self.note,
+        })
     }
 
     fn material(&self, provenance: Provenance) -> Result<DiscMaterial, String> {
@@ -200,6 +215,16 @@ impl Printed {
 }
 
 impl PrintedCurve {
+    /// The form of a curve that could be read.
+    const fn form(&self) -> CurveForm {
+        match (&self.table, &self.mean, &self.pieces) {
+            (Some(_), ..) => CurveForm::Table,
+            (_, Some(_), _) => CurveForm::MeanValues,
+            (.., Some(_)) => CurveForm::Formulas,
+            (None, None, None) => CurveForm::Constant,
+        }
+    }
+
     fn read(&self, unit: &str) -> Result<Curve, String> {
         same_unit(&self.unit, unit)?;
         let curve = match (self.value, &self.table, &self.mean, self.mean_from, &self.pieces) {

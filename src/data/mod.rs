@@ -4,6 +4,7 @@ pub mod disc_materials;
 pub mod friction_codes;
 pub mod linings;
 pub mod magnitude;
+pub mod nearest;
 mod printed;
 pub mod procedures;
 pub mod units;

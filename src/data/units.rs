@@ -251,11 +251,7 @@ fn unit_of_row(row: &'static str) -> Option<Unit> {
         _ => shifted(offset.parse().ok()?, exact)?,
     };
     matches!(system, "si" | "us" | "both").then_some(())?;
-    let codes = match codes {
-        "seen" => Provenance::Seen,
-        "memory" => Provenance::Memory,
-        _ => return None,
-    };
+    let codes = Provenance::named(codes)?;
     Some(Unit {
         dimension,
         symbol,

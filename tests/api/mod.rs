@@ -1,6 +1,7 @@
 //! The service seen through its front door.
 
 mod accept;
+mod catalog;
 mod frame;
 mod measure;
 mod openapi;

@@ -2,6 +2,7 @@
 
 pub mod actuation_force;
 pub mod block;
+pub mod catalog;
 pub mod duty_cycle;
 pub mod pad_capacity;
 pub mod stop_energy;
@@ -18,4 +19,5 @@ pub(super) fn routes() -> OpenApiRouter {
         .routes(routes!(stopping::stopping))
         .routes(routes!(stop_energy::stop_energy))
         .routes(routes!(duty_cycle::duty_cycle))
+        .merge(catalog::routes())
 }
