@@ -6,5 +6,6 @@ pub mod linings;
 pub mod magnitude;
 pub mod nearest;
 mod printed;
+mod printed_curve;
 pub mod procedures;
 pub mod units;
