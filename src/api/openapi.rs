@@ -3,18 +3,22 @@
 use std::sync::LazyLock;
 
 use serde_json::Value;
+use utoipa::openapi::header::HeaderBuilder;
 use utoipa::openapi::path::Operation;
 use utoipa::openapi::security::SecurityRequirement;
 use utoipa::openapi::tag::TagBuilder;
 use utoipa::openapi::{
     ComponentsBuilder, ContactBuilder, ContentBuilder, InfoBuilder, LicenseBuilder, OpenApi,
-    OpenApiBuilder, PathItem, Ref, ResponseBuilder, ServerBuilder,
+    OpenApiBuilder, PathItem, Ref, RefOr, ResponseBuilder, ServerBuilder,
 };
 use utoipa::{PartialSchema, ToSchema};
 
 use super::error_code::ErrorCode;
 use super::problem::{ErrorItem, PROBLEM_JSON, Problem};
 use super::{examples, openapi_30};
+
+/// The tag of the published data.
+const CATALOG: &str = "Catalog";
 
 const DESCRIPTION: &str = "\
 Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, what \
@@ -57,7 +61,7 @@ pub(super) fn base() -> OpenApi {
         .tags(Some([
             tag("Calculations", "What the service computes. Nothing is stored."),
             tag(
-                "Catalog",
+                CATALOG,
                 "The published data that calculations can start from, each row with its source.",
             ),
             tag("Service", "The state of the service itself, and what its problems mean."),
@@ -89,12 +93,32 @@ fn add_failures(document: &mut OpenApi) {
     }
 }
 
+/// Adds to the lists of the catalog how clients need not load them twice: it is the same for all.
+fn add_caching(document: &mut OpenApi) {
+    let header = |text| RefOr::T(HeaderBuilder::new().description(Some(text)).build());
+    for item in document.paths.paths.values_mut() {
+        let Some(operation) = &mut item.get else { continue };
+        let is_catalog = operation.tags.iter().flatten().any(|tag| tag == CATALOG);
+        let Some(RefOr::T(found)) = operation.responses.responses.get_mut("200") else { continue };
+        if !is_catalog {
+            continue;
+        }
+        found.headers.insert("ETag".to_owned(), header("The strong entity tag of this text."));
+        found.headers.insert("Cache-Control".to_owned(), header("How long it may be kept."));
+        let unchanged = ResponseBuilder::new()
+            .description("Unchanged: `If-None-Match` names the entity tag. There is no body.")
+            .build();
+        operation.responses.responses.insert("304".to_owned(), unchanged.into());
+    }
+}
+
 fn operations(item: &mut PathItem) -> impl Iterator<Item = &mut Operation> {
     [&mut item.get, &mut item.post].into_iter().filter_map(Option::as_mut)
 }
 
 static DOCUMENT: LazyLock<(String, String)> = LazyLock::new(|| {
     let mut document = super::described_routes().split_for_parts().1;
+    add_caching(&mut document);
     add_failures(&mut document);
     // Made of strings, lists and maps only: serialising cannot fail.
     let mut value = serde_json::to_value(document).unwrap_or_default();

@@ -155,6 +155,12 @@ pub struct CautionText {
     pub text: &'static str,
 }
 
+impl From<Caution> for CautionText {
+    fn from(caution: Caution) -> Self {
+        Self { code: CautionCode(caution.code()), text: caution.text() }
+    }
+}
+
 /// How the answer was found.
 #[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
 pub struct Record {
@@ -238,10 +244,7 @@ impl Recorded<'_> {
 /// The cautions of an answer.
 #[must_use]
 pub fn cautions(remarks: &Remarks) -> Vec<CautionText> {
-    remarks
-        .cautions()
-        .map(|caution| CautionText { code: CautionCode(caution.code()), text: caution.text() })
-        .collect()
+    remarks.cautions().map(CautionText::from).collect()
 }
 
 /// The pointer of member names joined by `/`.

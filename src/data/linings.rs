@@ -5,6 +5,7 @@ use std::sync::LazyLock;
 
 use serde::Deserialize;
 
+use super::nearest::nearest;
 use super::printed::{Printed, number};
 use crate::calc::friction::Friction;
 use crate::calc::lining::{Limit, Lining, LiningParts, Origin};
@@ -58,17 +59,10 @@ pub fn find(id: &str) -> Option<&'static LiningRow> {
     all().iter().find(|row| row.id == id)
 }
 
-/// The identifier that looks most like `id`, if one does: for "did you mean".
+/// The identifier most like `id`, if one is much like it.
 #[must_use]
 pub fn closest(id: &str) -> Option<&'static str> {
-    // Below this similarity a suggestion confuses more than it helps.
-    const ALIKE: f64 = 0.8;
-    all()
-        .iter()
-        .map(|row| (strsim::jaro_winkler(id, &row.id), row.id.as_str()))
-        .filter(|(likeness, _)| *likeness >= ALIKE)
-        .max_by(|(first, _), (second, _)| first.total_cmp(second))
-        .map(|(_, id)| id)
+    nearest(id, all().iter().map(|row| row.id.as_str()))
 }
 
 /// Reads a table.
@@ -124,11 +118,8 @@ struct Entry {
 impl Entry {
     fn into_row(self, sources: &BTreeMap<String, Source>) -> Result<LiningRow, String> {
         let source = sources.get(&self.source).ok_or("its source is not listed")?;
-        let provenance = match source.provenance.as_str() {
-            "seen" => Provenance::Seen,
-            "memory" => Provenance::Memory,
-            _ => return Err("provenance must be seen or memory".to_owned()),
-        };
+        let provenance =
+            Provenance::named(&source.provenance).ok_or("provenance must be seen or memory")?;
         let parts = self.parts(provenance)?;
         Ok(LiningRow {
             printed: self.printed(),

@@ -1,3 +1,4 @@
 mod disc_materials;
+mod nearest;
 mod procedures;
 mod units;

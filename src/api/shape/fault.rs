@@ -10,12 +10,7 @@ use crate::api::error_code::ShapeCode;
 use crate::api::pointer;
 use crate::api::problem::{ErrorItem, MOST_ERRORS, Problem};
 use crate::calc::fault::FaultCode;
-
-/// Names longer than this are neither repeated in an answer nor compared with the known ones.
-const LONGEST_NAME: usize = 64; // bytes
-
-/// How alike two names must be, from 0 to 1, for one to be suggested in place of the other.
-const ALIKE: f64 = 0.6;
+use crate::data::nearest::{LONGEST, nearest};
 
 /// The faults found: all counted, the first ones kept.
 #[derive(Debug, Default)]
@@ -79,7 +74,7 @@ fn unknown_member(violation: &ValidationError<'_>, schema: &Value, name: &str) -
     let place = parent(violation, schema).get("properties").and_then(Value::as_object);
     let known: Vec<&str> =
         place.into_iter().flat_map(|place| place.keys().map(String::as_str)).collect();
-    let advice = match nearest(name, &known) {
+    let advice = match nearest(name, known.iter().copied()) {
         Some(meant) => format!("did you mean `{meant}`?"),
         None if known.is_empty() => "no members are known here".to_owned(),
         None => format!("known here: {}", known.join(", ")),
@@ -89,19 +84,6 @@ fn unknown_member(violation: &ValidationError<'_>, schema: &Value, name: &str) -
         code: ShapeCode::UnknownMember.as_str(),
         detail: format!("`{}` is not a member of this object; {advice}", shortened(name)),
     }
-}
-
-/// The known name that a mistyped one most likely means.
-fn nearest<'a>(name: &str, known: &[&'a str]) -> Option<&'a str> {
-    if name.len() > LONGEST_NAME {
-        return None;
-    }
-    let name = name.to_lowercase();
-    let likeness =
-        |other: &str| strsim::normalized_damerau_levenshtein(&name, &other.to_lowercase());
-    let scored = known.iter().map(|other| (likeness(other), *other));
-    let best = scored.max_by(|one, other| one.0.total_cmp(&other.0))?;
-    (best.0 >= ALIKE).then_some(best.1)
 }
 
 /// The fault of every violation that concerns one value.
@@ -182,7 +164,7 @@ fn wrong_choice(
     } else {
         (ShapeCode::UnknownValue.as_str(), "value")
     };
-    let advice = match nearest(text, &texts) {
+    let advice = match nearest(text, texts.iter().copied()) {
         Some(meant) if texts.len() > 1 => format!("did you mean `{meant}`? "),
         _ => String::new(),
     };
@@ -205,10 +187,10 @@ fn pointer_below(violation: &ValidationError<'_>, member: Option<&str>) -> Strin
 }
 
 fn shortened(name: &str) -> String {
-    if name.len() <= LONGEST_NAME {
+    if name.len() <= LONGEST {
         return name.to_owned();
     }
-    name.chars().take(LONGEST_NAME / 4).chain("...".chars()).collect()
+    name.chars().take(LONGEST / 4).chain("...".chars()).collect()
 }
 
 fn type_name(keyword: &str) -> &str {

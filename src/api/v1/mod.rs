@@ -2,6 +2,7 @@
 
 pub mod actuation_force;
 pub mod block;
+pub mod catalog;
 pub mod duty_cycle;
 pub mod pad_capacity;
 pub mod stop_energy;
@@ -22,4 +23,5 @@ pub(super) fn routes() -> OpenApiRouter {
         .routes(routes!(pad_capacity::pad_capacity))
         .routes(routes!(actuation_force::actuation_force))
         .merge(pictured(pictures))
+        .merge(catalog::routes())
 }

@@ -3,13 +3,14 @@
 //! The rows stand in `units.tsv`. Units exist only at the border; inside, every quantity is a
 //! number of coherent SI units.
 
+mod table;
+
 use std::sync::LazyLock;
+
+pub use table::table;
 
 use crate::calc::method::Provenance;
 use crate::calc::quantity::Dimension;
-
-/// The rows as text.
-const TEXT: &str = include_str!("units.tsv");
 
 /// A converted number is tried with nine decimals.
 const DECIMALS: f64 = 1e9;
@@ -214,69 +215,4 @@ pub fn further_codes(symbols: &[&str]) -> Vec<String> {
     let units = dimension.map_or(&[][..], |&dimension| of(dimension));
     let codes = units.iter().flat_map(|unit| [unit.ucum, unit.recommendation_20]).flatten();
     codes.filter(|code| !symbols.contains(code)).map(str::to_owned).collect()
-}
-
-/// Reads the table.
-///
-/// # Errors
-/// The first row that cannot be read. A test proves that there is none.
-pub fn table() -> Result<Vec<Unit>, &'static str> {
-    let rows = TEXT.lines().filter(|line| !line.starts_with('#') && !line.is_empty());
-    rows.map(|row| unit_of_row(row).ok_or(row)).collect()
-}
-
-fn unit_of_row(row: &'static str) -> Option<Unit> {
-    let cells: Vec<&'static str> = row.split('\t').collect();
-    let &[
-        dimension,
-        symbol,
-        system,
-        ucum,
-        recommendation_20,
-        factor,
-        exact,
-        offset,
-        variant,
-        codes,
-        name,
-    ] = cells.as_slice()
-    else {
-        return None;
-    };
-    let dimension = Dimension::ALL.iter().copied().find(|known| known.id() == dimension)?;
-    let factor = factor.parse().ok()?;
-    let scale = match (offset, symbol) {
-        ("-", "%") => Scale::RiseOverRun { factor },
-        ("-", _) => Scale::Linear { factor },
-        _ => shifted(offset.parse().ok()?, exact)?,
-    };
-    matches!(system, "si" | "us" | "both").then_some(())?;
-    let codes = match codes {
-        "seen" => Provenance::Seen,
-        "memory" => Provenance::Memory,
-        _ => return None,
-    };
-    Some(Unit {
-        dimension,
-        symbol,
-        is_si: matches!(system, "si" | "both"),
-        is_us: matches!(system, "us" | "both"),
-        ucum: code(ucum),
-        recommendation_20: code(recommendation_20),
-        scale,
-        exact,
-        variant,
-        codes,
-        name,
-    })
-}
-
-fn shifted(offset: f64, exact: &str) -> Option<Scale> {
-    let (numerator, denominator) = exact.split_once('/').unwrap_or((exact, "1"));
-    let (numerator, denominator) = (numerator.parse().ok()?, denominator.parse().ok()?);
-    Some(Scale::Shifted { offset, numerator, denominator })
-}
-
-fn code(cell: &'static str) -> Option<&'static str> {
-    (cell != "-").then_some(cell)
 }
