@@ -45,7 +45,7 @@ fn print(status: StatusCode, answer: &Value) {
         }
         return;
     }
-    rows("", &answer["results"]);
+    table(&answer["results"]);
     for warning in list(&answer["warnings"]) {
         println!("{}: {}", text(&warning["severity"]), text(&warning["detail"]));
     }
@@ -54,31 +54,36 @@ fn print(status: StatusCode, answer: &Value) {
     }
 }
 
-/// One row a number; members of members and of lists are named by their path.
-fn rows(path: &str, part: &Value) {
-    if let (Some(value), Some(unit)) = (part["value"].as_f64(), part["unit"].as_str()) {
-        println!("{path:<55} {value:>14.4} {unit}");
-        return;
+/// One row a member, one column a friction case. Lists inside a case are left to the answer itself.
+fn table(results: &Value) {
+    for (name, member) in results.as_object().into_iter().flatten() {
+        if let Some((number, unit)) = cell(member) {
+            println!("{name:<36} {number:>14} {unit}");
+        }
     }
-    let below =
-        |name: &str| if path.is_empty() { name.to_owned() } else { format!("{path}.{name}") };
+    let cases: Vec<&Value> = list(&results["friction_cases"]).collect();
+    for name in
+        cases.first().and_then(|case| case.as_object()).into_iter().flat_map(|case| case.keys())
+    {
+        let cells: Vec<(String, String)> =
+            cases.iter().map(|case| cell(&case[name]).unwrap_or_default()).collect();
+        if cells.iter().any(|(number, _)| !number.is_empty()) {
+            let numbers: String =
+                cells.iter().map(|(number, _)| format!(" {number:>14}")).collect();
+            let unit = cells.iter().map(|(_, unit)| unit.as_str()).find(|unit| !unit.is_empty());
+            println!("{name:<36}{numbers} {}", unit.unwrap_or_default());
+        }
+    }
+}
+
+/// A quantity, number or word with its unit; nothing for what does not fit into a cell.
+fn cell(part: &Value) -> Option<(String, String)> {
+    let number = |value: f64| format!("{value:.4}");
     match part {
-        Value::Object(members) => {
-            members.iter().for_each(|(name, member)| rows(&below(name), member));
-        }
-        Value::Array(items) if items.iter().any(Value::is_object) => {
-            for (index, item) in items.iter().enumerate() {
-                let case = item["friction_case"].as_str().map(str::to_owned);
-                rows(&below(&case.unwrap_or_else(|| index.to_string())), item);
-            }
-        }
-        Value::Array(items) => println!("{path:<55} {:>14} points", items.len()),
-        Value::Number(number) => {
-            println!("{path:<55} {:>14.4}", number.as_f64().unwrap_or(f64::NAN))
-        }
-        Value::Null | Value::Bool(_) | Value::String(_) => {
-            println!("{path:<55} {:>14}", text(part))
-        }
+        Value::Object(_) => Some((number(part["value"].as_f64()?), text(&part["unit"]))),
+        Value::Number(value) => Some((number(value.as_f64()?), String::new())),
+        Value::Bool(_) | Value::String(_) => Some((text(part), String::new())),
+        Value::Array(_) | Value::Null => None,
     }
 }
 
