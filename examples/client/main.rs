@@ -68,10 +68,10 @@ fn table(results: &Value) {
         let cells: Vec<(String, String)> =
             cases.iter().map(|case| cell(&case[name]).unwrap_or_default()).collect();
         if cells.iter().any(|(number, _)| !number.is_empty()) {
-            let numbers: String =
-                cells.iter().map(|(number, _)| format!(" {number:>14}")).collect();
+            let numbers: Vec<String> =
+                cells.iter().map(|(number, _)| format!("{number:>14}")).collect();
             let unit = cells.iter().map(|(_, unit)| unit.as_str()).find(|unit| !unit.is_empty());
-            println!("{name:<36}{numbers} {}", unit.unwrap_or_default());
+            println!("{name:<36} {} {}", numbers.join(" "), unit.unwrap_or_default());
         }
     }
 }

@@ -26,7 +26,7 @@ fn write(part: &Value, indent: usize, used: usize, text: &mut String) {
             block(members, ['{', '}'], indent, text);
         }
         Value::Array(items) => {
-            block(items.iter().map(|item| (None, item)), ['[', ']'], indent, text)
+            block(items.iter().map(|item| (None, item)), ['[', ']'], indent, text);
         }
         Value::Null | Value::Bool(_) | Value::Number(_) | Value::String(_) => *text += &line,
     }
