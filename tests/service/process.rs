@@ -22,13 +22,13 @@ fn run(arguments: &[&str], settings: &[(&str, &str)]) -> Output {
 }
 
 /// A running service; it does not outlive the test.
-struct Service {
+pub(super) struct Service {
     child: Child,
-    address: String,
+    pub(super) address: String,
 }
 
 impl Service {
-    fn start(settings: &[(&str, &str)]) -> Self {
+    pub(super) fn start(settings: &[(&str, &str)]) -> Self {
         let mut command = program(&[], settings);
         command.env("BRAKEWRIGHT_LISTEN", "127.0.0.1:0");
         let mut child = command.stdout(Stdio::piped()).stderr(Stdio::piped()).spawn().unwrap();
