@@ -198,21 +198,21 @@ impl<'a> Run<'a> {
             run.held(situation, (speed, driving), step)
         })?;
         // What is left at the end must still hold the speed.
-        self.holding(&Hot::new(self, situation), speed, driving).map(|_| ())
+        Self::holding(&Hot::new(self, situation), speed, driving).map(|_| ())
     }
 
     /// One step at a held speed, by Heun's method: what each brake does shifts as their friction changes.
     fn held(&mut self, situation: &Situation, (speed, driving): (f64, f64), duration: f64) -> Done {
-        let start = self.holding(&Hot::new(self, situation), speed, driving)?;
+        let start = Self::holding(&Hot::new(self, situation), speed, driving)?;
         let steady: Vec<(f64, f64)> = start.iter().map(|power| (*power, *power)).collect();
         let factors = self.factors_after(duration, &steady, speed)?;
-        let end = self.holding(&Hot::at(self, situation, &factors), speed, driving)?;
+        let end = Self::holding(&Hot::at(self, situation, &factors), speed, driving)?;
         let powers: Vec<(f64, f64)> = start.into_iter().zip(end).collect();
         self.step(&Step::steady(duration, speed, Activity::Holding), &powers)
     }
 
     /// Power of one brake of each entry while they hold a speed against a driving force.
-    fn holding(&self, hot: &Hot, speed: f64, driving: f64) -> Result<Vec<f64>, FailureReason> {
+    fn holding(hot: &Hot, speed: f64, driving: f64) -> Result<Vec<f64>, FailureReason> {
         if hot.forces.at(1.0, speed).total_ground() < driving {
             return Err(FailureReason::SpeedNotHeld);
         }
