@@ -1,5 +1,4 @@
 //! How long a duty of 1,000 events with two fitted brakes takes, without and with fade, on one core.
-#![expect(missing_docs, reason = "criterion writes the entry")]
 
 use brakewright::calc::actuation::Actuation;
 use brakewright::calc::brake::{Brake, BrakeParts};
