@@ -86,6 +86,7 @@ fn duty(fades: bool) -> Option<Input> {
         machine: Machine::Vehicle(vehicle.ok()?),
         fitted: vec![entry(9e3, Place::Front, fades)?, entry(5e3, Place::Rear, fades)?],
         events: pair.into_iter().cycle().take(1000).collect(),
+        origins: (0..1000).collect(),
         repeats: 1,
         ambient_temperature: ThermodynamicTemperature::from_si(AMBIENT),
         start_temperature: ThermodynamicTemperature::from_si(AMBIENT),
