@@ -141,7 +141,7 @@ async fn a_clutch_disc_settles_at_its_published_temperatures() {
     // The inner radius for which both faces and the rim are 50 in²: 2π(3² − r²) + 2π·3·0.25 = 50.
     let inner = (9.0 + 0.75 - 25.0 / std::f64::consts::PI).sqrt();
     // I = 289 with the book's E = I ω²/2/9336 Btu, in kg m².
-    let inertia = 289.0 / 9336.0 * 1055.055_852_62;
+    let inertia = 289.0 / 9336.0 * 1_055.055_852_62;
     let request = json!({
         "report_units": "us",
         "machine": {"kind": "shaft", "inertia": {"value": inertia, "unit": "kg.m2"}},

@@ -258,7 +258,7 @@ async fn the_longest_duty_is_answered_in_bounded_points_and_time() {
         // 20000 events; without optimization, hence the generous bound.
         let (status, answer, lasted) = try_out(DUTY_CYCLE, &body).await;
         assert_eq!(status, 200, "{answer}");
-        assert!(lasted < Duration::from_secs(120), "{lasted:?}");
+        assert!(lasted < Duration::from_mins(2), "{lasted:?}");
         let trace = &answer["results"]["friction_cases"][0]["trace"];
         for column in [&trace["time"], &trace["speed"], &trace["fitted"][0]["surface"]] {
             assert!((2..=points).contains(&column.as_array().unwrap().len()));
@@ -423,7 +423,7 @@ fn wild_duty(numbers: &[f64], repeats: u32, model: u8) -> Value {
     body["start_temperature"] = q(n(12), "K");
     let events: Vec<Value> = (0..3).map(|event| wild_event(&numbers[13 + 5 * event..])).collect();
     // Most wild speeds do not follow each other: one event alone is followed more often.
-    body["events"] = json!(if repeats % 3 == 0 { events } else { events[..1].to_vec() });
+    body["events"] = json!(if repeats.is_multiple_of(3) { events } else { events[..1].to_vec() });
     body["repeats"] = json!(repeats);
     body["trace"] = json!({"points": 2 + repeats});
     body
