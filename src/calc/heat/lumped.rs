@@ -31,6 +31,8 @@ const NARROW: f64 = 0.25;
 const UNEVEN: f64 = 0.02;
 /// Trials for that mean: over the jump of iron at 600 °C each takes off four fifths of the error.
 const MEAN_STEPS: usize = 12;
+/// Parts of a stretch of changing power, at least, where its highest temperature is looked for.
+const SUMMIT_PARTS: f64 = 16.0;
 /// More steps than any way from 0 K to the ceiling and back takes; a fence against endless work.
 const MOST_STEPS: usize = 5000;
 /// Where following a disc ends, K: no disc is solid there.
@@ -65,25 +67,31 @@ impl LumpedDisc<'_> {
     #[must_use]
     pub fn after(&self, temperature: f64, stretch: &Stretch) -> Option<(f64, f64)> {
         let mut highest = temperature;
-        let end =
-            self.follow(temperature, stretch, |part| highest = highest.max(self.summit(part)))?;
+        let look = |part: &Part<'_>| highest = highest.max(self.summit(part));
+        let end = self.follow(temperature, stretch, SUMMIT_PARTS, look)?;
         Some((end, highest.max(end)))
     }
 
     /// The temperature after a stretch, K. None beyond the ceiling.
     #[must_use]
     pub fn end(&self, temperature: f64, stretch: &Stretch) -> Option<f64> {
-        self.follow(temperature, stretch, |_| {})
+        self.follow(temperature, stretch, 1.0, |_| {})
     }
 
-    fn follow(&self, start: f64, stretch: &Stretch, look: impl FnMut(&Part<'_>)) -> Option<f64> {
+    fn follow(
+        &self,
+        start: f64,
+        stretch: &Stretch,
+        parts: f64,
+        look: impl FnMut(&Part<'_>),
+    ) -> Option<f64> {
         match &self.cooling {
             None => {
                 let energy =
                     0.5 * (stretch.power_at_start + stretch.power_at_end) * stretch.duration;
                 self.without_cooling(start, energy)
             }
-            Some(surface) => self.with_cooling(start, stretch, surface, look),
+            Some(surface) => self.with_cooling(start, (stretch, parts), surface, look),
         }
     }
 
@@ -96,7 +104,7 @@ impl LumpedDisc<'_> {
     fn with_cooling(
         &self,
         start: f64,
-        stretch: &Stretch,
+        (stretch, parts): (&Stretch, f64),
         surface: &CoolingSurface,
         mut look: impl FnMut(&Part<'_>),
     ) -> Option<f64> {
@@ -115,7 +123,7 @@ impl LumpedDisc<'_> {
                 duration: 0.0,
                 end: 0.0,
             };
-            part.duration = self.step(&part);
+            part.duration = self.step(&part, parts);
             part.end = self.refined(&part);
             if part.end.is_nan() || part.end >= CEILING {
                 return None;
@@ -129,7 +137,7 @@ impl LumpedDisc<'_> {
     }
 
     /// A step in which the temperature changes by about [`STEP`] at most, and in which it can follow the power.
-    fn step(&self, part: &Part<'_>) -> f64 {
+    fn step(&self, part: &Part<'_>, parts: f64) -> f64 {
         let stretch = part.stretch;
         let rest = stretch.duration - part.time;
         let time_constant = self.capacity(part.start) / part.conductance;
@@ -141,10 +149,11 @@ impl LumpedDisc<'_> {
         if shift <= STEP {
             return rest.min(by_gap);
         }
-        // The equilibrium moves: by no more than a step at a time, or slowly against the time constant. And the
-        // highest temperature, where heating has fallen to what cooling takes, must not be stepped over.
+        // The equilibrium moves: by no more than a step at a time, or slowly against the time constant. And where
+        // it is asked for, the highest temperature, where heating has fallen to what cooling takes, must not be
+        // stepped over.
         let by_power = (stretch.duration * STEP / shift).max(0.25 * time_constant);
-        rest.min(by_gap).min(by_power).min(stretch.duration / 16.0)
+        rest.min(by_gap).min(by_power).min(stretch.duration / parts)
     }
 
     fn capacity(&self, temperature: f64) -> f64 {
