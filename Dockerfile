@@ -7,7 +7,8 @@ FROM rust:1.95-bookworm AS build
 WORKDIR /build
 COPY Cargo.toml Cargo.lock ./
 COPY src ./src
-COPY examples ./examples
+# The description shows some of them.
+COPY examples/requests ./examples/requests
 # Static: the final image has no libraries. The system call backend: in a static program the usual way of finding
 # random numbers falls back to files that an empty root does not have. The target is named so that these flags
 # are not used for build scripts and macros, which run here.

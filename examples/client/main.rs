@@ -5,11 +5,12 @@
 //! ```
 //!
 //! A file is one of `examples/requests`, or a request alone with its endpoint's name as folder.
-#![expect(clippy::print_stdout, reason = "printing is what this program is for")]
 
 use std::error::Error;
-use std::fs;
+use std::fmt::Write as _;
+use std::io::Write as _;
 use std::path::Path;
+use std::{fs, io};
 
 use reqwest::{Client, StatusCode};
 use serde_json::Value;
@@ -25,7 +26,7 @@ async fn main() -> Result<(), Box<dyn Error>> {
     let response = Client::new().post(&address).json(&request).send().await?;
     let status = response.status();
     let answer: Value = response.json().await?;
-    print(status, &answer);
+    io::stdout().write_all(page(status, &answer)?.as_bytes())?;
     if status.is_success() { Ok(()) } else { Err("the service gave no results".into()) }
 }
 
@@ -37,48 +38,62 @@ fn read(file: &Path) -> Result<(String, Value), Box<dyn Error>> {
     Ok((endpoint, content.get("request").unwrap_or(&content).clone()))
 }
 
-fn print(status: StatusCode, answer: &Value) {
+fn page(status: StatusCode, answer: &Value) -> Result<String, std::fmt::Error> {
+    let mut page = String::new();
     if status != StatusCode::OK {
-        println!("{status}: {}", text(&answer["detail"]));
+        writeln!(page, "{status}: {}", text(&answer["detail"]))?;
         for fault in list(&answer["errors"]) {
-            println!("  {}  {}", text(&fault["pointer"]), text(&fault["detail"]));
+            writeln!(page, "  {}  {}", text(&fault["pointer"]), text(&fault["detail"]))?;
         }
-        return;
+        return Ok(page);
     }
-    rows("", &answer["results"]);
+    table(&answer["results"], &mut page)?;
     for warning in list(&answer["warnings"]) {
-        println!("{}: {}", text(&warning["severity"]), text(&warning["detail"]));
+        writeln!(page, "{}: {}", text(&warning["severity"]), text(&warning["detail"]))?;
     }
     for caution in list(&answer["cautions"]) {
-        println!("caution: {}", text(&caution["text"]));
+        writeln!(page, "caution: {}", text(&caution["text"]))?;
     }
+    Ok(page)
 }
 
-/// One row a number; members of members and of lists are named by their path.
-fn rows(path: &str, part: &Value) {
-    if let (Some(value), Some(unit)) = (part["value"].as_f64(), part["unit"].as_str()) {
-        println!("{path:<55} {value:>14.4} {unit}");
-        return;
+/// One row a member, one column a friction case. Lists inside a case are left to the answer itself.
+fn table(results: &Value, page: &mut String) -> std::fmt::Result {
+    for (name, member) in results.as_object().into_iter().flatten() {
+        row(name, &[member], page)?;
     }
-    let below =
-        |name: &str| if path.is_empty() { name.to_owned() } else { format!("{path}.{name}") };
+    let cases: Vec<&Value> = list(&results["friction_cases"]).collect();
+    let mut names: Vec<&String> = Vec::new();
+    for name in cases.iter().filter_map(|case| case.as_object()).flat_map(|case| case.keys()) {
+        if !names.contains(&name) {
+            names.push(name);
+        }
+    }
+    for name in names {
+        let members: Vec<&Value> = cases.iter().map(|case| &case[name.as_str()]).collect();
+        row(name, &members, page)?;
+    }
+    Ok(())
+}
+
+fn row(name: &str, members: &[&Value], page: &mut String) -> std::fmt::Result {
+    let cells: Vec<_> = members.iter().map(|member| cell(member)).collect();
+    let Some((_, unit)) = cells.iter().flatten().next() else { return Ok(()) };
+    write!(page, "{name:<36}")?;
+    for cell in &cells {
+        write!(page, " {:>19}", cell.as_ref().map_or("", |(number, _)| number))?;
+    }
+    writeln!(page, " {unit}")
+}
+
+/// A quantity, number or word with its unit; nothing for what does not fit into a cell.
+fn cell(part: &Value) -> Option<(String, String)> {
+    let number = |value: f64| format!("{value:.4}");
     match part {
-        Value::Object(members) => {
-            members.iter().for_each(|(name, member)| rows(&below(name), member));
-        }
-        Value::Array(items) if items.iter().any(Value::is_object) => {
-            for (index, item) in items.iter().enumerate() {
-                let case = item["friction_case"].as_str().map(str::to_owned);
-                rows(&below(&case.unwrap_or_else(|| index.to_string())), item);
-            }
-        }
-        Value::Array(items) => println!("{path:<55} {:>14} points", items.len()),
-        Value::Number(number) => {
-            println!("{path:<55} {:>14.4}", number.as_f64().unwrap_or(f64::NAN));
-        }
-        Value::Null | Value::Bool(_) | Value::String(_) => {
-            println!("{path:<55} {:>14}", text(part));
-        }
+        Value::Object(_) => Some((number(part["value"].as_f64()?), text(&part["unit"]))),
+        Value::Number(value) => Some((number(value.as_f64()?), String::new())),
+        Value::Bool(_) | Value::String(_) => Some((text(part), String::new())),
+        Value::Array(_) | Value::Null => None,
     }
 }
 

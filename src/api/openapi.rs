@@ -21,9 +21,8 @@ use super::{examples, openapi_30};
 const CATALOG: &str = "Catalog";
 
 const DESCRIPTION: &str = "\
-Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, what \
-that does to the disc, and whether a specification is met. Every calculation is a `POST` that changes \
-nothing, so any call may be repeated.
+Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, and what \
+that does to the disc. Every calculation is a `POST` that changes nothing, so any call may be repeated.
 
 * A quantity is an object with its unit, `{\"value\": 95, \"unit\": \"mm\"}`; a ratio is a bare number. \
 In requests a unit may also be given by its UCUM code or its UN/ECE Recommendation 20 common code.

@@ -1,7 +1,9 @@
 //! From wire values to physical ones: every fault with its place, every default on record.
 
 use serde::Serialize;
-use utoipa::ToSchema;
+use utoipa::openapi::RefOr;
+use utoipa::openapi::schema::{ObjectBuilder, OneOfBuilder, Schema, Type};
+use utoipa::{PartialSchema, ToSchema};
 
 use super::measure::{Finite, Kind, Measure};
 use super::pointer;
@@ -81,15 +83,29 @@ pub struct RecordedDefault {
 }
 
 /// A default: a number or a word.
-#[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
+#[derive(Debug, Clone, PartialEq, Serialize)]
 #[serde(untagged)]
 pub enum DefaultValue {
+    /// A count.
+    Count(u32),
     /// A number.
-    #[schema(value_type = f64)]
     Number(Finite),
     /// A word.
     Text(String),
 }
+
+impl PartialSchema for DefaultValue {
+    fn schema() -> RefOr<Schema> {
+        // A count is a number: told apart, it would match two of the variants.
+        OneOfBuilder::new()
+            .item(ObjectBuilder::new().schema_type(Type::Number))
+            .item(ObjectBuilder::new().schema_type(Type::String))
+            .description(Some("A default: a number or a word."))
+            .into()
+    }
+}
+
+impl ToSchema for DefaultValue {}
 
 /// Reads a request. Faults do not stop it: they are collected, and the values read on are of no use then.
 #[derive(Debug, Default)]
@@ -159,7 +175,7 @@ impl Reader {
     /// A count, or its default, which goes on record.
     pub fn count(&mut self, at: &At<'_>, given: Option<u32>, default: u32) -> u32 {
         given.unwrap_or_else(|| {
-            self.record(at, DefaultValue::Number(Finite(f64::from(default))), None);
+            self.record(at, DefaultValue::Count(default), None);
             default
         })
     }

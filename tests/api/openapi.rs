@@ -81,6 +81,17 @@ fn every_operation_says_what_it_does_and_how_it_fails() {
     }
 }
 
+#[test]
+fn every_schema_and_every_member_is_described() {
+    let document = document();
+    for (name, schema) in document["components"]["schemas"].as_object().unwrap() {
+        assert!(schema["description"].is_string(), "{name}");
+        for (member, part) in schema["properties"].as_object().into_iter().flatten() {
+            assert!(part["description"].is_string(), "{name}.{member}");
+        }
+    }
+}
+
 /// Calls `visit` with every list in a schema, through references; schemas in `seen` are not entered again.
 fn lists<'a>(
     document: &'a Value,

@@ -55,7 +55,8 @@ fn the_readme_lists_the_endpoints_of_the_description() {
     let listed: BTreeSet<String> = section
         .lines()
         .filter_map(|line| line.strip_prefix("| `"))
-        .map(|line| line.split_once('`').unwrap().0.to_owned())
+        .flat_map(|line| line.split_once(" |").unwrap().0.split(", "))
+        .map(|name| name.trim_matches('`').to_owned())
         .collect();
     assert_eq!(listed, described);
 }

@@ -47,7 +47,7 @@ pub struct DutyCycleRequest {
     /// What happens, in order. Speed may jump up between events without time; it falls only in a stop.
     #[schema(min_items = 1, max_items = 1000)]
     pub events: Vec<Event>,
-    /// How often the events happen, 1 if left out; events times repeats must not exceed 20000.
+    /// How often the events happen, 1 if left out; events times repeats must not exceed 20000, and times entries of `fitted` 50000.
     #[schema(nullable = false)]
     pub repeats: Option<u32>,
     /// Temperature of the air, 20 degC if left out.

@@ -381,16 +381,25 @@ impl Path {
 
     /// Power of the brakes of each axle over time from the first torque on, as nodes joined by straight lines.
     ///
-    /// Pieces in which the power is not linear are divided; the nodes stay below `most`.
+    /// Pieces in which the power is not linear are divided, long ones by their share of `most`; about twice `most`
+    /// nodes at the most, and two for each piece.
     #[must_use]
     pub fn brake_power(&self, most: usize) -> Vec<(f64, [f64; 2])> {
         let pieces: Vec<&Piece> = self.torque_pieces().collect();
         let begin = self.first_torque().time;
         let curved = pieces.iter().filter(|piece| !self.has_linear_power(piece)).count().max(1);
-        let divisions = (most / curved).clamp(2, 24);
+        let least = (most / curved).clamp(2, 24);
+        let lasting = self.end().time - begin;
+        // A held deceleration is one long piece, beside the many short ones of a build-up against drag.
+        let divisions = |piece: &Piece| {
+            let wanted = to_f64(most) * piece.duration / lasting;
+            (least..most.max(least))
+                .find(|parts| to_f64(*parts) >= wanted)
+                .unwrap_or(most.max(least))
+        };
         let mut nodes = Vec::new();
         for (index, piece) in pieces.iter().enumerate() {
-            let parts = if self.has_linear_power(piece) { 1 } else { divisions };
+            let parts = if self.has_linear_power(piece) { 1 } else { divisions(piece) };
             let first = usize::from(index > 0 && piece.phase != Phase::Full);
             for part in first..=parts {
                 let time = piece.duration * to_f64(part) / to_f64(parts);
@@ -402,7 +411,12 @@ impl Path {
                 ));
             }
         }
-        nodes.dedup_by(|next, last| next.0 <= last.0);
+        nodes.dedup_by(|next, last| {
+            next.0 = next.0.max(last.0);
+            // Two powers at one time are a jump, as from build-up to a held deceleration.
+            let jump = (next.1[0] - last.1[0]).abs() + (next.1[1] - last.1[1]).abs();
+            next.0 <= last.0 && jump <= 1e-9 * (last.1[0] + last.1[1])
+        });
         nodes
     }
 

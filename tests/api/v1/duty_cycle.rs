@@ -301,6 +301,32 @@ async fn a_raised_load_ends_its_stop_at_rest_with_and_without_fade() {
     }
 }
 
+/// 20 N m cannot hold 98 N m of load; gravity alone brings it to rest.
+#[tokio::test]
+async fn a_load_that_the_brakes_let_go_is_told() {
+    let machine = json!({"kind": "hoist", "load_mass": q(1000.0, "kg"), "drum_radius": q(200.0, "mm"), "falls": 2, "gear_ratio": 10});
+    let mut body = with(&duty(), "/machine", machine);
+    body["events"] =
+        json!([{"kind": "stop", "initial_speed": q(1.0, "m/s"), "direction": "raising"}]);
+    for (torque, lets_go) in [(20.0, true), (200.0, false)] {
+        body["fitted"] = json!([{"torque": q(torque, "N.m")}]);
+        let whole = answer(DUTY_CYCLE, &body).await;
+        assert_eq!(codes(&whole).contains(&"runs_back_before_brake"), lets_go, "{whole}");
+    }
+}
+
+/// A held deceleration against drag, by scipy's solve_ivp to 1e-11: 281.944628 kJ in 70.2280460 m.
+#[tokio::test]
+async fn a_deceleration_held_against_drag_takes_its_energy() {
+    let mut body = duty();
+    body["events"][0]["deceleration"] = q(3.0, "m/s2");
+    body["events"][0]["response"] = json!({"build_up_time": q(0.4, "s")});
+    body["machine"]["drag_area"] = q(2.0, "m2");
+    let found = case(DUTY_CYCLE, &body).await;
+    assert_close(value(&found["longest_stop"]["total_distance"]), 70.228_046_0, 1e-8);
+    assert_close(4.0 * value(&found["fitted"][0]["energy"]), 281.944_628, 1e-4);
+}
+
 /// Tires that hold less than the brakes demand decide alike with and without fade, and so does an operator.
 #[tokio::test]
 async fn limits_and_operators_act_with_fade_as_without() {

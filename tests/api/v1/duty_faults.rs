@@ -48,6 +48,15 @@ async fn repeats_out_of_range_are_refused() {
     }
 }
 
+/// Each entry is followed on its own.
+#[tokio::test]
+async fn many_events_of_many_entries_are_refused() {
+    let mut body = with(&duty(), "/repeats", 9_000);
+    let entry = json!({"torque": q(10.0, "N.m"), "axle": "all"});
+    body["fitted"] = Value::Array(vec![entry; 3]);
+    assert_faults(DUTY_CYCLE, &body, &[("#/repeats", "out_of_range")]).await;
+}
+
 #[tokio::test]
 async fn points_of_a_trace_out_of_range_are_refused() {
     for points in [0, 1, 2001] {

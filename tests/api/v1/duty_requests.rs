@@ -65,9 +65,10 @@ pub(super) fn with(body: &Value, pointer: &str, value: impl Into<Value>) -> Valu
     let mut body = body.clone();
     let (parent, member) = pointer.rsplit_once('/').unwrap();
     let parent = body.pointer_mut(parent).unwrap_or_else(|| panic!("{parent} is not there"));
-    match parent {
-        Value::Array(items) => items[member.parse::<usize>().unwrap()] = value.into(),
-        parent => parent[member] = value.into(),
+    if let Value::Array(items) = parent {
+        items[member.parse::<usize>().unwrap()] = value.into();
+    } else {
+        parent[member] = value.into();
     }
     body
 }
@@ -141,7 +142,7 @@ pub(super) async fn assert_faults(path: &str, body: &Value, expected: &[(&str, &
 pub(super) async fn try_out(path: &str, body: &Value) -> (u16, Value, Duration) {
     use tower::ServiceExt as _;
     let mut settings = crate::support::client::settings();
-    settings.request_timeout = Duration::from_secs(300);
+    settings.request_timeout = Duration::from_mins(5);
     let router =
         brakewright::api::router(&settings, brakewright::api::health::Readiness::default());
     let request = Request::post(path).header("content-type", "application/json");

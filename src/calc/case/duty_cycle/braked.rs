@@ -8,8 +8,8 @@ use crate::calc::motion::{Demand, Forces, Phase, Point, Stop};
 
 /// Steps of a stop, growing from the first torque on.
 const STEPS: u32 = 40;
-/// More steps than a stop with fade takes; it ends in a failure if the brake fades away.
-const MOST_STEPS: u32 = 4000;
+/// A stop with fade ends in a failure after these: a hundred times the time that it takes cold.
+const MOST_STEPS: u32 = 400;
 
 /// A step of a duty.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -110,7 +110,8 @@ impl Braking<'_> {
         let cooled_at = f64::midpoint(initial, end);
         let mut since = 0.0;
         for step in 1..=MOST_STEPS {
-            let stretch = build_up.stretch(since, scale * f64::from(2 * step - 1));
+            let kink = build_up.kink(since, &Hot::new(run, self.situation).forces);
+            let stretch = build_up.stretch(since, scale * f64::from(2 * step - 1), kink);
             if self.coupled(run, &mut motion, &stretch, cooled_at)? {
                 return Ok((motion.way, motion.time));
             }
@@ -143,8 +144,9 @@ impl Braking<'_> {
 
     /// About how long the braking takes: sets the scale of the steps.
     fn expected_time(&self, speed: f64) -> f64 {
-        let full = || self.cold.path.forces().at(1.0, self.demand.final_speed).deceleration;
-        let deceleration = self.demand.deceleration.unwrap_or_else(full);
+        let full = self.cold.path.forces().at(1.0, self.demand.final_speed).deceleration;
+        let held = self.demand.deceleration;
+        let deceleration = held.map_or(full, |held| if full > 0.0 { held.min(full) } else { held });
         let change = speed - self.demand.final_speed;
         if deceleration > 0.0 {
             change / deceleration + self.demand.delays.build_up()
@@ -284,8 +286,20 @@ struct RampedStep {
 }
 
 impl BuildUp {
-    /// The next step: as long as wanted, but it ends where the build-up does, and that takes eight at least.
-    fn stretch(&self, since: f64, wanted: f64) -> RampedStep {
+    /// How long until another limit takes over, as far as it lies in the build-up; endless if none does.
+    fn kink(&self, since: f64, forces: &Forces) -> f64 {
+        if since >= self.time {
+            return f64::INFINITY;
+        }
+        // Heat shifts a limit a little: one just passed must not hold the next step back.
+        let nearest = since + 1e-3 * self.time;
+        let times = forces.breakpoints(self.fraction).into_iter();
+        let mut times = times.map(|fraction| self.time * fraction / self.fraction);
+        times.find(|time| *time > nearest).map_or(f64::INFINITY, |time| time - since)
+    }
+
+    /// The next step: as long as wanted, but it ends where the build-up or a limit does; a build-up takes sixteen at least.
+    fn stretch(&self, since: f64, wanted: f64, kink: f64) -> RampedStep {
         let rest = self.time - since;
         if rest <= 1e-12 * self.time {
             return RampedStep {
@@ -295,7 +309,7 @@ impl BuildUp {
                 is_full: true,
             };
         }
-        let duration = wanted.min(0.125 * self.time).min(rest);
+        let duration = wanted.min(0.0625 * self.time).min(rest).min(kink);
         let applied = |time: f64| (self.fraction * time / self.time).min(self.fraction);
         RampedStep { duration, from: applied(since), to: applied(since + duration), is_full: false }
     }

@@ -48,6 +48,7 @@ pub(super) struct Run<'a> {
     last_stop: (f64, f64),
     longest_stop: Option<LongestStop>,
     first_failure: Option<Failure>,
+    is_let_go: bool,
     course: Option<Course>,
 }
 
@@ -71,6 +72,7 @@ impl<'a> Run<'a> {
             last_stop: (0.0, 0.0),
             longest_stop: None,
             first_failure: None,
+            is_let_go: false,
             course: input.points.map(Course::new),
         };
         run.speed = input.events.first().map_or(0.0, |event| event.speeds().0);
@@ -145,6 +147,7 @@ impl<'a> Run<'a> {
                 }
                 let braking = Braking { situation, demand, cold };
                 let (distance, time) = braking.follow(self)?;
+                self.is_let_go |= matches!(&cold.ending, Ending::Reached(Some(run_back)) if run_back.time.is_none());
                 self.speed = demand.final_speed;
                 self.last_stop = (distance, time);
                 if self.longest_stop.is_none_or(|longest| distance > longest.distance) {
@@ -278,6 +281,7 @@ impl<'a> Run<'a> {
             fitted: self.tracked.into_iter().map(|tracked| tracked.finish(speed)).collect(),
             longest_stop: self.longest_stop,
             first_failure: self.first_failure,
+            is_let_go: self.is_let_go,
             course: self.course.map(Course::finish),
         }
     }
