@@ -1,7 +1,7 @@
 //! How large a number of each dimension may be on the wire.
 //!
-//! The bounds are generous by orders of magnitude and have one purpose: no calculation with
-//! numbers inside them loses its meaning by overflow or underflow. They are ours, not a source's.
+//! The bounds are generous by orders of magnitude: no calculation with numbers inside them loses its
+//! meaning by overflow or underflow, and a slip of several powers of ten is caught. They are ours, not a source's.
 
 use crate::calc::quantity::Dimension;
 
@@ -54,8 +54,8 @@ magnitudes! {
     Ratio: "1", 1e-12, 1e12, true;
     Length: "m", 1e-9, 1e6, true;
     Travel: "m", 1e-9, 1e6, true;
-    Area: "m2", 1e-15, 1e9, true;
-    Volume: "m3", 1e-18, 1e9, true;
+    Area: "m2", 1e-15, 1e6, true;
+    Volume: "m3", 1e-18, 1e6, true;
     Angle: "rad", 1e-9, 1e9, true;
     // Short of a right angle, where a slope has no end.
     Grade: "rad", 1e-9, 1.57, true;
@@ -66,10 +66,10 @@ magnitudes! {
     Energy: "J", 1e-9, 1e15, true;
     Power: "W", 1e-9, 1e15, true;
     Speed: "m/s", 1e-9, 1e4, true;
-    RotationalSpeed: "rad/s", 1e-9, 1e9, true;
+    RotationalSpeed: "rad/s", 1e-9, 1e6, true;
     Acceleration: "m/s2", 1e-9, 1e6, true;
     AngularAcceleration: "rad/s2", 1e-9, 1e9, true;
-    Time: "s", 1e-9, 1e12, true;
+    Time: "s", 1e-9, 1e9, true;
     // Absolute: there is nothing below 0 K.
     Temperature: "K", 1e-3, 1e4, false;
     TemperatureDifference: "K", 1e-9, 1e4, true;
@@ -78,11 +78,11 @@ magnitudes! {
     EnergyFlux: "J/m2", 1e-6, 1e15, true;
     PressureVelocity: "Pa.m/s", 1e-6, 1e15, true;
     HeatTransferCoefficient: "W/(m2.K)", 1e-9, 1e9, true;
-    ThermalConductivity: "W/(m.K)", 1e-9, 1e9, true;
+    ThermalConductivity: "W/(m.K)", 1e-9, 1e6, true;
     SpecificHeat: "J/(kg.K)", 1e-6, 1e9, true;
-    Density: "kg/m3", 1e-9, 1e9, true;
-    SpecificWear: "m3/J", 1e-24, 1e-3, true;
+    Density: "kg/m3", 1e-9, 1e6, true;
+    SpecificWear: "m3/J", 1e-24, 1.0, true;
     Stiffness: "N/m", 1e-9, 1e15, true;
-    LineCompliance: "m3/Pa", 1e-24, 1e-3, true;
-    StopFrequency: "1/s", 1e-12, 1e6, true;
+    LineCompliance: "m3/Pa", 1e-24, 1.0, true;
+    StopFrequency: "1/s", 1e-12, 1e3, true;
 }
