@@ -96,7 +96,7 @@ fn every_default_is_recorded_and_given_values_are_not() {
     let expected = json!([
         {"pointer": "#/ambient_temperature", "value": 20.0, "unit": "degC"},
         {"pointer": "#/efficiency", "value": 0.9},
-        {"pointer": "#/faces", "value": 2.0},
+        {"pointer": "#/faces", "value": 2},
         {"pointer": "#/side", "value": "left"},
     ]);
     assert_eq!(serde_json::to_value(&defaults).unwrap(), expected);

@@ -223,7 +223,7 @@ async fn a_range_without_nominal_takes_the_middle_and_records_it() {
 async fn every_default_is_on_record_and_a_value_given_is_not() {
     let open = answer(PAD_CAPACITY, &pad_capacity()).await;
     assert_eq!(defaulted(&open), ["#/faces", "#/pressure_distribution"]);
-    assert_eq!(default_at(&open, "#/faces"), &json!({"pointer": "#/faces", "value": 2.0}));
+    assert_eq!(default_at(&open, "#/faces"), &json!({"pointer": "#/faces", "value": 2}));
     assert_eq!(default_at(&open, "#/pressure_distribution")["value"], "uniform_wear");
     let mut body = with(&pad_capacity(), "/faces", 4);
     body["pressure_distribution"] = json!("uniform_wear");
