@@ -31,8 +31,13 @@ fn run(command: Command, settings: &Settings) -> Result<(), String> {
     match command {
         Command::Serve => serve(settings)
             .map_err(|error| format!("error: cannot serve on {}: {error}", settings.listen)),
-        Command::Openapi => write!(io::stdout(), "{}", openapi_json())
-            .map_err(|error| format!("error: cannot write the description: {error}")),
+        Command::Openapi => match write!(io::stdout(), "{}", openapi_json()) {
+            // Who reads only the beginning has what was wanted.
+            Err(error) if error.kind() != io::ErrorKind::BrokenPipe => {
+                Err(format!("error: cannot write the description: {error}"))
+            }
+            _ => Ok(()),
+        },
         Command::Probe => probe::probe(settings.listen),
     }
 }

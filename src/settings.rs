@@ -5,6 +5,7 @@ use std::net::SocketAddr;
 use std::time::Duration;
 
 use axum::http::{HeaderValue, Uri};
+use clap::error::{ContextKind, ContextValue};
 use clap::{Args, CommandFactory as _, Parser, Subcommand, ValueEnum};
 use tracing_subscriber::EnvFilter;
 
@@ -112,10 +113,25 @@ pub fn read() -> Result<CommandLine, Stop> {
     let variables = std::env::vars_os().map(|(name, _)| name);
     // First, so that a variable which is not understood is never passed over, whatever else is wrong.
     refuse_unknown(variables)?;
-    CommandLine::try_parse().map_err(|error| Stop {
-        text: error.render().to_string(),
-        asked_for: error.exit_code() == 0,
+    CommandLine::try_parse().map_err(|error| {
+        let origin = variable_at_fault(&error).map_or(String::new(), |variable| {
+            format!("\nThe value comes from the environment variable {variable}.\n")
+        });
+        Stop { text: error.render().to_string() + &origin, asked_for: error.exit_code() == 0 }
     })
+}
+
+/// The variable that a refused value comes from, if it was not given as an option.
+fn variable_at_fault(error: &clap::Error) -> Option<String> {
+    let Some(ContextValue::String(shown)) = error.get(ContextKind::InvalidArg) else { return None };
+    let option = shown.split(' ').next()?;
+    if std::env::args().any(|argument| argument.split('=').next() == Some(option)) {
+        return None;
+    }
+    let program = CommandLine::command();
+    let of_option = |argument: &&clap::Arg| argument.get_long() == option.strip_prefix("--");
+    let variable = program.get_arguments().find(of_option)?.get_env()?;
+    Some(variable.to_string_lossy().into_owned())
 }
 
 /// Refuses variables with our prefix that are no settings: an ignored one could leave a door open.

@@ -14,6 +14,7 @@
 #![allow(missing_docs, reason = "tests are named as sentences")]
 
 mod api;
+mod architecture;
 mod calc;
 mod data;
 mod published;

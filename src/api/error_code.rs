@@ -8,21 +8,39 @@ use utoipa::{PartialSchema, ToSchema};
 
 use crate::calc::fault::FaultCode;
 
-/// What can be wrong with the shape of a request, before its physics is looked at.
-pub const SHAPE: &[(&str, &str)] = &[
-    ("wrong_type", "a value has another JSON type than asked for"),
-    ("null_not_allowed", "null is given; leave the member out instead"),
-    ("missing_member", "a required member is not there"),
-    ("unknown_member", "a member that the request does not know"),
-    ("unknown_unit", "a unit that the dimension does not have"),
-    ("unknown_value", "a word that is not one of those allowed"),
-    ("invalid_value", "a value that cannot be read"),
-];
+macro_rules! shape_codes {
+    ($($name:ident = $code:literal, $meaning:literal;)*) => {
+        /// What can be wrong with the shape of a request, before its physics is looked at.
+        #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+        pub enum ShapeCode { $(#[doc = $meaning] $name,)* }
+
+        impl ShapeCode {
+            /// Every code, in the order of this table.
+            pub const ALL: &'static [Self] = &[$(Self::$name,)*];
+
+            /// The code that programs read.
+            #[must_use]
+            pub const fn as_str(self) -> &'static str {
+                match self { $(Self::$name => $code,)* }
+            }
+        }
+    };
+}
+
+shape_codes! {
+    WrongType = "wrong_type", "A value has another JSON type than asked for.";
+    NullNotAllowed = "null_not_allowed", "Null is given; leave the member out instead.";
+    MissingMember = "missing_member", "A required member is not there.";
+    UnknownMember = "unknown_member", "A member that the request does not know.";
+    UnknownUnit = "unknown_unit", "A unit that the dimension does not have.";
+    UnknownValue = "unknown_value", "A word that is not one of those allowed.";
+    InvalidValue = "invalid_value", "A value that cannot be read.";
+}
 
 /// Every code of a fault, for the description.
 #[must_use]
 pub fn all() -> Vec<&'static str> {
-    let shape = SHAPE.iter().map(|(code, _)| *code);
+    let shape = ShapeCode::ALL.iter().map(|code| code.as_str());
     shape.chain(FaultCode::ALL.iter().map(|code| code.as_str())).collect()
 }
 

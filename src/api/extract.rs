@@ -10,7 +10,7 @@ use serde::de::DeserializeOwned;
 use utoipa::ToSchema;
 
 use super::accept::{JSON, Negotiated};
-use super::measure::NOT_FINITE;
+use super::finite::to_json;
 use super::problem::{ErrorItem, Problem, ProblemKind};
 use super::shape::{self, MoreUnits};
 use crate::calc::fault::FaultCode;
@@ -87,16 +87,10 @@ pub struct Answer<T>(pub T);
 
 impl<T: Serialize> IntoResponse for Answer<T> {
     fn into_response(self) -> Response<Body> {
-        match serde_json::to_vec(&self.0) {
+        match to_json(&self.0) {
             Ok(text) => ([(CONTENT_TYPE, HeaderValue::from_static(JSON))], text).into_response(),
             // A result beyond what JSON can hold is the input's fault, not the service's.
-            Err(error) if error.to_string() == NOT_FINITE => {
-                Problem::invalid(vec![overflow()], 1).into_response()
-            }
-            Err(error) => {
-                tracing::error!(%error, "an answer cannot be written as JSON");
-                Problem::of_kind(ProblemKind::Internal).into_response()
-            }
+            Err(_) => Problem::invalid(vec![overflow()], 1).into_response(),
         }
     }
 }

@@ -30,6 +30,7 @@ impl Readiness {
 /// The state of a replica.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize, ToSchema)]
 pub struct Health {
+    /// The state.
     status: HealthStatus,
 }
 

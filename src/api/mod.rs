@@ -2,10 +2,13 @@
 
 pub mod accept;
 mod access_log;
+pub mod count;
 mod docs;
 pub mod error_code;
 pub mod etag;
+mod examples;
 pub mod extract;
+pub mod finite;
 pub mod health;
 pub mod heavy;
 pub mod layers;
@@ -17,6 +20,7 @@ pub mod pointer;
 pub mod problem;
 mod problem_kind;
 pub mod record;
+pub mod render;
 pub mod request_id;
 pub mod shape;
 pub mod tagged;

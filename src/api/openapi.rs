@@ -3,22 +3,26 @@
 use std::sync::LazyLock;
 
 use serde_json::Value;
+use utoipa::openapi::header::HeaderBuilder;
 use utoipa::openapi::path::Operation;
 use utoipa::openapi::security::SecurityRequirement;
 use utoipa::openapi::tag::TagBuilder;
 use utoipa::openapi::{
     ComponentsBuilder, ContactBuilder, ContentBuilder, InfoBuilder, LicenseBuilder, OpenApi,
-    OpenApiBuilder, PathItem, Ref, ResponseBuilder, ServerBuilder,
+    OpenApiBuilder, PathItem, Ref, RefOr, ResponseBuilder, ServerBuilder,
 };
 use utoipa::{PartialSchema, ToSchema};
 
-use super::openapi_30;
+use super::error_code::ErrorCode;
 use super::problem::{ErrorItem, PROBLEM_JSON, Problem};
+use super::{examples, openapi_30};
+
+/// The tag of the published data.
+const CATALOG: &str = "Catalog";
 
 const DESCRIPTION: &str = "\
-Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, what \
-that does to the disc, and whether a specification is met. Every calculation is a `POST` that changes \
-nothing, so any call may be repeated.
+Brakewright calculates disc brakes: what a pad carries, what presses it, how a machine stops, and what \
+that does to the disc. Every calculation is a `POST` that changes nothing, so any call may be repeated.
 
 * A quantity is an object with its unit, `{\"value\": 95, \"unit\": \"mm\"}`; a ratio is a bare number. \
 In requests a unit may also be given by its UCUM code or its UN/ECE Recommendation 20 common code.
@@ -45,7 +49,8 @@ pub(super) fn base() -> OpenApi {
         ));
     let components = ComponentsBuilder::new()
         .schema(Problem::name(), Problem::schema())
-        .schema(ErrorItem::name(), ErrorItem::schema());
+        .schema(ErrorItem::name(), ErrorItem::schema())
+        .schema(ErrorCode::name(), ErrorCode::schema());
     OpenApiBuilder::new()
         .info(info.build())
         .servers(Some([ServerBuilder::new().url("/").description(Some("This service")).build()]))
@@ -55,7 +60,7 @@ pub(super) fn base() -> OpenApi {
         .tags(Some([
             tag("Calculations", "What the service computes. Nothing is stored."),
             tag(
-                "Catalog",
+                CATALOG,
                 "The published data that calculations can start from, each row with its source.",
             ),
             tag("Service", "The state of the service itself, and what its problems mean."),
@@ -87,15 +92,36 @@ fn add_failures(document: &mut OpenApi) {
     }
 }
 
+/// Adds to the lists of the catalog how clients need not load them twice: it is the same for all.
+fn add_caching(document: &mut OpenApi) {
+    let header = |text| RefOr::T(HeaderBuilder::new().description(Some(text)).build());
+    for item in document.paths.paths.values_mut() {
+        let Some(operation) = &mut item.get else { continue };
+        let is_catalog = operation.tags.iter().flatten().any(|tag| tag == CATALOG);
+        let Some(RefOr::T(found)) = operation.responses.responses.get_mut("200") else { continue };
+        if !is_catalog {
+            continue;
+        }
+        found.headers.insert("ETag".to_owned(), header("The strong entity tag of this text."));
+        found.headers.insert("Cache-Control".to_owned(), header("How long it may be kept."));
+        let unchanged = ResponseBuilder::new()
+            .description("Unchanged: `If-None-Match` names the entity tag. There is no body.")
+            .build();
+        operation.responses.responses.insert("304".to_owned(), unchanged.into());
+    }
+}
+
 fn operations(item: &mut PathItem) -> impl Iterator<Item = &mut Operation> {
     [&mut item.get, &mut item.post].into_iter().filter_map(Option::as_mut)
 }
 
 static DOCUMENT: LazyLock<(String, String)> = LazyLock::new(|| {
     let mut document = super::described_routes().split_for_parts().1;
+    add_caching(&mut document);
     add_failures(&mut document);
     // Made of strings, lists and maps only: serialising cannot fail.
-    let value = serde_json::to_value(document).unwrap_or_default();
+    let mut value = serde_json::to_value(document).unwrap_or_default();
+    examples::insert(&mut value);
     (pretty(&value), pretty(&openapi_30::from_31(value)))
 });
 

@@ -23,8 +23,28 @@ pub fn from_31(mut document: Value) -> Value {
     }
     if let Some(Value::Object(schemas)) = document.pointer_mut("/components/schemas") {
         schemas.values_mut().for_each(convert);
+        let unions = schemas.iter().filter(|(_, schema)| schema.get("discriminator").is_some());
+        let unions: Vec<Value> =
+            unions.map(|(name, _)| json!(format!("#/components/schemas/{name}"))).collect();
+        schemas.values_mut().for_each(|schema| refer_plainly(schema, &unions));
     }
     document
+}
+
+/// Undoes [`wrap_reference`] where a union is meant: inside an `allOf`, generators take the union for a base type
+/// and drop its tag. What stood beside the reference is lost.
+fn refer_plainly(schema: &mut Value, unions: &[Value]) {
+    match schema {
+        Value::Object(members) => {
+            let target = members.get("allOf").and_then(|parts| parts.get(0)?.get("$ref")).cloned();
+            if let Some(target) = target.filter(|target| unions.contains(target)) {
+                *members = Map::from_iter([("$ref".to_owned(), target)]);
+            }
+            members.values_mut().for_each(|part| refer_plainly(part, unions));
+        }
+        Value::Array(items) => items.iter_mut().for_each(|item| refer_plainly(item, unions)),
+        Value::Null | Value::Bool(_) | Value::Number(_) | Value::String(_) => {}
+    }
 }
 
 fn uses_stream(item: &Value) -> bool {

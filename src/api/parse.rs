@@ -1,13 +1,16 @@
 //! From wire values to physical ones: every fault with its place, every default on record.
 
 use serde::Serialize;
-use utoipa::ToSchema;
+use utoipa::openapi::RefOr;
+use utoipa::openapi::schema::{ObjectBuilder, OneOfBuilder, Schema, Type};
+use utoipa::{PartialSchema, ToSchema};
 
-use super::measure::{Finite, Kind, Measure, SMALLEST};
+use super::measure::{Finite, Kind, Measure};
 use super::pointer;
 use super::problem::{ErrorItem, MOST_ERRORS, Problem};
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::quantity::{Dimension, Si};
+use crate::data::magnitude;
 
 /// A place in a request. It is written down only when something is to be said about it.
 #[derive(Debug, Clone, Copy)]
@@ -80,15 +83,29 @@ pub struct RecordedDefault {
 }
 
 /// A default: a number or a word.
-#[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
+#[derive(Debug, Clone, PartialEq, Serialize)]
 #[serde(untagged)]
 pub enum DefaultValue {
+    /// A count.
+    Count(u32),
     /// A number.
-    #[schema(value_type = f64)]
     Number(Finite),
     /// A word.
     Text(String),
 }
+
+impl PartialSchema for DefaultValue {
+    fn schema() -> RefOr<Schema> {
+        // A count is a number: told apart, it would match two of the variants.
+        OneOfBuilder::new()
+            .item(ObjectBuilder::new().schema_type(Type::Number))
+            .item(ObjectBuilder::new().schema_type(Type::String))
+            .description(Some("A default: a number or a word."))
+            .into()
+    }
+}
+
+impl ToSchema for DefaultValue {}
 
 /// Reads a request. Faults do not stop it: they are collected, and the values read on are of no use then.
 #[derive(Debug, Default)]
@@ -108,16 +125,11 @@ impl Reader {
     /// The quantity that is meant. One beyond its documented magnitude is a fault.
     pub fn quantity<K: Kind>(&mut self, at: &At<'_>, measure: &Measure<K>) -> K::Quantity {
         let quantity = measure.quantity();
-        let magnitude = quantity.si().abs();
-        let is_within = magnitude <= K::LARGEST && (magnitude == 0.0 || magnitude >= SMALLEST);
-        if !is_within {
-            let detail = format!(
-                "must not be above {:e} in magnitude in coherent SI units, and 0 or at least {SMALLEST:e}",
-                K::LARGEST
-            );
-            self.fault(at, FaultCode::OutOfRange, detail);
-        } else if K::DIMENSION == Dimension::Temperature && quantity.si() < 0.0 {
+        let accepted = Measure::<K>::accepted();
+        if K::DIMENSION == Dimension::Temperature && quantity.si() < 0.0 {
             self.fault(at, FaultCode::OutOfRange, "must not lie below absolute zero");
+        } else if !accepted.contains(quantity.si()) {
+            self.fault(at, FaultCode::OutOfRange, format!("must be {}", accepted.text()));
         }
         quantity
     }
@@ -149,16 +161,21 @@ impl Reader {
 
     /// A pure ratio, or its default, which goes on record.
     pub fn ratio(&mut self, at: &At<'_>, given: Option<f64>, default: f64) -> f64 {
-        given.unwrap_or_else(|| {
+        let Some(ratio) = given else {
             self.record(at, DefaultValue::Number(Finite(default)), None);
-            default
-        })
+            return default;
+        };
+        let accepted = magnitude::of(Dimension::Ratio);
+        if !accepted.contains(ratio) {
+            self.fault(at, FaultCode::OutOfRange, format!("must be {}", accepted.text()));
+        }
+        ratio
     }
 
     /// A count, or its default, which goes on record.
     pub fn count(&mut self, at: &At<'_>, given: Option<u32>, default: u32) -> u32 {
         given.unwrap_or_else(|| {
-            self.record(at, DefaultValue::Number(Finite(f64::from(default))), None);
+            self.record(at, DefaultValue::Count(default), None);
             default
         })
     }

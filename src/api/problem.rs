@@ -8,6 +8,7 @@ use serde::Serialize;
 use utoipa::openapi::{RefOr, Schema};
 use utoipa::{PartialSchema, ToSchema};
 
+use super::error_code::ErrorCode;
 pub use super::problem_kind::ProblemKind;
 
 /// The media type of every failure.
@@ -26,7 +27,7 @@ pub struct ErrorItem {
     #[schema(example = "#/pad/outer_radius")]
     pub pointer: String,
     /// Why, for programs.
-    #[schema(value_type = String, example = "not_above_inner_radius")]
+    #[schema(value_type = ErrorCode)]
     pub code: &'static str,
     /// Why, for people.
     pub detail: String,

@@ -13,7 +13,7 @@ use super::pointer;
 use super::problem::{ErrorItem, Problem};
 use crate::calc::fault::Faults;
 use crate::calc::finding::{
-    CheckCode, Finding, Notice, Remarks, Severity, Subject, WarningCode as Code,
+    Caution, CheckCode, Finding, Notice, Remarks, Severity, Subject, WarningCode as Code,
 };
 use crate::calc::friction::FrictionCase as Case;
 use crate::calc::method::Method;
@@ -129,13 +129,36 @@ pub struct Warning {
     pub detail: String,
 }
 
+/// Which caution, for programs. A closed set.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[serde(transparent)]
+pub struct CautionCode(&'static str);
+
+impl PartialSchema for CautionCode {
+    fn schema() -> RefOr<Schema> {
+        ObjectBuilder::new()
+            .schema_type(Type::String)
+            .enum_values(Some(Caution::ALL.iter().map(|caution| caution.code())))
+            .description(Some("Which caution, for programs. A closed set."))
+            .into()
+    }
+}
+
+impl ToSchema for CautionCode {}
+
 /// A caution that travels with the answer.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize, ToSchema)]
 pub struct CautionText {
     /// Which, for programs.
-    pub code: &'static str,
+    pub code: CautionCode,
     /// Its words, to be shown to people.
     pub text: &'static str,
+}
+
+impl From<Caution> for CautionText {
+    fn from(caution: Caution) -> Self {
+        Self { code: CautionCode(caution.code()), text: caution.text() }
+    }
 }
 
 /// How the answer was found.
@@ -221,10 +244,7 @@ impl Recorded<'_> {
 /// The cautions of an answer.
 #[must_use]
 pub fn cautions(remarks: &Remarks) -> Vec<CautionText> {
-    remarks
-        .cautions()
-        .map(|caution| CautionText { code: caution.code(), text: caution.text() })
-        .collect()
+    remarks.cautions().map(CautionText::from).collect()
 }
 
 /// The pointer of member names joined by `/`.

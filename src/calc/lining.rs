@@ -3,7 +3,7 @@
 use super::fault::{FaultCode, Faults};
 use super::friction::Friction;
 use super::heat::substance::Substance;
-use super::method::Provenance;
+use super::method::{Method, Provenance};
 use super::quantity::{
     EnergyFlux, MassDensity, PowerFlux, Pressure, PressureVelocity, Si, SpecificHeatCapacity,
     SpecificWear, ThermalConductivity, ThermodynamicTemperature, Velocity,
@@ -30,6 +30,9 @@ method_sheet! {
         worked: "factor 1 at 100 degC and 0.7 at 400 degC: 0.85 at 250 degC",
     }
 }
+
+/// The sheets of this file.
+pub static METHODS: &[&Method] = &[&FADE];
 
 /// Who set a limit.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]

@@ -18,6 +18,12 @@ impl Provenance {
             Self::Memory => "memory",
         }
     }
+
+    /// The provenance with this name.
+    #[must_use]
+    pub fn named(name: &str) -> Option<Self> {
+        [Self::Seen, Self::Memory].into_iter().find(|known| known.as_str() == name)
+    }
 }
 
 /// A symbol of an equation.

@@ -14,6 +14,7 @@ pub mod heat;
 pub mod lining;
 pub mod machine;
 pub mod method;
+pub mod method_index;
 pub mod motion;
 pub mod pad;
 pub mod pressure;

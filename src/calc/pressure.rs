@@ -28,6 +28,9 @@ method_sheet! {
     }
 }
 
+/// The sheets of this file.
+pub static METHODS: &[&Method] = &[&FRICTION_TORQUE];
+
 /// How the pressure between pad and disc depends on the radius.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default)]
 pub enum PressureDistribution {

@@ -4,9 +4,12 @@ use std::sync::LazyLock;
 
 use serde::Deserialize;
 
+use super::nearest::nearest;
+pub use super::printed_curve::CurveForm;
+use super::printed_curve::{Printed, PrintedCurve, sentence};
 use crate::calc::disc::{CatalogOrigin, DiscMaterial};
 use crate::calc::fault::Faults;
-use crate::calc::heat::property::{Conductivity, Curve, Piece, Pole, SpecificHeat};
+use crate::calc::heat::property::{Conductivity, SpecificHeat};
 use crate::calc::method::Provenance;
 use crate::calc::quantity::{MassDensity, Si, ThermodynamicTemperature, ZERO_CELSIUS};
 
@@ -18,9 +21,6 @@ static ROWS: LazyLock<Vec<DiscMaterialRow>> = LazyLock::new(|| parse(TEXT).unwra
 /// Members that a row may hold.
 const MEMBERS: [&str; 5] =
     ["density", "specific_heat", "conductivity", "emissivity", "max_temperature"];
-
-/// How alike an identifier must be to be proposed instead of an unknown one, from 0 to 1.
-const ALIKE: f64 = 0.75;
 
 /// One material of the catalog.
 #[derive(Debug, Clone, PartialEq)]
@@ -35,6 +35,10 @@ pub struct DiscMaterialRow {
     pub provenance: Provenance,
     /// What to know about them.
     pub note: String,
+    /// How the specific heat is printed.
+    pub specific_heat_form: CurveForm,
+    /// How the conductivity is printed.
+    pub conductivity_form: CurveForm,
     /// The material itself.
     pub material: DiscMaterial,
 }
@@ -54,11 +58,7 @@ pub fn find(id: &str) -> Option<&'static DiscMaterialRow> {
 /// The identifier most like `id`, if one is much like it.
 #[must_use]
 pub fn closest(id: &str) -> Option<&'static str> {
-    let alike = |row: &'static DiscMaterialRow| {
-        (strsim::normalized_damerau_levenshtein(id, &row.id), row.id.as_str())
-    };
-    let candidates = all().iter().map(alike).filter(|(alike, _)| *alike >= ALIKE);
-    candidates.max_by(|one, other| one.0.total_cmp(&other.0)).map(|(_, id)| id)
+    nearest(id, all().iter().map(|row| row.id.as_str()))
 }
 
 /// Reads a table of disc materials.
@@ -95,40 +95,6 @@ struct Row {
     max_temperature: Option<Printed>,
 }
 
-#[derive(Deserialize)]
-#[serde(deny_unknown_fields)]
-struct Printed {
-    value: f64,
-    unit: String,
-}
-
-#[derive(Deserialize)]
-#[serde(deny_unknown_fields)]
-struct PrintedCurve {
-    unit: String,
-    value: Option<f64>,
-    table: Option<Vec<(f64, f64)>>,
-    mean: Option<Vec<(f64, f64)>>,
-    mean_from: Option<f64>,
-    pieces: Option<Vec<PrintedPiece>>,
-}
-
-#[derive(Deserialize)]
-#[serde(deny_unknown_fields)]
-struct PrintedPiece {
-    from: f64,
-    to: f64,
-    polynomial: Vec<f64>,
-    pole: Option<PrintedPole>,
-}
-
-#[derive(Deserialize)]
-#[serde(deny_unknown_fields)]
-struct PrintedPole {
-    factor: f64,
-    at: f64,
-}
-
 impl Row {
     fn read(self) -> Result<DiscMaterialRow, String> {
         let id = self.id.clone();
@@ -136,14 +102,18 @@ impl Row {
     }
 
     fn checked(self) -> Result<DiscMaterialRow, String> {
-        let provenance = match self.provenance.as_str() {
-            "seen" => Provenance::Seen,
-            "memory" => Provenance::Memory,
-            other => return Err(format!("unknown provenance {other}")),
-        };
-        let material = self.material(provenance)?;
-        let Self { id, name, source, note, .. } = self;
-        Ok(DiscMaterialRow { id, name, source, provenance, note, material })
+        let provenance = Provenance::named(&self.provenance)
+            .ok_or_else(|| format!("unknown provenance {}", self.provenance))?;
+        Ok(DiscMaterialRow {
+            material: self.material(provenance)?,
+            specific_heat_form: self.specific_heat.form(),
+            conductivity_form: self.conductivity.form(),
+            id: self.id,
+            name: self.name,
+            source: self.source,
+            provenance,
+            note: self.note,
+        })
     }
 
     fn material(&self, provenance: Provenance) -> Result<DiscMaterial, String> {
@@ -191,49 +161,4 @@ impl Row {
             other => MEMBERS.contains(&other),
         }
     }
-}
-
-impl Printed {
-    fn read(&self, unit: &str) -> Result<f64, String> {
-        same_unit(&self.unit, unit).map(|()| self.value)
-    }
-}
-
-impl PrintedCurve {
-    fn read(&self, unit: &str) -> Result<Curve, String> {
-        same_unit(&self.unit, unit)?;
-        let curve = match (self.value, &self.table, &self.mean, self.mean_from, &self.pieces) {
-            (Some(value), None, None, None, None) => Curve::constant(value),
-            (None, Some(points), None, None, None) => Curve::table(points),
-            (None, None, Some(points), Some(base), None) => Curve::mean_from(base, points),
-            (None, None, None, None, Some(pieces)) => {
-                let pieces: Result<_, String> = pieces.iter().map(PrintedPiece::read).collect();
-                Curve::pieces(pieces?)
-            }
-            _ => return Err("needs exactly one of value, table, mean and pieces".to_owned()),
-        };
-        curve.map_err(|faults| sentence(&faults))
-    }
-}
-
-impl PrintedPiece {
-    fn read(&self) -> Result<Piece, String> {
-        let mut polynomial = [0.0; 4];
-        if self.polynomial.len() > polynomial.len() {
-            return Err("a polynomial has at most four coefficients".to_owned());
-        }
-        polynomial.iter_mut().zip(&self.polynomial).for_each(|(place, given)| *place = *given);
-        let pole = self.pole.as_ref().map(|pole| Pole { factor: pole.factor, at: pole.at });
-        Ok(Piece { from: self.from, to: self.to, polynomial, pole })
-    }
-}
-
-fn same_unit(printed: &str, expected: &str) -> Result<(), String> {
-    let same = printed == expected;
-    same.then_some(()).ok_or_else(|| format!("unit {printed} where {expected} is read"))
-}
-
-fn sentence(faults: &Faults) -> String {
-    let words = |fault: &crate::calc::fault::Fault| format!("{} {}", fault.member, fault.detail);
-    faults.as_slice().iter().map(words).collect::<Vec<_>>().join("; ")
 }

@@ -9,6 +9,7 @@ use serde::Deserialize;
 
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::friction::Friction;
+use crate::calc::method::Provenance;
 
 /// The table's text.
 pub const TEXT: &str = include_str!("friction_codes.toml");
@@ -24,6 +25,14 @@ pub struct FrictionLetters {
     /// The letters, from low to high friction.
     #[serde(rename = "letter")]
     pub letters: Vec<FrictionLetter>,
+}
+
+impl FrictionLetters {
+    /// How it was found; what is not marked seen counts as remembered.
+    #[must_use]
+    pub fn found(&self) -> Provenance {
+        Provenance::named(&self.provenance).unwrap_or(Provenance::Memory)
+    }
 }
 
 /// A letter and the friction it stands for.

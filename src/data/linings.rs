@@ -5,11 +5,12 @@ use std::sync::LazyLock;
 
 use serde::Deserialize;
 
-use super::printed::{Printed, Scale, number};
+use super::nearest::nearest;
+use super::printed::{Printed, number};
 use crate::calc::friction::Friction;
 use crate::calc::lining::{Limit, Lining, LiningParts, Origin};
 use crate::calc::method::Provenance;
-use crate::calc::quantity::Si;
+use crate::calc::quantity::{Dimension, Si};
 
 /// The table's text.
 pub const TEXT: &str = include_str!("linings.toml");
@@ -58,17 +59,10 @@ pub fn find(id: &str) -> Option<&'static LiningRow> {
     all().iter().find(|row| row.id == id)
 }
 
-/// The identifier that looks most like `id`, if one does: for "did you mean".
+/// The identifier most like `id`, if one is much like it.
 #[must_use]
 pub fn closest(id: &str) -> Option<&'static str> {
-    // Below this similarity a suggestion confuses more than it helps.
-    const ALIKE: f64 = 0.8;
-    all()
-        .iter()
-        .map(|row| (strsim::jaro_winkler(id, &row.id), row.id.as_str()))
-        .filter(|(likeness, _)| *likeness >= ALIKE)
-        .max_by(|(first, _), (second, _)| first.total_cmp(second))
-        .map(|(_, id)| id)
+    nearest(id, all().iter().map(|row| row.id.as_str()))
 }
 
 /// Reads a table.
@@ -124,11 +118,8 @@ struct Entry {
 impl Entry {
     fn into_row(self, sources: &BTreeMap<String, Source>) -> Result<LiningRow, String> {
         let source = sources.get(&self.source).ok_or("its source is not listed")?;
-        let provenance = match source.provenance.as_str() {
-            "seen" => Provenance::Seen,
-            "memory" => Provenance::Memory,
-            _ => return Err("provenance must be seen or memory".to_owned()),
-        };
+        let provenance =
+            Provenance::named(&source.provenance).ok_or("provenance must be seen or memory")?;
         let parts = self.parts(provenance)?;
         Ok(LiningRow {
             printed: self.printed(),
@@ -145,21 +136,24 @@ impl Entry {
 
     fn parts(&self, provenance: Provenance) -> Result<LiningParts, String> {
         Ok(LiningParts {
-            max_pressure: limit(self.max_pressure.as_ref(), Scale::Pressure)?,
-            max_rubbing_speed: limit(self.max_rubbing_speed.as_ref(), Scale::Speed)?,
+            max_pressure: limit(self.max_pressure.as_ref(), Dimension::Pressure)?,
+            max_rubbing_speed: limit(self.max_rubbing_speed.as_ref(), Dimension::Speed)?,
             max_pressure_velocity: limit(
                 self.max_pressure_velocity.as_ref(),
-                Scale::PressureVelocity,
+                Dimension::PressureVelocity,
             )?,
-            max_power_flux: limit(self.max_power_flux.as_ref(), Scale::PowerFlux)?,
+            max_power_flux: limit(self.max_power_flux.as_ref(), Dimension::PowerFlux)?,
             max_temperature_continuous: limit(
                 self.max_temperature_continuous.as_ref(),
-                Scale::Temperature,
+                Dimension::Temperature,
             )?,
-            max_temperature_peak: limit(self.max_temperature_peak.as_ref(), Scale::Temperature)?,
-            conductivity: single(self.conductivity.as_ref(), Scale::Conductivity)?,
-            density: single(self.density.as_ref(), Scale::Density)?,
-            specific_heat: single(self.specific_heat.as_ref(), Scale::SpecificHeat)?,
+            max_temperature_peak: limit(
+                self.max_temperature_peak.as_ref(),
+                Dimension::Temperature,
+            )?,
+            conductivity: single(self.conductivity.as_ref(), Dimension::ThermalConductivity)?,
+            density: single(self.density.as_ref(), Dimension::Density)?,
+            specific_heat: single(self.specific_heat.as_ref(), Dimension::SpecificHeat)?,
             origin: Origin {
                 catalog_id: Some(self.id.clone()),
                 provenance: Some(provenance),
@@ -190,14 +184,14 @@ impl Entry {
 }
 
 /// A limit: of a range the lower bound.
-fn limit<Q: Si>(text: Option<&String>, scale: Scale) -> Result<Option<Limit<Q>>, String> {
-    let lower = text.map(|text| Printed::parse(text)?.lower(scale)).transpose()?;
+fn limit<Q: Si>(text: Option<&String>, dimension: Dimension) -> Result<Option<Limit<Q>>, String> {
+    let lower = text.map(|text| Printed::parse(text)?.lower(dimension)).transpose()?;
     Ok(lower.map(|si| Limit::by_catalog(Q::from_si(si))))
 }
 
 /// A property: a range would leave open which value to take.
-fn single<Q: Si>(text: Option<&String>, scale: Scale) -> Result<Option<Q>, String> {
-    let value = text.map(|text| Printed::parse(text)?.single(scale)).transpose()?;
+fn single<Q: Si>(text: Option<&String>, dimension: Dimension) -> Result<Option<Q>, String> {
+    let value = text.map(|text| Printed::parse(text)?.single(dimension)).transpose()?;
     Ok(value.map(Q::from_si))
 }
 

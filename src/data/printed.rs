@@ -1,36 +1,10 @@
 //! Values as a source prints them: a number or a range, and a unit.
 
-/// What a printed value measures.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(super) enum Scale {
-    Pressure,
-    Speed,
-    PressureVelocity,
-    PowerFlux,
-    Temperature,
-    Conductivity,
-    Density,
-    SpecificHeat,
-}
+use super::units;
+use crate::calc::quantity::Dimension;
 
-/// A unit as (symbol, scale, factor, offset): SI value = (number + offset) × factor. Factors are exact, or
-/// rounded once from lb = 0.45359237 kg, g = 9.80665 m/s², in = 0.0254 m, ft = 0.3048 m.
-type Unit = (&'static str, Scale, f64, f64);
-
-const UNITS: &[Unit] = &[
-    ("psi", Scale::Pressure, 6_894.757_293_168_361, 0.0),
-    ("kPa", Scale::Pressure, 1e3, 0.0),
-    ("MPa", Scale::Pressure, 1e6, 0.0),
-    ("ft/min", Scale::Speed, 0.005_08, 0.0),
-    ("psi.ft/min", Scale::PressureVelocity, 35.025_367_049_295_276, 0.0),
-    ("W/mm2", Scale::PowerFlux, 1e6, 0.0),
-    ("degF", Scale::Temperature, 5.0 / 9.0, 459.67),
-    ("degC", Scale::Temperature, 1.0, 273.15),
-    ("W/(m.K)", Scale::Conductivity, 1.0, 0.0),
-    ("J/(kg.K)", Scale::SpecificHeat, 1.0, 0.0),
-    // Specific gravity, against water of 1000 kg/m³.
-    ("SG", Scale::Density, 1e3, 0.0),
-];
+/// Density of water that a specific gravity refers to, kg/m³.
+const WATER: f64 = 1000.0;
 
 /// A printed value.
 #[derive(Debug, Clone, PartialEq)]
@@ -55,16 +29,19 @@ impl<'text> Printed<'text> {
     }
 
     /// The value, or the lower bound of the range, in SI.
-    pub(super) fn lower(&self, scale: Scale) -> Result<f64, String> {
-        let unit = UNITS.iter().find(|(symbol, of, ..)| *symbol == self.unit && *of == scale);
-        let (.., factor, offset) = unit.ok_or_else(|| format!("{}: not its unit", self.unit))?;
-        Ok((self.lower + offset) * factor)
+    pub(super) fn lower(&self, dimension: Dimension) -> Result<f64, String> {
+        if self.unit == "SG" && dimension == Dimension::Density {
+            return Ok(self.lower * WATER);
+        }
+        let unit = units::find(dimension, self.unit);
+        unit.map(|unit| unit.to_si(self.lower))
+            .ok_or_else(|| format!("{}: not its unit", self.unit))
     }
 
     /// The value in SI; a range is refused.
-    pub(super) fn single(&self, scale: Scale) -> Result<f64, String> {
+    pub(super) fn single(&self, dimension: Dimension) -> Result<f64, String> {
         match self.upper {
-            None => self.lower(scale),
+            None => self.lower(dimension),
             Some(upper) => Err(format!("{}-{upper}: one value is needed", self.lower)),
         }
     }

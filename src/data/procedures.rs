@@ -4,6 +4,7 @@ use std::sync::LazyLock;
 
 use serde::Deserialize;
 
+use super::nearest::nearest;
 use super::units;
 use crate::calc::method::Provenance;
 use crate::calc::quantity::Dimension;
@@ -80,13 +81,10 @@ pub fn find(id: &str) -> Option<&'static ProcedureRow> {
     ROWS.iter().find(|row| row.id == id)
 }
 
-/// The identifier that looks most like `id`, if one does.
+/// The identifier most like `id`, if one is much like it.
 #[must_use]
 pub fn closest(id: &str) -> Option<&'static str> {
-    const ALIKE: f64 = 0.8;
-    let likeness = all().iter().map(|row| (strsim::jaro_winkler(id, &row.id), row.id.as_str()));
-    let alike = likeness.filter(|(likeness, _)| *likeness >= ALIKE);
-    alike.max_by(|(first, _), (second, _)| first.total_cmp(second)).map(|(_, id)| id)
+    nearest(id, all().iter().map(|row| row.id.as_str()))
 }
 
 /// Reads the table.
@@ -140,11 +138,8 @@ enum StepEntry {
 
 impl Entry {
     fn into_row(self) -> Result<ProcedureRow, String> {
-        let provenance = match self.provenance.as_str() {
-            "seen" => Provenance::Seen,
-            "memory" => Provenance::Memory,
-            _ => return Err("provenance must be seen or memory".to_owned()),
-        };
+        let provenance =
+            Provenance::named(&self.provenance).ok_or("provenance must be seen or memory")?;
         let steps = self.step.into_iter().map(StepEntry::into_step).collect::<Result<_, _>>()?;
         let Self { id, name, source, note, .. } = self;
         Ok(ProcedureRow { id, name, source, provenance, note, steps })

@@ -1,6 +1,14 @@
 //! The service seen through its front door.
 
 mod accept;
+mod catalog;
+mod charts;
+mod examples;
 mod frame;
+mod measure;
 mod openapi;
+mod parse;
 mod problems;
+mod properties;
+mod readme;
+mod v1;

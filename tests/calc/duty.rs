@@ -309,6 +309,18 @@ fn a_descent_that_the_brakes_cannot_hold_ends_the_duty() {
     assert_close(outcome.duration, 5.0, 1e-12);
 }
 
+/// The brake is too weak when cold, and no delay comes before it: that is a failure whether friction fades or not.
+#[test]
+fn a_brake_too_weak_from_the_start_ends_the_duty() {
+    let situation = Situation { grade: Angle::from_si(-0.3), ..Situation::level() };
+    for fade in [Vec::new(), no_change()] {
+        let event = Event::Stop { situation, demand: demand(20.0, 0.0, 0.0) };
+        let outcome = run(&duty(brake(200.0, None, plain_material(), fade), vec![event], 1));
+        assert_eq!(outcome.first_failure.unwrap().reason, FailureReason::FinalSpeedNotReached);
+        assert!(outcome.longest_stop.is_none());
+    }
+}
+
 /// Friction that fades to nearly nothing on a slope: the stop is not finished.
 #[test]
 fn a_brake_that_fades_away_ends_the_duty() {

@@ -34,6 +34,7 @@ fn body(outside: f64, resistance: f64) -> Reduced {
         outside,
         resistance,
         drag: 0.0,
+        reversal: 1.0,
         tires: None,
     }
 }
@@ -51,7 +52,7 @@ prop_compose! {
         let system = Reduced {
             coordinate: Coordinate::Way, mass, rotating, translating: mass, outside: -weight * grade.sin(),
             resistance: rolling * normal_force, drag: 0.0,
-            tires: Some(Tires { normal_force, adhesion, wheelbase: Some(wheelbase) }),
+            reversal: 1.0, tires: Some(Tires { normal_force, adhesion, wheelbase: Some(wheelbase) }),
         };
         Forces::new(system, [demand.0 * weight, demand.1 * weight])
     }
@@ -168,7 +169,7 @@ proptest! {
             let normal_force = 1000.0 * GRAVITY * grade.cos();
             let system = Reduced {
                 outside: -1000.0 * GRAVITY * grade.sin(),
-                tires: Some(Tires { normal_force, adhesion: Some(adhesion), wheelbase: None }),
+                reversal: 1.0, tires: Some(Tires { normal_force, adhesion: Some(adhesion), wheelbase: None }),
                 ..body(0.0, 0.0)
             };
             let forces = Forces::new(system, [(0.1 + share) * 1000.0 * GRAVITY, 0.0]);

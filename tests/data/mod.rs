@@ -1,2 +1,4 @@
 mod disc_materials;
+mod nearest;
 mod procedures;
+mod units;

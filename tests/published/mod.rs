@@ -1,5 +1,15 @@
+mod actuation;
+mod chain;
 mod cooling;
+mod decelerations;
+mod duty;
+mod examples;
 mod heat;
 mod linings;
 mod motion;
 mod pads;
+mod repeated;
+mod rules;
+mod sheets;
+mod stops;
+mod units;

@@ -30,6 +30,7 @@ fn point_mass(deceleration: f64, outside: f64) -> Forces {
         outside,
         resistance: 0.0,
         drag: 0.0,
+        reversal: 1.0,
         tires: None,
     };
     Forces::new(system, [deceleration, 0.0])

@@ -1,3 +1,4 @@
 //! The program as a process.
 
+mod heavy;
 mod process;

@@ -22,13 +22,13 @@ fn run(arguments: &[&str], settings: &[(&str, &str)]) -> Output {
 }
 
 /// A running service; it does not outlive the test.
-struct Service {
+pub(super) struct Service {
     child: Child,
-    address: String,
+    pub(super) address: String,
 }
 
 impl Service {
-    fn start(settings: &[(&str, &str)]) -> Self {
+    pub(super) fn start(settings: &[(&str, &str)]) -> Self {
         let mut command = program(&[], settings);
         command.env("BRAKEWRIGHT_LISTEN", "127.0.0.1:0");
         let mut child = command.stdout(Stdio::piped()).stderr(Stdio::piped()).spawn().unwrap();
@@ -180,8 +180,17 @@ fn a_wrong_setting_stops_the_start_with_a_sentence() {
         let said = String::from_utf8_lossy(&output.stderr);
         assert_eq!(output.status.code(), Some(2), "{name}={value}: {said}");
         assert!(said.contains(sentence), "{name}={value}: {said}");
+        assert!(said.contains(name), "{name}={value}: {said}");
         assert!(output.stdout.is_empty());
     }
+}
+
+#[test]
+fn a_wrong_option_is_not_blamed_on_the_environment() {
+    let output = run(&["--listen=everywhere"], &[("BRAKEWRIGHT_LISTEN", "127.0.0.1:0")]);
+    let said = String::from_utf8_lossy(&output.stderr);
+    assert_eq!(output.status.code(), Some(2), "{said}");
+    assert!(said.contains("--listen") && !said.contains("BRAKEWRIGHT_LISTEN"), "{said}");
 }
 
 #[test]

@@ -6,14 +6,11 @@ use jsonschema::paths::LocationSegment;
 use serde_json::Value;
 
 use super::schema::PUBLISHED;
+use crate::api::error_code::ShapeCode;
 use crate::api::pointer;
 use crate::api::problem::{ErrorItem, MOST_ERRORS, Problem};
-
-/// Names longer than this are neither repeated in an answer nor compared with the known ones.
-const LONGEST_NAME: usize = 64; // bytes
-
-/// How alike two names must be, from 0 to 1, for one to be suggested in place of the other.
-const ALIKE: f64 = 0.6;
+use crate::calc::fault::FaultCode;
+use crate::data::nearest::{LONGEST, nearest};
 
 /// The faults found: all counted, the first ones kept.
 #[derive(Debug, Default)]
@@ -77,29 +74,16 @@ fn unknown_member(violation: &ValidationError<'_>, schema: &Value, name: &str) -
     let place = parent(violation, schema).get("properties").and_then(Value::as_object);
     let known: Vec<&str> =
         place.into_iter().flat_map(|place| place.keys().map(String::as_str)).collect();
-    let advice = match nearest(name, &known) {
+    let advice = match nearest(name, known.iter().copied()) {
         Some(meant) => format!("did you mean `{meant}`?"),
         None if known.is_empty() => "no members are known here".to_owned(),
         None => format!("known here: {}", known.join(", ")),
     };
     ErrorItem {
         pointer: pointer_below(violation, Some(name)),
-        code: "unknown_member",
+        code: ShapeCode::UnknownMember.as_str(),
         detail: format!("`{}` is not a member of this object; {advice}", shortened(name)),
     }
-}
-
-/// The known name that a mistyped one most likely means.
-fn nearest<'a>(name: &str, known: &[&'a str]) -> Option<&'a str> {
-    if name.len() > LONGEST_NAME {
-        return None;
-    }
-    let name = name.to_lowercase();
-    let likeness =
-        |other: &str| strsim::normalized_damerau_levenshtein(&name, &other.to_lowercase());
-    let scored = known.iter().map(|other| (likeness(other), *other));
-    let best = scored.max_by(|one, other| one.0.total_cmp(&other.0))?;
-    (best.0 >= ALIKE).then_some(best.1)
 }
 
 /// The fault of every violation that concerns one value.
@@ -109,27 +93,38 @@ fn fault(violation: &ValidationError<'_>, schema: &Value) -> ErrorItem {
         let name = property.as_str().unwrap_or_default();
         return ErrorItem {
             pointer: pointer_below(violation, Some(name)),
-            code: "missing_member",
+            code: ShapeCode::MissingMember.as_str(),
             detail: format!("`{name}` is required"),
         };
     }
     let value: &Value = violation.instance();
     let (code, detail) = match violation.kind().keyword() {
-        _ if value.is_null() => {
-            ("null_not_allowed", "null is not a value; leave the member out".to_owned())
+        _ if value.is_null() => (
+            ShapeCode::NullNotAllowed.as_str(),
+            "null is not a value; leave the member out".to_owned(),
+        ),
+        "type" => {
+            (ShapeCode::WrongType.as_str(), wrong_type(parent(violation, schema), limit, value))
         }
-        "type" => ("wrong_type", wrong_type(parent(violation, schema), limit, value)),
         "enum" | "const" => wrong_choice(violation, schema, limit),
-        "minItems" => ("wrong_count", format!("must have at least {limit} items")),
-        "maxItems" => ("wrong_count", format!("must have at most {limit} items")),
-        "minimum" => ("out_of_range", format!("must be at least {limit}")),
-        "maximum" => ("out_of_range", format!("must be at most {limit}")),
-        "exclusiveMinimum" => ("out_of_range", format!("must be above {limit}")),
-        "exclusiveMaximum" => ("out_of_range", format!("must be below {limit}")),
-        "minLength" => ("out_of_range", format!("must have at least {limit} characters")),
-        "maxLength" => ("out_of_range", format!("must have at most {limit} characters")),
-        "oneOf" | "anyOf" => ("wrong_type", "fits none of the forms allowed here".to_owned()),
-        keyword => ("invalid_value", format!("breaks the rule `{keyword}` of the schema")),
+        "minItems" => (FaultCode::WrongCount.as_str(), format!("must have at least {limit} items")),
+        "maxItems" => (FaultCode::WrongCount.as_str(), format!("must have at most {limit} items")),
+        "minimum" => (FaultCode::OutOfRange.as_str(), format!("must be at least {limit}")),
+        "maximum" => (FaultCode::OutOfRange.as_str(), format!("must be at most {limit}")),
+        "exclusiveMinimum" => (FaultCode::OutOfRange.as_str(), format!("must be above {limit}")),
+        "exclusiveMaximum" => (FaultCode::OutOfRange.as_str(), format!("must be below {limit}")),
+        "minLength" => {
+            (FaultCode::OutOfRange.as_str(), format!("must have at least {limit} characters"))
+        }
+        "maxLength" => {
+            (FaultCode::OutOfRange.as_str(), format!("must have at most {limit} characters"))
+        }
+        "oneOf" | "anyOf" => {
+            (ShapeCode::WrongType.as_str(), "fits none of the forms allowed here".to_owned())
+        }
+        keyword => {
+            (ShapeCode::InvalidValue.as_str(), format!("breaks the rule `{keyword}` of the schema"))
+        }
     };
     ErrorItem { pointer: pointer_below(violation, None), code, detail }
 }
@@ -157,12 +152,19 @@ fn wrong_choice(
     let value: &Value = violation.instance();
     let Some(text) = value.as_str() else {
         let listed = texts.join(", ");
-        return ("wrong_type", format!("must be one of {listed}, not {}", name_of(value)));
+        return (
+            ShapeCode::WrongType.as_str(),
+            format!("must be one of {listed}, not {}", name_of(value)),
+        );
     };
     let is_unit = matches!(violation.instance_path().segments().last(),
         Some(LocationSegment::Property(name)) if name == "unit");
-    let (code, noun) = if is_unit { ("unknown_unit", "unit") } else { ("unknown_value", "value") };
-    let advice = match nearest(text, &texts) {
+    let (code, noun) = if is_unit {
+        (ShapeCode::UnknownUnit.as_str(), "unit")
+    } else {
+        (ShapeCode::UnknownValue.as_str(), "value")
+    };
+    let advice = match nearest(text, texts.iter().copied()) {
         Some(meant) if texts.len() > 1 => format!("did you mean `{meant}`? "),
         _ => String::new(),
     };
@@ -185,10 +187,10 @@ fn pointer_below(violation: &ValidationError<'_>, member: Option<&str>) -> Strin
 }
 
 fn shortened(name: &str) -> String {
-    if name.len() <= LONGEST_NAME {
+    if name.len() <= LONGEST {
         return name.to_owned();
     }
-    name.chars().take(LONGEST_NAME / 4).chain("...".chars()).collect()
+    name.chars().take(LONGEST / 4).chain("...".chars()).collect()
 }
 
 fn type_name(keyword: &str) -> &str {

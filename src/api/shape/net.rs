@@ -5,8 +5,10 @@ use serde_json::Value;
 use serde_json::error::Category;
 use serde_path_to_error::{Path, Segment};
 
+use crate::api::error_code::ShapeCode;
 use crate::api::pointer;
 use crate::api::problem::{ErrorItem, Problem, ProblemKind};
+use crate::calc::fault::FaultCode;
 
 /// Reads a body as JSON of any shape.
 pub(super) fn parse(body: &[u8]) -> Result<Value, Problem> {
@@ -25,7 +27,10 @@ fn unreadable(error: &serde_json::Error, pointer: String) -> Problem {
     let reason = without_place(error);
     if reason == "number out of range" {
         let detail = "the number is too large for a double".to_owned();
-        return Problem::invalid(vec![ErrorItem { pointer, code: "out_of_range", detail }], 1);
+        return Problem::invalid(
+            vec![ErrorItem { pointer, code: FaultCode::OutOfRange.as_str(), detail }],
+            1,
+        );
     }
     let reason = match reason.as_str() {
         "recursion limit exceeded" => "objects and lists are nested deeper than 128 levels",
@@ -43,7 +48,11 @@ pub(super) fn reason<T: DeserializeOwned>(body: &[u8]) -> Problem {
     };
     let (pointer, inner) = (pointer_of(error.path()), error.into_inner());
     debug_assert_eq!(inner.classify(), Category::Data, "the text has been parsed before");
-    let item = ErrorItem { pointer, code: "invalid_value", detail: without_place(&inner) };
+    let item = ErrorItem {
+        pointer,
+        code: ShapeCode::InvalidValue.as_str(),
+        detail: without_place(&inner),
+    };
     Problem::invalid(vec![item], 1)
 }
 

@@ -117,6 +117,8 @@ impl ActuationForceRequest {
         let (at, mut reader) = (At::ROOT, Reader::new());
         let brake = self.brake.read(&at.member("brake"), &mut reader);
         let torque = reader.quantity(&at.member("torque"), &self.torque);
+        let actuation = brake.as_ref().and_then(|brake| brake.parts().actuation.as_ref());
+        reader.take(&at, actuation_force::faults(torque, actuation).into_result(()));
         reader.finish(brake.map(|brake| Input { brake, torque }))
     }
 

@@ -1,5 +1,7 @@
 //! `POST /v1/duty-cycle`: temperature, friction and stopping distance through a duty.
 
+use axum::body::Body;
+use axum::http::Response as Reply;
 use serde::{Deserialize, Serialize};
 use utoipa::ToSchema;
 
@@ -7,7 +9,8 @@ use super::block::event::Event;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
 use super::block::stop::stood_in;
-use crate::api::extract::{Answer, Json};
+use crate::api::accept::Negotiated;
+use crate::api::extract::Json;
 use crate::api::heavy::off_thread;
 use crate::api::measure::{
     Angle, AnyAmount, Energy, Finite, Length, ReportUnits, Temperature, Time,
@@ -15,6 +18,8 @@ use crate::api::measure::{
 use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, CautionText, CheckName, FrictionCase, Record, Recorded, Warning};
+use crate::api::render::duty_cycle::{POINTS, chart};
+use crate::api::render::frame::Figures;
 use crate::calc::case::duty_cycle::{
     self, CaseOutcome, Course, FailureReason, Input, Outcome, TrackedOutcome,
 };
@@ -42,7 +47,7 @@ pub struct DutyCycleRequest {
     /// What happens, in order. Speed may jump up between events without time; it falls only in a stop.
     #[schema(min_items = 1, max_items = 1000)]
     pub events: Vec<Event>,
-    /// How often the events happen, 1 if left out; events times repeats must not exceed 20000.
+    /// How often the events happen, 1 if left out; events times repeats must not exceed 20000, and times entries of `fitted` 50000.
     #[schema(nullable = false)]
     pub repeats: Option<u32>,
     /// Temperature of the air, 20 degC if left out.
@@ -241,29 +246,40 @@ pub struct DutyTraceUnits {
 /// points. Once per friction case.
 #[utoipa::path(
     post, path = "/duty-cycle", tag = "Calculations", operation_id = "duty_cycle",
-    responses((status = OK, description = "What the duty comes to.", body = DutyCycleAnswer)),
+    responses((
+        status = OK,
+        description = "What the duty comes to; as a picture: temperature and friction of each brake over time.",
+        content((DutyCycleAnswer = "application/json"), (String = "image/svg+xml")),
+    )),
 )]
 pub(super) async fn duty_cycle(
+    form: Negotiated,
     request: Json<DutyCycleRequest>,
-) -> Result<Answer<DutyCycleAnswer>, Problem> {
-    off_thread(move || request.value.evaluate(&request.body)).await?.map(Answer)
+) -> Result<Reply<Body>, Problem> {
+    off_thread(move || request.value.respond(form, &request.body)).await?
 }
 
 impl DutyCycleRequest {
-    fn evaluate(&self, body: &[u8]) -> Result<DutyCycleAnswer, Problem> {
-        let (input, defaults) = self.read()?;
+    fn respond(&self, form: Negotiated, body: &[u8]) -> Result<Reply<Body>, Problem> {
+        let (mut input, defaults) = self.read()?;
+        if form.is_chart() {
+            input.points.get_or_insert(POINTS);
+        }
         let mut outcome =
             duty_cycle::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
         if self.events.iter().any(|event| matches!(event, Event::Procedure(_))) {
             outcome.remarks.caution(Caution::NotTheTest);
         }
-        Ok(self.answer(body, &input, &outcome, defaults))
+        let answer = self.answer(body, &input, &outcome, defaults);
+        let figures = Figures(self.report_units.unwrap_or_default());
+        Ok(form.render(answer, |answer| chart(figures, &input, &outcome, answer)))
     }
 
     fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {
         let (at, mut reader) = (At::ROOT, Reader::new());
         let machine = self.machine.read(&at.member("machine"), &mut reader);
-        let fitted = Fitted::read_all(&self.fitted, &at.member("fitted"), &mut reader);
+        let is_vehicle = matches!(self.machine, Machine::Vehicle(_));
+        let fitted = Fitted::read_all(&self.fitted, is_vehicle, &at.member("fitted"), &mut reader);
         let at_events = at.member("events");
         let events = self.events.iter().enumerate();
         let events: Vec<_> = events
@@ -414,8 +430,8 @@ impl DutyTrace {
             Coordinate::Angle => Dimension::RotationalSpeed,
         };
         let unit = |dimension| units.unit_of(dimension);
-        let symbol = |dimension| unit(dimension).map_or("1", |unit| unit.symbol);
-        let number = |dimension, si: f64| Finite(unit(dimension).map_or(si, |unit| unit.of_si(si)));
+        let symbol = |dimension| unit(dimension).symbol;
+        let number = |dimension, si: f64| Finite(unit(dimension).of_si(si));
         let moments = course.moments();
         let entries = moments.first().map_or(0, |moment| moment.fitted.len());
         let samples =

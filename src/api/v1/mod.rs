@@ -2,6 +2,7 @@
 
 pub mod actuation_force;
 pub mod block;
+pub mod catalog;
 pub mod duty_cycle;
 pub mod pad_capacity;
 pub mod stop_energy;
@@ -10,12 +11,17 @@ pub mod stopping;
 use utoipa_axum::router::OpenApiRouter;
 use utoipa_axum::routes;
 
+use super::render::pictured;
+
 /// The routes below `/v1`.
 pub(super) fn routes() -> OpenApiRouter {
+    let pictures = OpenApiRouter::default()
+        .routes(routes!(stopping::stopping))
+        .routes(routes!(stop_energy::stop_energy))
+        .routes(routes!(duty_cycle::duty_cycle));
     OpenApiRouter::default()
         .routes(routes!(pad_capacity::pad_capacity))
         .routes(routes!(actuation_force::actuation_force))
-        .routes(routes!(stopping::stopping))
-        .routes(routes!(stop_energy::stop_energy))
-        .routes(routes!(duty_cycle::duty_cycle))
+        .merge(pictured(pictures))
+        .merge(catalog::routes())
 }

@@ -29,6 +29,7 @@ pub struct PadCapacityRequest {
     /// Its friction material.
     pub lining: Lining,
     /// Friction faces, 1 to 1000; 2 if left out: one caliper with two pads.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub faces: Option<u32>,
     /// How the pressure spreads over the pad.
@@ -114,6 +115,7 @@ impl PadCapacityRequest {
         let pressure_distribution =
             PressureDistribution::read(self.pressure_distribution, &at_distribution, &mut reader);
         let clamp_force = reader.optional(&at.member("clamp_force"), self.clamp_force.as_ref());
+        reader.take(&at, pad_capacity::faults(faces, clamp_force).into_result(()));
         let input = pad.zip(lining);
         reader.finish(input.map(|(pad, lining)| Input {
             pad,

@@ -1,5 +1,7 @@
 //! `POST /v1/stop-energy`: what a stop costs.
 
+use axum::body::Body;
+use axum::http::Response as Reply;
 use serde::{Deserialize, Serialize};
 use utoipa::ToSchema;
 
@@ -7,7 +9,8 @@ use super::block::delays::Response;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
 use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
-use crate::api::extract::{Answer, Json};
+use crate::api::accept::Negotiated;
+use crate::api::extract::Json;
 use crate::api::measure::{
     Acceleration, AngularAcceleration, Energy, EnergyFlux, Finite, Force, Grade,
     HeatTransferCoefficient, Power, PowerFlux, ReportUnits, RotationalSpeed, Speed, StopFrequency,
@@ -16,6 +19,8 @@ use crate::api::measure::{
 use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, CautionText, FrictionCase, Record, Recorded, Warning};
+use crate::api::render::frame::Figures;
+use crate::api::render::stop_energy::chart;
 use crate::calc::case::stop_energy::{self, CaseOutcome, Energies, EntryEnergy, Input, Outcome};
 use crate::calc::fault::FaultCode;
 use crate::calc::quantity::Si;
@@ -214,14 +219,19 @@ pub struct FittedEnergy {
 /// its share of the heat, its bulk rise and the peak of its surface. Once per friction case.
 #[utoipa::path(
     post, path = "/stop-energy", tag = "Calculations", operation_id = "stop_energy",
-    responses((status = OK, description = "What the stop costs.", body = StopEnergyAnswer)),
+    responses((
+        status = OK,
+        description = "What the stop costs; as a picture: the temperatures of each disc over time.",
+        content((StopEnergyAnswer = "application/json"), (String = "image/svg+xml")),
+    )),
 )]
 pub(super) async fn stop_energy(
+    form: Negotiated,
     request: Json<StopEnergyRequest>,
-) -> Result<Answer<StopEnergyAnswer>, Problem> {
-    let (input, defaults) = request.value.read()?;
-    let outcome = stop_energy::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
-    Ok(Answer(request.value.answer(&request.body, &input, &outcome, defaults)))
+) -> Result<Reply<Body>, Problem> {
+    let (input, outcome, answer) = request.value.evaluate(&request.body)?;
+    let figures = Figures(request.value.report_units.unwrap_or_default());
+    Ok(form.render(answer, |answer| chart(figures, &input, &outcome, answer)))
 }
 
 impl StopEnergyRequest {
@@ -244,6 +254,13 @@ impl StopEnergyRequest {
                 direction: self.direction,
             },
         }
+    }
+
+    fn evaluate(&self, body: &[u8]) -> Result<(Input, Outcome, StopEnergyAnswer), Problem> {
+        let (input, defaults) = self.read()?;
+        let outcome = stop_energy::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
+        let answer = self.answer(body, &input, &outcome, defaults);
+        Ok((input, outcome, answer))
     }
 
     fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {

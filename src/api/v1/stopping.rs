@@ -1,5 +1,7 @@
 //! `POST /v1/stopping`: how a machine stops.
 
+use axum::body::Body;
+use axum::http::Response as Reply;
 use serde::{Deserialize, Serialize};
 use utoipa::ToSchema;
 
@@ -7,7 +9,8 @@ use super::block::delays::Response;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
 use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
-use crate::api::extract::{Answer, Json};
+use crate::api::accept::Negotiated;
+use crate::api::extract::Json;
 use crate::api::measure::{
     Acceleration, Angle, AngularAcceleration, Finite, Force, Grade, Length, ReportUnits,
     RotationalSpeed, Speed, Time, Torque,
@@ -15,6 +18,8 @@ use crate::api::measure::{
 use crate::api::parse::{At, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, CautionText, FrictionCase, Record, Recorded, Warning};
+use crate::api::render::frame::Figures;
+use crate::api::render::stopping::chart;
 use crate::calc::case::stopping::{self, CaseOutcome, Input, Outcome};
 use crate::calc::fault::FaultCode;
 use crate::calc::motion::{Coordinate, Ending, LimitedBy as Limit, Phase as Part, PhaseTotals};
@@ -76,6 +81,7 @@ pub struct StoppingRequest {
 #[serde(deny_unknown_fields)]
 pub struct TraceRequest {
     /// Points, 2 to 2000, equally spaced in time, both ends included.
+    #[serde(deserialize_with = "crate::api::count::required")]
     pub points: u32,
 }
 
@@ -384,14 +390,19 @@ pub struct TraceUnits {
 /// too.
 #[utoipa::path(
     post, path = "/stopping", tag = "Calculations", operation_id = "stopping",
-    responses((status = OK, description = "How the machine stops.", body = StoppingAnswer)),
+    responses((
+        status = OK,
+        description = "How the machine stops; as a picture: speed and distance over time, with the phases.",
+        content((StoppingAnswer = "application/json"), (String = "image/svg+xml")),
+    )),
 )]
 pub(super) async fn stopping(
+    form: Negotiated,
     request: Json<StoppingRequest>,
-) -> Result<Answer<StoppingAnswer>, Problem> {
-    let (input, defaults) = request.value.read()?;
-    let outcome = stopping::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
-    Ok(Answer(request.value.answer(&request.body, &input, &outcome, defaults)))
+) -> Result<Reply<Body>, Problem> {
+    let (input, outcome, answer) = request.value.evaluate(&request.body)?;
+    let figures = Figures(request.value.report_units.unwrap_or_default());
+    Ok(form.render(answer, |answer| chart(figures, &input, &outcome, answer)))
 }
 
 impl StoppingRequest {
@@ -414,6 +425,13 @@ impl StoppingRequest {
                 direction: self.direction,
             },
         }
+    }
+
+    fn evaluate(&self, body: &[u8]) -> Result<(Input, Outcome, StoppingAnswer), Problem> {
+        let (input, defaults) = self.read()?;
+        let outcome = stopping::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
+        let answer = self.answer(body, &input, &outcome, defaults);
+        Ok((input, outcome, answer))
     }
 
     fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {
@@ -679,9 +697,8 @@ impl Report<'_> {
         let points = case.stop.path.trace(count);
         let column = |dimension, value: fn(&crate::calc::motion::Point) -> f64| {
             let unit = self.units.unit_of(dimension);
-            let in_unit = |si: f64| unit.map_or(si, |unit| unit.of_si(si));
-            let numbers = points.iter().map(|point| Finite(in_unit(value(point)))).collect();
-            (numbers, unit.map_or("1", |unit| unit.symbol))
+            let numbers = points.iter().map(|point| Finite(unit.of_si(value(point)))).collect();
+            (numbers, unit.symbol)
         };
         let (time, time_unit) = column(Dimension::Time, |point| point.time);
         let (speed, speed_unit) = column(speed, |point| point.speed);

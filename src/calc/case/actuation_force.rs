@@ -47,19 +47,24 @@ pub struct CaseOutcome {
     pub operator_stroke: Option<Length>,
 }
 
+/// What is impossible about a demand. Members are those of the request.
+#[must_use]
+pub fn faults(torque: Torque, actuation: Option<&Actuation>) -> Faults {
+    let mut faults = Faults::new();
+    faults.positive("torque", torque);
+    if let Some(member) = actuation.and_then(given_input) {
+        let detail = "is what this calculation finds: leave it out, or give its maximum instead";
+        faults.add(format!("brake/actuation/{member}"), FaultCode::NotApplicable, detail);
+    }
+    faults
+}
+
 /// Finds what must press.
 ///
 /// # Errors
 /// A torque that is not positive, or a chain that already has the input to be found.
 pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
-    let mut faults = Faults::new();
-    faults.positive("torque", input.torque);
-    if let Some(actuation) = &input.brake.parts().actuation
-        && let Some(member) = given_input(actuation)
-    {
-        let detail = "is what this calculation finds: leave it out, or give its maximum instead";
-        faults.add(format!("brake/actuation/{member}"), FaultCode::NotApplicable, detail);
-    }
+    let faults = faults(input.torque, input.brake.parts().actuation.as_ref());
     let mut remarks = Remarks::new();
     input.brake.remark(&mut remarks, None);
     remarks.method(&FRICTION_TORQUE);

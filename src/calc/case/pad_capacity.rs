@@ -62,16 +62,23 @@ pub struct CaseOutcome {
     pub torque: Torque,
 }
 
+/// What is impossible about the members beside pad and lining. Members are those of the request.
+#[must_use]
+pub fn faults(faces: u32, clamp_force: Option<Force>) -> Faults {
+    let mut faults = Faults::new();
+    check_faces(&mut faults, faces);
+    if let Some(force) = clamp_force {
+        faults.positive("clamp_force", force);
+    }
+    faults
+}
+
 /// Computes what a pad carries.
 ///
 /// # Errors
 /// No clamp force and no pressure limit to find one by, or a count of faces out of range.
 pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
-    let mut faults = Faults::new();
-    check_faces(&mut faults, input.faces);
-    if let Some(force) = input.clamp_force {
-        faults.positive("clamp_force", force);
-    }
+    let mut faults = faults(input.faces, input.clamp_force);
     let at_limit = || {
         let limit = input.lining.parts().max_pressure?;
         Some(input.pressure_distribution.clamp_force_at_peak(&input.pad, limit.value))

@@ -5,7 +5,7 @@ use crate::calc::brake::Spot;
 use crate::calc::disc::Cooling;
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{
-    Caution, CheckCode, Comparison, Finding, Notice, Remarks, Severity, Subject, WarningCode,
+    Caution, CheckCode, Finding, Notice, Remarks, Severity, Subject, WarningCode,
 };
 use crate::calc::fitted::{Fitted, Place, Pressed, friction_cases, needed, operator_stroke, press};
 use crate::calc::friction::FrictionCase;
@@ -83,9 +83,10 @@ impl CaseOutcome {
     #[must_use]
     pub fn limited_by(&self) -> LimitedBy {
         match self.hardest {
-            Some((instant, _)) if instant.limited_by != LimitedBy::Brake => instant.limited_by,
+            // The operator asks for no more, even if one axle holds no more on the way there.
             _ if self.stop.is_modulated => LimitedBy::Operator,
-            _ => LimitedBy::Brake,
+            Some((instant, _)) => instant.limited_by,
+            None => LimitedBy::Brake,
         }
     }
 
@@ -131,27 +132,37 @@ impl Input {
 pub fn place_faults(machine: &Machine, fitted: &[Fitted], faults: &mut Faults) {
     let is_vehicle = machine.vehicle().is_some();
     for (index, entry) in fitted.iter().enumerate() {
-        let at = |member: &str| format!("fitted/{index}/{member}");
-        match (is_vehicle, entry.parts().place) {
-            (true, None) => faults.add(
-                at("axle"),
-                FaultCode::Missing,
-                "is required on a vehicle: front, rear or all",
-            ),
-            (false, Some(_)) => {
-                faults.add(at("axle"), FaultCode::NotApplicable, "belongs to vehicles only");
-            }
-            _ => {}
-        }
+        let at = format!("fitted/{index}");
+        let parts = entry.parts();
+        let found = entry_faults(is_vehicle, parts.place, parts.rolling_radius.is_some());
+        faults.part(&at, found.into_result(()));
         let cooling = entry.brake().and_then(|brake| brake.parts().disc.as_ref()?.cooling());
         if !is_vehicle && cooling == Some(Cooling::Airstream) {
             let detail = "belongs to vehicles only: nothing else moves its disc through the air";
-            faults.add(at("brake/disc/cooling/model"), FaultCode::NotApplicable, detail);
-        }
-        if !is_vehicle && entry.parts().rolling_radius.is_some() {
-            faults.add(at("rolling_radius"), FaultCode::NotApplicable, "belongs to vehicles only");
+            let at = format!("{at}/brake/disc/cooling/model");
+            faults.add(at, FaultCode::NotApplicable, detail);
         }
     }
+}
+
+/// Demands an axle on a vehicle, and neither axle nor rolling radius elsewhere. Members are those of an entry.
+#[must_use]
+pub fn entry_faults(is_vehicle: bool, place: Option<Place>, has_rolling_radius: bool) -> Faults {
+    let mut faults = Faults::new();
+    match (is_vehicle, place) {
+        (true, None) => {
+            let detail = "is required on a vehicle: front, rear or all";
+            faults.add("axle", FaultCode::Missing, detail);
+        }
+        (false, Some(_)) => {
+            faults.add("axle", FaultCode::NotApplicable, "belongs to vehicles only");
+        }
+        _ => {}
+    }
+    if !is_vehicle && has_rolling_radius {
+        faults.add("rolling_radius", FaultCode::NotApplicable, "belongs to vehicles only");
+    }
+    faults
 }
 
 /// Computes the stop.
@@ -328,17 +339,22 @@ fn note_ending(remarks: &mut Remarks, case: &CaseOutcome) {
         Coordinate::Angle => Dimension::Torque,
     };
     match stop.ending {
-        Ending::NotReached { .. } => remarks.compare(
-            Comparison {
-                code: CheckCode::Stops,
-                subject: Subject::Request("fitted"),
-                friction_case: Some(case.friction_case),
-                actual: Amount { dimension, si: stop.driving },
-                limit: Amount { dimension, si: stop.available },
-                what: "what drives the machine against its brakes",
-            },
-            0.0,
-        ),
+        Ending::NotReached { .. } => {
+            let code = WarningCode::Check(CheckCode::Stops);
+            // Cases come from low to high friction: the first that fails is the worst. Balanced is not stopped.
+            if remarks.findings().iter().all(|known| known.code != code) {
+                remarks.find(Finding {
+                    code,
+                    severity: Severity::Exceeded,
+                    subject: Subject::Request("fitted"),
+                    friction_case: Some(case.friction_case),
+                    actual: Some(Amount { dimension, si: stop.driving }),
+                    limit: Some(Amount { dimension, si: stop.available }),
+                    detail: "what drives the machine is not less than what its brakes hold: it does not stop"
+                        .to_owned(),
+                });
+            }
+        }
         Ending::Reached(Some(run_back)) => {
             let is_held = run_back.time.is_some();
             let (severity, detail) = if is_held {
@@ -374,10 +390,14 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
                 .find(Finding::notice(code, severity, subject, detail).in_case(case.friction_case));
         }
     };
-    if input.demand.deceleration.is_some() && !case.stop.is_modulated {
+    if input.demand.deceleration.is_some() && !case.stop.is_modulated && case.hardest.is_some() {
         let detail =
             "the deceleration asked for is more than brakes and tires give: full torque was taken";
-        find(Notice::DecelerationNotReached, Severity::Exceeded, "deceleration", detail);
+        let member = match input.machine.coordinate() {
+            Coordinate::Way => "deceleration",
+            Coordinate::Angle => "angular_deceleration",
+        };
+        find(Notice::DecelerationNotReached, Severity::Exceeded, member, detail);
     }
     match case.hardest.map(|(instant, _)| instant.limited_by) {
         Some(LimitedBy::Adhesion) => {

@@ -46,7 +46,7 @@ cautions! {
         "This lining contains asbestos, which is banned or restricted in most countries. It is listed only to assess old equipment. Do not machine it, do not blow out its dust, and follow the asbestos law of the place.";
     /// Remembered values.
     FromMemory = "values_from_memory",
-        "Some values were entered from memory of the named source and not re-read there. Check them against the source before you rely on them.";
+        "Some equations or catalog values behind this answer were entered from memory of the source that they name and not re-read there: GET /v1/methods and the catalog mark them. Check them there before you rely on them.";
     /// A hanging load.
     SuspendedLoad = "suspended_load",
         "A suspended load needs a second, independent brake where codes say so. Keep people out from under it.";

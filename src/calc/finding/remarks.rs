@@ -91,8 +91,11 @@ impl Remarks {
     pub fn compare(&mut self, comparison: Comparison, ambient: f64) {
         let used = utilization_of_maximum(comparison.actual, comparison.limit, ambient);
         let Some(severity) = severity_of(used, NEAR_LIMIT_FROM) else { return };
-        let position =
-            if severity == Severity::Exceeded { "is not within" } else { "comes close to" };
+        let position = match severity {
+            Severity::Exceeded if comparison.actual.si > comparison.limit.si => "is above",
+            Severity::Exceeded => "is not below",
+            Severity::NearLimit | Severity::Info => "comes close to",
+        };
         let finding = Finding {
             code: WarningCode::Check(comparison.code),
             severity,

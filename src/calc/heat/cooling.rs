@@ -91,15 +91,20 @@ impl Air {
     pub fn at(temperature: f64) -> Self {
         const ATMOSPHERE: f64 = 101_325.0; // Pa, exact by definition
         const GAS_CONSTANT: f64 = 287.053; // J/(kg·K)
-        let power = temperature * temperature.sqrt();
-        let viscosity = 1.458e-6 * power / (temperature + 110.4);
+        let raised = temperature * temperature.sqrt();
+        let viscosity = 1.458e-6 * raised / (temperature + 110.4);
         let density = ATMOSPHERE / (GAS_CONSTANT * temperature);
         let slope = 245.4 * libm::exp10(-12.0 / temperature);
         Self {
-            conductivity: 2.646_38e-3 * power / (temperature + slope),
+            conductivity: 2.646_38e-3 * raised / (temperature + slope),
             kinematic_viscosity: viscosity / density,
         }
     }
+}
+
+/// A power of a positive number. Several times as quick as `pow`, which spares no effort for the last bit.
+fn power(base: f64, exponent: f64) -> f64 {
+    libm::exp(exponent * libm::log(base))
 }
 
 /// Mean Nusselt number of a free disc at a rotational Reynolds number ([`ROTATING_DISC`]).
@@ -108,18 +113,14 @@ pub fn nusselt_of_rotating_disc(reynolds: f64) -> f64 {
     if reynolds <= TRANSITION {
         return 0.36 * reynolds.sqrt();
     }
-    let excess = 0.015 * libm::pow(TRANSITION, 0.8) - 0.36 * TRANSITION.sqrt();
-    0.015 * libm::pow(reynolds, 0.8) - excess * (TRANSITION / reynolds).sqrt()
+    let excess = 0.015 * power(TRANSITION, 0.8) - 0.36 * TRANSITION.sqrt();
+    0.015 * power(reynolds, 0.8) - excess * (TRANSITION / reynolds).sqrt()
 }
 
 /// Nusselt number of a disc in an airstream ([`AIRSTREAM`]).
 #[must_use]
 pub fn nusselt_of_airstream(reynolds: f64) -> f64 {
-    if reynolds <= TRANSITION {
-        0.70 * libm::pow(reynolds, 0.55)
-    } else {
-        0.04 * libm::pow(reynolds, 0.8)
-    }
+    if reynolds <= TRANSITION { 0.70 * power(reynolds, 0.55) } else { 0.04 * power(reynolds, 0.8) }
 }
 
 /// Radiation as a coefficient, W/(m²·K), between two temperatures in K ([`RADIATION`]).

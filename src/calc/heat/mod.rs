@@ -10,3 +10,15 @@ pub mod property;
 pub mod repeated;
 pub mod slab;
 pub mod substance;
+
+use super::method::Method;
+
+/// The sheets of this folder, but for those that its files list themselves.
+pub static METHODS: &[&Method] = &[
+    &partition::SWEPT_RING,
+    &partition::PARTITION,
+    &property::ENTHALPY,
+    &bulk::BULK_RISE,
+    &slab::SLAB_SURFACE,
+    &slab::SLAB_VOLUMES,
+];

@@ -86,6 +86,7 @@ impl Conveyor {
             rotating: 0.0,
             translating,
             outside: super::with_efficiency(gravity, parts.efficiency),
+            reversal: parts.efficiency * parts.efficiency,
             resistance: parts.resistance * STANDARD_GRAVITY * normal,
             drag: 0.0,
             tires: None,

@@ -92,6 +92,7 @@ impl Hoist {
             rotating: 0.0,
             translating,
             outside: super::with_efficiency(gravity, parts.efficiency),
+            reversal: parts.efficiency * parts.efficiency,
             resistance: 0.0,
             drag: 0.0,
             tires: None,

@@ -16,7 +16,7 @@ crate::method_sheet! {
         accuracy: "Exact.",
         source: "Euler's equation of rotation; Hicks, Standard Handbook of Mechanical Engineering Calculations, section 24.",
         provenance: Seen,
-        worked: "Wk2 200 lb.ft2 from 1800 rpm in 40 s: 29.35 lbf.ft (printed 29.2 with the rounded constant 308).",
+        worked: "Wk2 200 lb.ft2 from 1800 rpm in 40 s: 29.29 lbf.ft (printed 29.2 with the rounded constant 308).",
     }
 }
 
@@ -51,6 +51,7 @@ impl Shaft {
             rotating: 0.0,
             translating: 0.0,
             outside: self.0.driving_torque.si(),
+            reversal: 1.0,
             resistance: 0.0,
             drag: 0.0,
             tires: None,

@@ -156,6 +156,7 @@ impl Vehicle {
             rotating: parts.rotating_mass_factor - 1.0,
             translating: parts.mass.si(),
             outside: situation.drive_force.si() - weight * libm::sin(slope),
+            reversal: 1.0,
             resistance: parts.rolling_resistance * normal_force,
             drag: 0.5 * parts.air_density.si() * parts.drag_area.si(),
             tires: Some(Tires {

@@ -40,6 +40,9 @@ pub struct Reduced {
     pub translating: f64,
     /// Constant force from outside, positive when it drives.
     pub outside: f64,
+    /// What part of a resisting `outside` drives the machine back from rest: losses that add to it on the way
+    /// forward take from it on the way back, so the square of the drive's efficiency. 1 without losses.
+    pub reversal: f64,
     /// Constant resistance, always against the motion.
     pub resistance: f64,
     /// Resistance per speed squared.
@@ -75,7 +78,7 @@ impl Reduced {
     /// The force that would move the machine backwards from rest; 0 if none does.
     #[must_use]
     pub fn reversing(&self) -> f64 {
-        (-self.outside - self.resistance).max(0.0)
+        (-self.outside * self.reversal - self.resistance).max(0.0)
     }
 }
 

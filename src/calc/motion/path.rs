@@ -186,20 +186,42 @@ const GAUSS: [(f64, f64); 5] = [
     (0.953_089_922_969_332, 0.118_463_442_528_094_54),
 ];
 
+/// Integral of `value` from `from` to `to`, five points.
+fn gauss(from: f64, to: f64, value: &impl Fn(f64) -> f64) -> f64 {
+    let width = to - from;
+    GAUSS.iter().map(|(node, weight)| weight * width * value(from + node * width)).sum()
+}
+
+/// The same, halved until the halves agree with the `whole`: forces bend where another limit takes over.
+fn halved(from: f64, to: f64, whole: f64, depth: u32, value: &impl Fn(f64) -> f64) -> f64 {
+    let middle = f64::midpoint(from, to);
+    let (first, second) = (gauss(from, middle, value), gauss(middle, to, value));
+    if depth == 0 || (first + second - whole).abs() <= 1e-10 * whole.abs() {
+        return first + second;
+    }
+    halved(from, middle, first, depth - 1, value) + halved(middle, to, second, depth - 1, value)
+}
+
 /// The course of a stop with the forces that caused it.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Path {
     forces: Forces,
     pieces: Vec<Piece>,
+    final_speed: Option<f64>,
 }
 
 impl Path {
     pub(super) fn new(forces: &Forces) -> Self {
-        Self { forces: *forces, pieces: Vec::with_capacity(8) }
+        Self { forces: *forces, pieces: Vec::with_capacity(8), final_speed: None }
     }
 
     pub(super) fn push(&mut self, piece: Piece) {
         self.pieces.push(piece);
+    }
+
+    /// Says that the path ends at exactly this speed; the pieces come within some roundings of it.
+    pub(super) fn finish(&mut self, final_speed: f64) {
+        self.final_speed = Some(final_speed);
     }
 
     /// The forces on the machine.
@@ -211,12 +233,17 @@ impl Path {
     /// The end of the stop; zeros for an empty path.
     #[must_use]
     pub fn end(&self) -> Point {
-        self.pieces.last().map_or(Point { time: 0.0, speed: 0.0, distance: 0.0 }, Piece::end)
+        let end =
+            self.pieces.last().map_or(Point { time: 0.0, speed: 0.0, distance: 0.0 }, Piece::end);
+        Point { speed: self.final_speed.unwrap_or(end.speed), ..end }
     }
 
     /// Where the machine is `time` after the start, held at the end.
     #[must_use]
     pub fn at(&self, time: f64) -> Point {
+        if time >= self.end().time {
+            return self.end();
+        }
         let index = self.pieces.partition_point(|piece| piece.start + piece.duration < time);
         self.pieces
             .get(index)
@@ -251,6 +278,9 @@ impl Path {
                     end_speed: piece.end().speed,
                 }),
             }
+        }
+        if let Some(last) = totals.last_mut() {
+            last.end_speed = self.end().speed;
         }
         totals
     }
@@ -290,7 +320,7 @@ impl Path {
     pub fn hardest(&self) -> Option<(Instant, f64, f64)> {
         let mut hardest: Option<(Instant, f64, f64)> = None;
         for piece in self.torque_pieces() {
-            for time in [0.0, piece.duration] {
+            for time in [0.0, self.time_of_summit(piece), piece.duration] {
                 let instant = self.instant(piece, time);
                 // Equal decelerations: the later state is the one in which all limits show.
                 if hardest.is_none_or(|(found, ..)| instant.deceleration >= found.deceleration) {
@@ -301,18 +331,36 @@ impl Path {
         hardest
     }
 
+    /// When the deceleration of a piece is highest: within it only where the torque rises while the air's force falls.
+    ///
+    /// Within a step of the integrator there is one summit, smooth or at the edge where a limit takes over; of
+    /// an edge the later side is taken, on which the limit shows.
+    fn time_of_summit(&self, piece: &Piece) -> f64 {
+        let is_bent = matches!(piece.motion, Motion::Integrated(_))
+            && matches!(piece.effort, Effort::Ramp(_, rate) if rate > 0.0);
+        if !is_bent {
+            return 0.0;
+        }
+        let deceleration = |time: f64| self.instant(piece, time).deceleration;
+        let (mut low, mut high) = (0.0, piece.duration);
+        for _ in 0..64 {
+            let (one, other) = (low + (high - low) / 3.0, high - (high - low) / 3.0);
+            if deceleration(one) < deceleration(other) { low = one } else { high = other }
+        }
+        high
+    }
+
     /// Integral over time, while torque acts, of a function of the force balance and the speed.
     fn integral(&self, value: impl Fn(&Instant, f64) -> f64) -> f64 {
-        let mut total = 0.0;
-        for piece in self.torque_pieces() {
-            for (node, weight) in GAUSS {
-                let time = node * piece.duration;
-                total += weight
-                    * piece.duration
-                    * value(&self.instant(piece, time), piece.speed_at(time));
+        let of_piece = |piece: &Piece| {
+            let at = |time: f64| value(&self.instant(piece, time), piece.speed_at(time));
+            let whole = gauss(0.0, piece.duration, &at);
+            match piece.motion {
+                Motion::Polynomial { .. } => whole,
+                Motion::Integrated(_) => halved(0.0, piece.duration, whole, 16, &at),
             }
-        }
-        total
+        };
+        self.torque_pieces().map(of_piece).sum()
     }
 
     /// Work of the brakes of each axle, front (or all) and rear, J.
@@ -333,16 +381,25 @@ impl Path {
 
     /// Power of the brakes of each axle over time from the first torque on, as nodes joined by straight lines.
     ///
-    /// Pieces in which the power is not linear are divided; the nodes stay below `most`.
+    /// Pieces in which the power is not linear are divided, long ones by their share of `most`; about twice `most`
+    /// nodes at the most, and two for each piece.
     #[must_use]
     pub fn brake_power(&self, most: usize) -> Vec<(f64, [f64; 2])> {
         let pieces: Vec<&Piece> = self.torque_pieces().collect();
         let begin = self.first_torque().time;
         let curved = pieces.iter().filter(|piece| !self.has_linear_power(piece)).count().max(1);
-        let divisions = (most / curved).clamp(2, 24);
+        let least = (most / curved).clamp(2, 24);
+        let lasting = self.end().time - begin;
+        // A held deceleration is one long piece, beside the many short ones of a build-up against drag.
+        let divisions = |piece: &Piece| {
+            let wanted = to_f64(most) * piece.duration / lasting;
+            (least..most.max(least))
+                .find(|parts| to_f64(*parts) >= wanted)
+                .unwrap_or(most.max(least))
+        };
         let mut nodes = Vec::new();
         for (index, piece) in pieces.iter().enumerate() {
-            let parts = if self.has_linear_power(piece) { 1 } else { divisions };
+            let parts = if self.has_linear_power(piece) { 1 } else { divisions(piece) };
             let first = usize::from(index > 0 && piece.phase != Phase::Full);
             for part in first..=parts {
                 let time = piece.duration * to_f64(part) / to_f64(parts);
@@ -354,7 +411,12 @@ impl Path {
                 ));
             }
         }
-        nodes.dedup_by(|next, last| next.0 <= last.0);
+        nodes.dedup_by(|next, last| {
+            next.0 = next.0.max(last.0);
+            // Two powers at one time are a jump, as from build-up to a held deceleration.
+            let jump = (next.1[0] - last.1[0]).abs() + (next.1[1] - last.1[1]).abs();
+            next.0 <= last.0 && jump <= 1e-9 * (last.1[0] + last.1[1])
+        });
         nodes
     }
 

@@ -114,7 +114,8 @@ pub struct Stop {
     pub ending: Ending,
     /// Whether the operator holds a deceleration below what the brakes could give.
     pub is_modulated: bool,
-    /// Fraction of the full torque applied once built up (at the speed where torque begins).
+    /// Largest fraction of the full torque applied once built up. A held deceleration needs most at the final speed,
+    /// where the air resists least.
     pub fraction: f64,
     /// Force that drives against the brakes at the final speed, 0 or more.
     pub driving: f64,
@@ -129,6 +130,7 @@ pub fn stop(forces: &Forces, demand: &Demand) -> Option<Stop> {
     let mut run = Run::new(forces, demand);
     let is_over = run.reaction() || run.dead()? || run.build_up()? || run.full()?;
     let ending = if is_over {
+        run.path.finish(demand.final_speed);
         Ending::Reached(run.run_back())
     } else {
         Ending::NotReached { tending_speed: tending_speed(forces, &run) }
@@ -136,7 +138,7 @@ pub fn stop(forces: &Forces, demand: &Demand) -> Option<Stop> {
     Some(Stop {
         ending,
         is_modulated: run.is_modulated,
-        fraction: run.fraction,
+        fraction: run.largest_fraction,
         driving: (-forces.system.retarding(demand.final_speed)).max(0.0),
         available: at_end.total_ground(),
         path: run.path,
@@ -152,6 +154,7 @@ struct Run<'a> {
     way: f64,
     speed: f64,
     fraction: f64,
+    largest_fraction: f64,
     is_modulated: bool,
 }
 
@@ -165,6 +168,7 @@ impl<'a> Run<'a> {
             way: 0.0,
             speed: demand.initial_speed,
             fraction: 1.0,
+            largest_fraction: 1.0,
             is_modulated: false,
         }
     }
@@ -189,9 +193,12 @@ impl<'a> Run<'a> {
 
     fn build_up(&mut self) -> Option<bool> {
         if let Some(deceleration) = self.demand.deceleration {
-            let fraction = self.forces.fraction_for(deceleration, self.speed);
-            self.is_modulated = fraction.is_some();
-            self.fraction = fraction.unwrap_or(1.0);
+            let at = |speed| self.forces.fraction_for(deceleration, speed);
+            // Where the air helps at the start, the brakes must still hold the deceleration at the end.
+            let fractions = at(self.speed).zip(at(self.demand.final_speed));
+            self.is_modulated = fractions.is_some();
+            let (first, last) = fractions.unwrap_or((1.0, 1.0));
+            (self.fraction, self.largest_fraction) = (first, first.max(last));
         }
         let duration = self.demand.delays.build_up;
         if duration <= 0.0 {
@@ -218,6 +225,9 @@ impl<'a> Run<'a> {
         if let (true, Some(deceleration), true) =
             (self.is_modulated, self.demand.deceleration, self.has_drag())
         {
+            if self.coast(deceleration)? {
+                return Some(true);
+            }
             let duration = (self.speed - target) / deceleration;
             let motion = Motion::Polynomial { speed: self.speed, deceleration, rise: 0.0 };
             self.push(Phase::Full, duration, motion, Effort::Hold(deceleration));
@@ -232,11 +242,28 @@ impl<'a> Run<'a> {
         self.ramp(Phase::Full, horizon, self.fraction, self.fraction)
     }
 
+    /// Lets the air slow the machine while that alone exceeds the deceleration asked for; true if the stop ends in it.
+    fn coast(&mut self, deceleration: f64) -> Option<bool> {
+        let system = &self.forces.system;
+        let free = self.forces.at(0.0, self.speed).deceleration;
+        let is_slower = free > deceleration;
+        if !is_slower {
+            return Some(false);
+        }
+        // Without brakes the deceleration is proportional to what retards.
+        let wanted = system.retarding(self.speed) * deceleration / free;
+        let square = (wanted - system.retarding(0.0)) / system.drag;
+        let target = square.max(0.0).sqrt().max(self.demand.final_speed);
+        let horizon = (self.speed - target) / deceleration * (1.0 + 1e-9);
+        self.integrated((Phase::Full, horizon), (0.0, 0.0), target)?;
+        Some(target <= self.demand.final_speed)
+    }
+
     /// Goes through `duration` while the fraction rises from `start` to `end`; true if the stop ends in it.
     fn ramp(&mut self, phase: Phase, duration: f64, start: f64, end: f64) -> Option<bool> {
         let rate = (end - start) / duration;
         if self.has_drag() {
-            self.integrated(phase, duration, start, rate)
+            self.integrated((phase, duration), (start, rate), self.demand.final_speed)
         } else {
             Some(self.closed(phase, duration, start, end))
         }
@@ -253,8 +280,12 @@ impl<'a> Run<'a> {
         ending.is_some()
     }
 
-    fn integrated(&mut self, phase: Phase, duration: f64, start: f64, rate: f64) -> Option<bool> {
-        let target = self.demand.final_speed;
+    fn integrated(
+        &mut self,
+        (phase, duration): (Phase, f64),
+        (start, rate): (f64, f64),
+        target: f64,
+    ) -> Option<bool> {
         let forces = self.forces;
         let deceleration =
             |time: f64, speed: f64| forces.at(start + rate * time, speed.max(0.0)).deceleration;
@@ -289,7 +320,7 @@ impl<'a> Run<'a> {
         }
         let delays = &self.demand.delays;
         let since_dead = self.time - delays.reaction - delays.dead;
-        run_back(self.forces, self.fraction, since_dead, delays.build_up)
+        run_back(self.forces, self.largest_fraction, since_dead, delays.build_up)
     }
 }
 

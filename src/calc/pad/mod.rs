@@ -14,7 +14,18 @@ pub use round::{ROUND_UNIFORM_PRESSURE, ROUND_UNIFORM_WEAR};
 pub use sector::{SECTOR_UNIFORM_PRESSURE, SECTOR_UNIFORM_WEAR};
 
 use super::fault::{FaultCode, Faults};
+use super::method::Method;
 use super::quantity::{Angle, Area, Length, Si, Volume};
+
+/// The sheets of this folder.
+pub static METHODS: &[&Method] = &[
+    &SECTOR_UNIFORM_WEAR,
+    &SECTOR_UNIFORM_PRESSURE,
+    &ROUND_UNIFORM_WEAR,
+    &ROUND_UNIFORM_PRESSURE,
+    &OUTLINE_UNIFORM_WEAR,
+    &OUTLINE_UNIFORM_PRESSURE,
+];
 
 /// How the outline of a pad was given.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]

@@ -1,4 +1,5 @@
 mod bulk;
+mod course;
 mod property;
 mod reference;
 mod slab;

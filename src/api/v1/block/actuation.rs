@@ -58,6 +58,7 @@ pub struct HydraulicActuation {
     /// Diameter of each piston.
     pub piston_diameter: Length,
     /// Pistons on one side of the disc, 1 (the default) to 100.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub pistons_per_side: Option<u32>,
     /// Efficiency of the caliper, above 0 and not above 1 (the default).

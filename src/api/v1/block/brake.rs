@@ -8,7 +8,8 @@ use super::disc::Disc;
 use super::lining::Lining;
 use super::pad::Pad;
 use crate::api::parse::{At, Reader};
-use crate::calc::brake::{Brake as Whole, BrakeParts};
+use crate::calc::brake::{Brake as Whole, BrakeParts, check_faces};
+use crate::calc::fault::Faults;
 use crate::calc::pressure::PressureDistribution as Spread;
 
 /// One brake: its pads, lining, disc and actuation.
@@ -20,6 +21,7 @@ pub struct Brake {
     /// Its friction material.
     pub lining: Lining,
     /// Friction faces of the brake, 2 if left out: one caliper with two pads. With a disc 1 or 2.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub faces: Option<u32>,
     /// How the pressure spreads over the pad.
@@ -60,6 +62,9 @@ impl Brake {
         let pad = self.pad.read(&at.member("pad"), reader);
         let lining = self.lining.read(&at.member("lining"), reader);
         let faces = reader.count(&at.member("faces"), self.faces, 2);
+        let mut faults = Faults::new();
+        check_faces(&mut faults, faces);
+        reader.take(at, faults.into_result(()));
         let at_distribution = at.member("pressure_distribution");
         let pressure_distribution =
             PressureDistribution::read(self.pressure_distribution, &at_distribution, reader);

@@ -6,8 +6,10 @@ use utoipa::ToSchema;
 use super::brake::Brake;
 use crate::api::measure::{Length, Torque};
 use crate::api::parse::{At, Reader};
+use crate::calc::case::stopping::entry_faults;
 use crate::calc::fault::FaultCode;
 use crate::calc::fitted::{Fitted as Entry, FittedParts, Place, Source};
+use crate::calc::quantity::{Si, Torque as Moment};
 
 /// Brakes of one kind on a machine. Give `brake` or `torque`, not both.
 #[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
@@ -20,12 +22,14 @@ pub struct Fitted {
     #[schema(nullable = false)]
     pub torque: Option<Torque>,
     /// Brakes that act together, 1 (the default) to 1000.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub count: Option<u32>,
     /// Where they act: required on a vehicle, an error elsewhere.
     #[schema(nullable = false)]
     pub axle: Option<AxlePlace>,
     /// How many of them press the same disc, 1 if left out; divides `count`.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub brakes_per_disc: Option<u32>,
     /// Brake speed over wheel speed, or over that of the reference brake shaft; 1 if left out.
@@ -56,17 +60,23 @@ pub enum AxlePlace {
 
 impl Fitted {
     /// The entries that are meant.
-    pub fn read_all(list: &[Self], at: &At<'_>, reader: &mut Reader) -> Option<Vec<Entry>> {
+    pub fn read_all(
+        list: &[Self],
+        is_vehicle: bool,
+        at: &At<'_>,
+        reader: &mut Reader,
+    ) -> Option<Vec<Entry>> {
         let entries: Vec<Option<Entry>> = list
             .iter()
             .enumerate()
-            .map(|(index, entry)| entry.read(&at.index(index), reader))
+            .map(|(index, entry)| entry.read(is_vehicle, &at.index(index), reader))
             .collect();
         entries.into_iter().collect()
     }
 
-    fn read(&self, at: &At<'_>, reader: &mut Reader) -> Option<Entry> {
+    fn read(&self, is_vehicle: bool, at: &At<'_>, reader: &mut Reader) -> Option<Entry> {
         let source = self.source(at, reader);
+        let has_source = source.is_some();
         let parts = FittedParts {
             count: reader.count(&at.member("count"), self.count, 1),
             place: self.axle.map(|place| match place {
@@ -80,9 +90,12 @@ impl Fitted {
                 .optional(&at.member("rolling_radius"), self.rolling_radius.as_ref()),
             control: self.control.clone(),
             operator_share: reader.ratio(&at.member("operator_share"), self.operator_share, 1.0),
-            source: source?,
+            // Without a source: read on for the faults of the other members; the result is of no use.
+            source: source.unwrap_or(Source::Torque(Moment::from_si(1.0))),
         };
-        reader.take(at, Entry::new(parts))
+        let found = entry_faults(is_vehicle, parts.place, parts.rolling_radius.is_some());
+        reader.take(at, found.into_result(()));
+        reader.take(at, Entry::new(parts)).filter(|_| has_source)
     }
 
     fn source(&self, at: &At<'_>, reader: &mut Reader) -> Option<Source> {

@@ -9,7 +9,7 @@ use crate::api::measure::{
 };
 use crate::api::parse::{At, Reader};
 use crate::calc::fault::FaultCode;
-use crate::calc::friction::Friction as Coefficients;
+use crate::calc::friction::{Friction as Coefficients, FrictionCase};
 use crate::calc::lining::{FadePoint, Limit, Lining as Material, LiningParts};
 use crate::data::{friction_codes, linings};
 
@@ -96,7 +96,9 @@ impl Friction {
     fn read(self, at: &At<'_>, reader: &mut Reader) -> Option<Coefficients> {
         match (self.low, self.nominal, self.high) {
             (Some(low), nominal, Some(high)) => {
-                reader.take(at, Coefficients::range(low, nominal, high))
+                let range = reader.take(at, Coefficients::range(low, nominal, high))?;
+                reader.ratio(&at.member("nominal"), nominal, range.at(FrictionCase::Nominal));
+                Some(range)
             }
             (None, Some(nominal), None) => reader.take(at, Coefficients::single(nominal)),
             (Some(_), _, None) => Self::missing(&at.member("high"), reader),

@@ -15,9 +15,9 @@ use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
 use crate::api::record::pointer_to;
 use crate::calc::actuation::{Actuation as Chain, Input as Driving};
 use crate::calc::case::stopping::Input;
-use crate::calc::fitted::{Fitted as Entry, Pressed};
+use crate::calc::fitted::{Fitted as Entry, Pressed, press};
 use crate::calc::machine::{Direction as Way, Situation};
-use crate::calc::motion::{Coordinate, Demand};
+use crate::calc::motion::{Coordinate, Delays, Demand};
 use crate::calc::quantity::Si;
 
 /// Which way a hoist's load moves.
@@ -77,7 +77,11 @@ impl StopMembers<'_> {
     /// The stop that is meant.
     pub fn read(&self, at: &At<'_>, reader: &mut Reader) -> Option<Input> {
         let machine = self.machine.read(&at.member("machine"), reader);
-        let fitted = Fitted::read_all(self.fitted, &at.member("fitted"), reader);
+        let is_vehicle = matches!(self.machine, Machine::Vehicle(_));
+        let fitted = Fitted::read_all(self.fitted, is_vehicle, &at.member("fitted"), reader);
+        if let Some(fitted) = &fitted {
+            reader.take(&at.member("fitted"), press(fitted).map(drop));
+        }
         let demand = self.stopping.read(self.machine, at, reader);
         let situation = self.surroundings.read(self.machine, at, reader);
         let input =
@@ -95,10 +99,16 @@ impl Stopping<'_> {
             if is_shaft { self.turning(at, reader) } else { self.moving(at, reader) };
         let deceleration = self.held(is_shaft, at, reader);
         let delays = Response::read(self.response, &at.member("response"), reader);
-        let demand =
-            Demand { initial_speed: initial_speed?, final_speed, delays: delays?, deceleration };
         let coordinate = if is_shaft { Coordinate::Angle } else { Coordinate::Way };
-        reader.take(at, demand.faults(coordinate).into_result(demand))
+        // Without delays: read on for the faults of the other members; the result is of no use.
+        let demand = Demand {
+            initial_speed: initial_speed?,
+            final_speed,
+            delays: delays.unwrap_or(Delays::NONE),
+            deceleration,
+        };
+        let demand = reader.take(at, demand.faults(coordinate).into_result(demand));
+        delays.and(demand)
     }
 
     fn moving(&self, at: &At<'_>, reader: &mut Reader) -> (Option<f64>, f64) {

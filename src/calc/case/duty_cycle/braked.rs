@@ -4,24 +4,33 @@ use super::FailureReason;
 use super::run::Run;
 use super::track::Tracked;
 use crate::calc::machine::Situation;
-use crate::calc::motion::{Demand, Forces, Phase, Stop};
+use crate::calc::motion::{Demand, Forces, Phase, Point, Stop};
 
 /// Steps of a stop, growing from the first torque on.
 const STEPS: u32 = 40;
-/// More steps than a stop with fade takes; it ends in a failure if the brake fades away.
-const MOST_STEPS: u32 = 4000;
+/// A stop with fade ends in a failure after these: a hundred times the time that it takes cold.
+const MOST_STEPS: u32 = 400;
 
 /// A step of a duty.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(super) struct Step {
     /// s.
     pub(super) duration: f64,
-    /// Along the coordinate, at the end of the step (at its start while braking).
+    /// Along the coordinate, at the start of the step.
     pub(super) speed: f64,
+    /// Along the coordinate, at its end.
+    pub(super) end_speed: f64,
     /// Along the coordinate, for the cooling.
     pub(super) cooled_at: f64,
     /// What the brakes do.
     pub(super) activity: Activity,
+}
+
+impl Step {
+    /// A step at one speed.
+    pub(super) const fn steady(duration: f64, speed: f64, activity: Activity) -> Self {
+        Self { duration, speed, end_speed: speed, cooled_at: speed, activity }
+    }
 }
 
 /// What the brakes do in a step.
@@ -70,9 +79,14 @@ impl Braking<'_> {
         for (time, power) in refined(&nodes, braking_time) {
             let now = powers(power);
             if let Some((last, then)) = before.replace((time, now.clone())) {
-                let speed = path.at(begin.time + last).speed;
-                let step =
-                    Step { duration: time - last, speed, cooled_at, activity: Activity::Stopping };
+                let speed_at = |since: f64| path.at(begin.time + since).speed;
+                let step = Step {
+                    duration: time - last,
+                    speed: speed_at(last),
+                    end_speed: speed_at(time),
+                    cooled_at,
+                    activity: Activity::Stopping,
+                };
                 run.step(&step, &then.into_iter().zip(now).collect::<Vec<_>>())?;
             }
         }
@@ -96,7 +110,8 @@ impl Braking<'_> {
         let cooled_at = f64::midpoint(initial, end);
         let mut since = 0.0;
         for step in 1..=MOST_STEPS {
-            let stretch = build_up.stretch(since, scale * f64::from(2 * step - 1));
+            let kink = build_up.kink(since, &Hot::new(run, self.situation).forces);
+            let stretch = build_up.stretch(since, scale * f64::from(2 * step - 1), kink);
             if self.coupled(run, &mut motion, &stretch, cooled_at)? {
                 return Ok((motion.way, motion.time));
             }
@@ -109,7 +124,15 @@ impl Braking<'_> {
     fn until_torque(&self, run: &mut Run<'_>) -> Result<Option<Motion>, FailureReason> {
         let path = &self.cold.path;
         let has_torque = path.phases().iter().any(|phase| phase.phase >= Phase::BuildUp);
-        let begin = if has_torque { path.first_torque() } else { path.end() };
+        let start = Point { time: 0.0, speed: self.demand.initial_speed, distance: 0.0 };
+        let begin = if path.phases().is_empty() {
+            // Without delays, brakes too weak when cold leave no course at all: nothing is over yet.
+            start
+        } else if has_torque {
+            path.first_torque()
+        } else {
+            path.end()
+        };
         run.idle(begin.time, self.demand.initial_speed)?;
         let is_over = !has_torque && begin.speed <= self.demand.final_speed;
         Ok((!is_over).then_some(Motion {
@@ -121,8 +144,9 @@ impl Braking<'_> {
 
     /// About how long the braking takes: sets the scale of the steps.
     fn expected_time(&self, speed: f64) -> f64 {
-        let full = || self.cold.path.forces().at(1.0, self.demand.final_speed).deceleration;
-        let deceleration = self.demand.deceleration.unwrap_or_else(full);
+        let full = self.cold.path.forces().at(1.0, self.demand.final_speed).deceleration;
+        let held = self.demand.deceleration;
+        let deceleration = held.map_or(full, |held| if full > 0.0 { held.min(full) } else { held });
         let change = speed - self.demand.final_speed;
         if deceleration > 0.0 {
             change / deceleration + self.demand.delays.build_up()
@@ -173,10 +197,14 @@ impl Braking<'_> {
             .zip(&last)
             .map(|(from, to)| (from * motion.speed, to * speed))
             .collect();
-        run.step(
-            &Step { duration: time, speed: motion.speed, cooled_at, activity: Activity::Stopping },
-            &powers,
-        )?;
+        let step = Step {
+            duration: time,
+            speed: motion.speed,
+            end_speed: speed,
+            cooled_at,
+            activity: Activity::Stopping,
+        };
+        run.step(&step, &powers)?;
         motion.way += time * (motion.speed - time * (0.5 * start.deceleration + rise * time / 6.0));
         motion.time += time;
         motion.speed = speed;
@@ -213,7 +241,7 @@ impl Hot {
         Self::at(run, situation, &factors)
     }
 
-    fn at(run: &Run<'_>, situation: &Situation, factors: &[f64]) -> Self {
+    pub(super) fn at(run: &Run<'_>, situation: &Situation, factors: &[f64]) -> Self {
         Self { forces: run.forces(situation, factors), shares: run.shares(factors) }
     }
 }
@@ -258,8 +286,20 @@ struct RampedStep {
 }
 
 impl BuildUp {
-    /// The next step: as long as wanted, but it ends where the build-up does, and that takes eight at least.
-    fn stretch(&self, since: f64, wanted: f64) -> RampedStep {
+    /// How long until another limit takes over, as far as it lies in the build-up; endless if none does.
+    fn kink(&self, since: f64, forces: &Forces) -> f64 {
+        if since >= self.time {
+            return f64::INFINITY;
+        }
+        // Heat shifts a limit a little: one just passed must not hold the next step back.
+        let nearest = since + 1e-3 * self.time;
+        let times = forces.breakpoints(self.fraction).into_iter();
+        let mut times = times.map(|fraction| self.time * fraction / self.fraction);
+        times.find(|time| *time > nearest).map_or(f64::INFINITY, |time| time - since)
+    }
+
+    /// The next step: as long as wanted, but it ends where the build-up or a limit does; a build-up takes sixteen at least.
+    fn stretch(&self, since: f64, wanted: f64, kink: f64) -> RampedStep {
         let rest = self.time - since;
         if rest <= 1e-12 * self.time {
             return RampedStep {
@@ -269,23 +309,22 @@ impl BuildUp {
                 is_full: true,
             };
         }
-        let duration = wanted.min(0.125 * self.time).min(rest);
+        let duration = wanted.min(0.0625 * self.time).min(rest).min(kink);
         let applied = |time: f64| (self.fraction * time / self.time).min(self.fraction);
         RampedStep { duration, from: applied(since), to: applied(since + duration), is_full: false }
     }
 }
 
-/// When a speed has fallen by `gap`, within `duration`, under a deceleration that changes linearly.
+/// When a speed has fallen by `gap`, 0 or more, within `duration`, under a deceleration that changes linearly.
 fn time_to(gap: f64, deceleration: f64, rise: f64, duration: f64) -> Option<f64> {
-    if duration * (deceleration + 0.5 * rise * duration) < gap {
-        return None;
-    }
-    let mut time = duration;
-    for _ in 0..4 {
-        let mean = deceleration + 0.5 * rise * time;
-        time = (gap / mean).clamp(0.0, duration);
-    }
-    Some(time)
+    // The first root of rise/2·t² + deceleration·t − gap = 0, in the form that does not cancel.
+    let root = (deceleration * deceleration + 2.0 * rise * gap).sqrt();
+    let time = if deceleration >= 0.0 {
+        2.0 * gap / (deceleration + root)
+    } else {
+        (root - deceleration) / rise
+    };
+    (time >= 0.0 && time <= duration).then_some(time)
 }
 
 /// Power over time with nodes close enough for the slab: dense after the first torque, never wider than a fortieth.

@@ -48,6 +48,7 @@ pub(super) struct Run<'a> {
     last_stop: (f64, f64),
     longest_stop: Option<LongestStop>,
     first_failure: Option<Failure>,
+    is_let_go: bool,
     course: Option<Course>,
 }
 
@@ -71,6 +72,7 @@ impl<'a> Run<'a> {
             last_stop: (0.0, 0.0),
             longest_stop: None,
             first_failure: None,
+            is_let_go: false,
             course: input.points.map(Course::new),
         };
         run.speed = input.events.first().map_or(0.0, |event| event.speeds().0);
@@ -145,6 +147,7 @@ impl<'a> Run<'a> {
                 }
                 let braking = Braking { situation, demand, cold };
                 let (distance, time) = braking.follow(self)?;
+                self.is_let_go |= matches!(&cold.ending, Ending::Reached(Some(run_back)) if run_back.time.is_none());
                 self.speed = demand.final_speed;
                 self.last_stop = (distance, time);
                 if self.longest_stop.is_none_or(|longest| distance > longest.distance) {
@@ -182,10 +185,7 @@ impl<'a> Run<'a> {
         }
         let none = vec![(0.0, 0.0); self.tracked.len()];
         self.graded(duration, IDLE_STEPS, |run, step| {
-            run.step(
-                &Step { duration: step, speed, cooled_at: speed, activity: Activity::Idle },
-                &none,
-            )
+            run.step(&Step::steady(step, speed, Activity::Idle), &none)
         })
     }
 
@@ -213,20 +213,31 @@ impl<'a> Run<'a> {
         }
         self.begin(&hot, driving * distance);
         self.graded(duration, DESCENT_STEPS, |run, step| {
-            let hot = Hot::new(run, situation);
-            if hot.forces.at(1.0, speed).total_ground() < driving {
-                return Err(FailureReason::SpeedNotHeld);
-            }
-            let fraction = hot.forces.fraction_for(0.0, speed).unwrap_or(1.0);
-            let brake = hot.forces.at(fraction, speed).brake;
-            let power = |shares: &[f64; 2]| (brake[0] * shares[0] + brake[1] * shares[1]) * speed;
-            let powers: Vec<(f64, f64)> =
-                hot.shares.iter().map(power).map(|power| (power, power)).collect();
-            run.step(
-                &Step { duration: step, speed, cooled_at: speed, activity: Activity::Holding },
-                &powers,
-            )
-        })
+            run.held(situation, (speed, driving), step)
+        })?;
+        // What is left at the end must still hold the speed.
+        Self::holding(&Hot::new(self, situation), speed, driving).map(|_| ())
+    }
+
+    /// One step at a held speed, by Heun's method: what each brake does shifts as their friction changes.
+    fn held(&mut self, situation: &Situation, (speed, driving): (f64, f64), duration: f64) -> Done {
+        let start = Self::holding(&Hot::new(self, situation), speed, driving)?;
+        let steady: Vec<(f64, f64)> = start.iter().map(|power| (*power, *power)).collect();
+        let factors = self.factors_after(duration, &steady, speed)?;
+        let end = Self::holding(&Hot::at(self, situation, &factors), speed, driving)?;
+        let powers: Vec<(f64, f64)> = start.into_iter().zip(end).collect();
+        self.step(&Step::steady(duration, speed, Activity::Holding), &powers)
+    }
+
+    /// Power of one brake of each entry while they hold a speed against a driving force.
+    fn holding(hot: &Hot, speed: f64, driving: f64) -> Result<Vec<f64>, FailureReason> {
+        if hot.forces.at(1.0, speed).total_ground() < driving {
+            return Err(FailureReason::SpeedNotHeld);
+        }
+        let fraction = hot.forces.fraction_for(0.0, speed).unwrap_or(1.0);
+        let brake = hot.forces.at(fraction, speed).brake;
+        let power = |shares: &[f64; 2]| (brake[0] * shares[0] + brake[1] * shares[1]) * speed;
+        Ok(hot.shares.iter().map(power).collect())
     }
 
     /// Starts a braking in which all brakes together will take up about `energy`.
@@ -251,7 +262,7 @@ impl<'a> Run<'a> {
             tracked.advance(step.duration, *power, step.cooled_at).ok_or(FailureReason::TooHot)?;
             tracked.look((place, time), power.0.max(power.1), step);
         }
-        self.record(step.speed);
+        self.record(step.end_speed);
         Ok(())
     }
 
@@ -270,6 +281,7 @@ impl<'a> Run<'a> {
             fitted: self.tracked.into_iter().map(|tracked| tracked.finish(speed)).collect(),
             longest_stop: self.longest_stop,
             first_failure: self.first_failure,
+            is_let_go: self.is_let_go,
             course: self.course.map(Course::finish),
         }
     }

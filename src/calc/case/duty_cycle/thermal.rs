@@ -96,7 +96,7 @@ impl<'a> Thermal<'a> {
     ) -> Option<()> {
         let [power_at_start, power_at_end] = [power.0, power.1].map(|power| power * self.into_disc);
         let stretch = Stretch { duration, power_at_start, power_at_end, speeds };
-        (self.bulk, _) = self.disc.after(self.bulk, &stretch)?;
+        self.bulk = self.disc.end(self.bulk, &stretch)?;
         self.slab.advance(&SlabStep {
             duration,
             flux_at_start: power_at_start * self.flux_per_heat,

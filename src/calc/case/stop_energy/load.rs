@@ -6,10 +6,10 @@ use crate::calc::case::stopping;
 use crate::calc::fault::Faults;
 use crate::calc::fitted::Fitted;
 use crate::calc::heat::cooling::Speeds;
-use crate::calc::heat::disc_heat::{self, Heating};
+use crate::calc::heat::disc_heat::{self, Heating, Warmth};
 use crate::calc::heat::disc_series::{self, Repeated, Repeating};
 use crate::calc::motion::{Coordinate, Path};
-use crate::calc::quantity::{Energy, EnergyFlux, Power, PowerFlux, Si, Velocity};
+use crate::calc::quantity::{Energy, EnergyFlux, Power, PowerFlux, Si, Time, Velocity};
 
 /// One brake of an entry in a stop.
 pub(super) struct Load<'a> {
@@ -60,12 +60,7 @@ impl<'a> Load<'a> {
         let shaft_speed =
             stopping::highest_brake_speed(&self.input.stop, self.entry, &self.case.stop);
         let power = self.power_course();
-        let heating = Heating {
-            energy,
-            power: &power,
-            brakes_per_disc: self.entry.parts().brakes_per_disc,
-            start: self.input.start_temperature,
-        };
+        let heating = self.heating(energy, &power);
         Ok(BrakeLoad {
             energy_per_face: Energy::from_si(energy / faces),
             energy_flux: EnergyFlux::from_si(energy / faces / area),
@@ -75,6 +70,24 @@ impl<'a> Load<'a> {
             repeated: self.repeated(brake, &heating),
             pad_life_stops: brake.pad_life(energy / faces),
         })
+    }
+
+    fn heating<'b>(&self, energy: f64, power: &'b [(f64, f64)]) -> Heating<'b> {
+        Heating {
+            energy,
+            power,
+            brakes_per_disc: self.entry.parts().brakes_per_disc,
+            start: self.input.start_temperature,
+        }
+    }
+
+    /// How the brake's disc warms in the stop of that energy; none where that cannot be told.
+    pub(super) fn course(&self, load: &EntryEnergy, count: u32) -> Option<Vec<Warmth>> {
+        let power = self.power_course();
+        let heating = self.heating(load.energy.si(), &power);
+        let peak = load.brake?.disc?.surface_peak_time;
+        let times = moments(&power, peak.si(), count);
+        disc_heat::course(self.entry.brake()?, &heating, &times).ok()?
     }
 
     /// Power of the brake over time, as nodes joined by straight lines.
@@ -119,4 +132,20 @@ impl<'a> Load<'a> {
             way,
         }
     }
+}
+
+/// Times from 0 to the last node of the power, in order: `count` parts that grow evenly, since a surface warms
+/// fastest at first; the nodes; and the peak.
+fn moments(power: &[(f64, f64)], peak: f64, count: u32) -> Vec<Time> {
+    let parts = count.max(1);
+    let end = power.last().map_or(0.0, |node| node.0);
+    let growing = (0..=parts).map(|part| {
+        let share = f64::from(part) / f64::from(parts);
+        end * share * share
+    });
+    let nodes = power.iter().map(|node| node.0);
+    let mut times: Vec<f64> = growing.chain(nodes).chain([peak]).collect();
+    times.sort_by(f64::total_cmp);
+    times.dedup();
+    times.into_iter().map(Time::from_si).collect()
 }

@@ -6,7 +6,7 @@ mod load;
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{Caution, Remarks};
 use crate::calc::friction::FrictionCase;
-use crate::calc::heat::disc_heat::DiscHeat;
+use crate::calc::heat::disc_heat::{DiscHeat, Warmth};
 use crate::calc::heat::disc_series::Repeated;
 use crate::calc::method::Method;
 use crate::calc::motion::{Coordinate, Ending, Path};
@@ -145,6 +145,21 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
         friction_cases.push(CaseOutcome { friction_case: case.friction_case, energies });
     }
     faults.into_result(Outcome { friction_cases, stop, remarks })
+}
+
+/// How the disc of one brake of an entry warms in the stop of a case, in about `count` parts, from the first torque
+/// on (`heat::disc_heat::course`). None where the final speed is not reached or the temperatures cannot be told.
+#[must_use]
+pub fn course(
+    input: &Input,
+    outcome: &Outcome,
+    (case, entry): (usize, usize),
+    count: u32,
+) -> Option<Vec<Warmth>> {
+    let load = outcome.friction_cases.get(case)?.energies.as_ref()?.fitted.get(entry)?;
+    let fitted = input.stop.fitted.get(entry)?;
+    let stop = outcome.stop.friction_cases.get(case)?;
+    Load::new(input, stop, (entry, fitted)).course(load, count)
 }
 
 fn energies(

@@ -36,6 +36,8 @@ crate::method_sheet! {
 pub struct SlabVolumes {
     depth: f64,
     widths: [f64; CELLS],
+    /// Over distance of the centers and width of the cell, to the cell before and to the next, 1/m².
+    couplings: [[f64; CELLS]; 2],
     /// The parabola of a lasting flux, averaged over each cell, over the flux times depth over conductivity.
     parabola: [f64; CELLS],
     /// Temperature gradient at the heated face, K/m.
@@ -77,6 +79,7 @@ impl SlabVolumes {
         Self {
             depth,
             widths,
+            couplings: couplings(&widths),
             parabola: parabola(&widths, depth),
             gradient: 0.0,
             rest: [0.0; CELLS],
@@ -116,7 +119,7 @@ impl SlabVolumes {
         let [from, to] =
             [step.flux_at_start, step.flux_at_end].map(|flux| flux / step.conductivity);
         self.take_off(from - self.gradient);
-        let matrix = Matrix::new(&self.widths, step);
+        let matrix = Matrix::new(&self.couplings, step);
         let gain = -GAMMA * (to - from) * self.depth;
         let first = matrix.solve(self.with_source(&self.rest, gain));
         let mut between = self.rest;
@@ -140,6 +143,19 @@ impl SlabVolumes {
         }
         result
     }
+}
+
+/// What couples each cell with the one before and with the next; nothing beyond the ends.
+fn couplings(widths: &[f64; CELLS]) -> [[f64; CELLS]; 2] {
+    let mut couplings = [[0.0; CELLS]; 2];
+    let [to_before, to_next] = &mut couplings;
+    let pairs = widths.iter().zip(widths.iter().skip(1));
+    for (((width, next), here), there) in pairs.zip(to_next).zip(to_before.iter_mut().skip(1)) {
+        let distance = 0.5 * (width + next);
+        *here = 1.0 / (distance * width);
+        *there = 1.0 / (distance * next);
+    }
+    couplings
 }
 
 /// (3X² − 1)/6 averaged over each cell, X the height above the insulated face over the depth.
@@ -166,34 +182,42 @@ fn at_flat_face((first, width): (f64, f64), (second, next): (f64, f64)) -> f64 {
 struct Matrix {
     lower: [f64; CELLS],
     upper_over_pivot: [f64; CELLS],
-    pivot: [f64; CELLS],
+    /// A product is several times as quick as a quotient, and each waits for the one before.
+    one_over_pivot: [f64; CELLS],
 }
 
 impl Matrix {
-    fn new(widths: &[f64; CELLS], step: &SlabStep) -> Self {
+    fn new([to_before, to_next]: &[[f64; CELLS]; 2], step: &SlabStep) -> Self {
         let factor = GAMMA * step.duration * step.conductivity / step.volumetric_heat;
-        let mut matrix =
-            Self { lower: [0.0; CELLS], upper_over_pivot: [0.0; CELLS], pivot: [1.0; CELLS] };
-        let mut from_before = 0.0;
+        let mut matrix = Self {
+            lower: [0.0; CELLS],
+            upper_over_pivot: [0.0; CELLS],
+            one_over_pivot: [1.0; CELLS],
+        };
         let mut before_over_pivot = 0.0;
-        let cells =
-            matrix.lower.iter_mut().zip(&mut matrix.upper_over_pivot).zip(&mut matrix.pivot);
-        for (index, ((lower, upper_over_pivot), pivot)) in cells.enumerate() {
-            let width = widths.get(index).copied().unwrap_or(1.0);
-            let to_next = widths.get(index + 1).map_or(0.0, |next| factor / (0.5 * (width + next)));
-            *lower = -from_before / width;
-            let upper = -to_next / width;
-            *pivot = 1.0 + (from_before + to_next) / width - *lower * before_over_pivot;
-            *upper_over_pivot = upper / *pivot;
-            (from_before, before_over_pivot) = (to_next, *upper_over_pivot);
+        let cells = matrix
+            .lower
+            .iter_mut()
+            .zip(&mut matrix.upper_over_pivot)
+            .zip(&mut matrix.one_over_pivot);
+        for (((lower, upper_over_pivot), one_over_pivot), (before, next)) in
+            cells.zip(to_before.iter().zip(to_next))
+        {
+            *lower = -factor * before;
+            let pivot = 1.0 + factor * (before + next) - *lower * before_over_pivot;
+            *one_over_pivot = 1.0 / pivot;
+            *upper_over_pivot = -factor * next * *one_over_pivot;
+            before_over_pivot = *upper_over_pivot;
         }
         matrix
     }
 
     fn solve(&self, mut right: [f64; CELLS]) -> [f64; CELLS] {
         let mut before = 0.0;
-        for ((value, lower), pivot) in right.iter_mut().zip(self.lower).zip(self.pivot) {
-            *value = (*value - lower * before) / pivot;
+        for ((value, lower), one_over_pivot) in
+            right.iter_mut().zip(self.lower).zip(self.one_over_pivot)
+        {
+            *value = (*value - lower * before) * one_over_pivot;
             before = *value;
         }
         let mut after = 0.0;
