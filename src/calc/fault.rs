@@ -127,6 +127,15 @@ impl Faults {
         }
     }
 
+    /// The same faults, those at `from` placed at `to`: where another member says the same thing.
+    #[must_use]
+    pub fn moved(mut self, from: &str, to: &str) -> Self {
+        for fault in self.0.iter_mut().filter(|fault| fault.member == from) {
+            to.clone_into(&mut fault.member);
+        }
+        self
+    }
+
     /// Whether nothing was found.
     #[must_use]
     pub const fn is_empty(&self) -> bool {

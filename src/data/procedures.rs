@@ -46,6 +46,8 @@ pub enum ProcedureStep {
         deceleration: f64,
         /// From the start of one to that of the next.
         spacing: Spacing,
+        /// From the start of the last one to the next step.
+        then: Spacing,
     },
     /// A descent at a speed held by the brakes.
     Descent {
@@ -128,6 +130,7 @@ enum StepEntry {
         final_share: Option<f64>,
         deceleration: String,
         spacing: String,
+        then: Option<String>,
     },
     Descent {
         speed: String,
@@ -157,6 +160,7 @@ impl StepEntry {
                 final_share,
                 deceleration,
                 spacing,
+                then,
             } => {
                 let initial = printed(Dimension::Speed, &initial_speed)?;
                 let final_share = match (final_speed, final_share) {
@@ -164,9 +168,13 @@ impl StepEntry {
                     (None, Some(share)) => share,
                     _ => return Err("give final_speed or final_share".to_owned()),
                 };
-                let spacing = printed(Dimension::Time, &spacing)
-                    .map(Spacing::Time)
-                    .or_else(|_| printed(Dimension::Length, &spacing).map(Spacing::Distance))?;
+                let between = |text: &str| {
+                    printed(Dimension::Time, text)
+                        .map(Spacing::Time)
+                        .or_else(|_| printed(Dimension::Length, text).map(Spacing::Distance))
+                };
+                let spacing = between(&spacing)?;
+                let then = then.map_or(Ok(spacing), |then| between(&then))?;
                 let deceleration = printed(Dimension::Acceleration, &deceleration)?;
                 let initial_speed = initial;
                 ProcedureStep::Stops {
@@ -176,6 +184,7 @@ impl StepEntry {
                     final_share,
                     deceleration,
                     spacing,
+                    then,
                 }
             }
             Self::Descent { speed, grade, distance } => ProcedureStep::Descent {

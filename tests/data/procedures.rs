@@ -1,6 +1,6 @@
 //! The published test cycles against their printed parameters.
 
-use brakewright::calc::case::duty_cycle::{Event, procedure};
+use brakewright::calc::case::duty_cycle::{Event, Gap, procedure};
 use brakewright::calc::motion::Delays;
 use brakewright::data::procedures;
 
@@ -25,7 +25,7 @@ fn every_row_can_be_read_and_names_its_source() {
 fn the_heating_snubs_take_their_published_energy_and_time() {
     let row = procedures::find("us_571_135_heating_snubs").unwrap();
     let events = procedure::events(row, 250.0 / 3.6, Delays::NONE);
-    assert_eq!(events.len(), 30);
+    assert_eq!(events.len(), 29);
     let Event::Stop { demand, .. } = events[0] else { panic!("{:?}", events[0]) };
     let energy = 0.5 * (demand.initial_speed.powi(2) - demand.final_speed.powi(2));
     assert_close(energy, 416.7, 2e-4);
@@ -91,4 +91,29 @@ fn the_type_1_cycle_takes_its_published_energy() {
         2.78,
         1e-3,
     );
+}
+
+/// Each row runs as a duty: speed never falls but in a stop, within a row and before what comes after it.
+#[test]
+fn every_row_is_a_duty_that_can_be_driven() {
+    for row in procedures::all() {
+        let events = procedure::events(row, 50.0, Delays::NONE);
+        for pair in events.windows(2) {
+            assert!(pair[1].speeds().0 >= pair[0].speeds().1, "{}: {pair:?}", row.id);
+        }
+        let is_gap = |event: Option<&Event>| matches!(event, Some(Event::Space { .. }));
+        assert!(!is_gap(events.first()) && !is_gap(events.last()), "{}", row.id);
+    }
+}
+
+/// 49 CFR 571.121 S5.4.2 [seen]: the stop comes one minute after the last deceleration, from 20 mph.
+#[test]
+fn the_air_brake_stop_comes_a_minute_after_the_decelerations() {
+    let events = procedure::events(procedures::find("us_571_121_fade").unwrap(), 0.0, Delays::NONE);
+    let [.., Event::Space { gap, speed }, Event::Stop { demand, .. }] = events.as_slice() else {
+        panic!()
+    };
+    assert_eq!(*gap, Gap::Time(60.0));
+    assert_close(*speed, 20.0 * 0.447_04, 1e-12);
+    assert_close(demand.initial_speed, *speed, 1e-15);
 }

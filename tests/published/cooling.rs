@@ -156,15 +156,18 @@ fn repeated_stops_tend_to_the_closed_form() {
         rest: 120.0 - instant,
         resting_speeds: STILL,
     };
-    let ninth = interval.series(&disc, AMBIENT, Some(9), None).after_count.unwrap();
+    let ninth = interval.series(&disc, AMBIENT, Some(9), None, 10_000).after_count.unwrap();
     assert_close(ninth.peak - AMBIENT, 299.441_188, 1e-6);
     let steady = interval.steady(&disc).unwrap();
     assert_close(steady.peak - AMBIENT, 380.856_723, 1e-6);
     assert_close(steady.trough - AMBIENT, 380.856_723 - 60.0, 1e-6);
     // 300 K above ambient is first exceeded in the tenth stop.
-    let series = interval.series(&disc, AMBIENT, None, Some(AMBIENT + 300.0));
+    let series = interval.series(&disc, AMBIENT, None, Some(AMBIENT + 300.0), 10_000);
     assert_eq!(series.stops_to_limit, Some(10));
-    assert_eq!(interval.series(&disc, AMBIENT, None, Some(AMBIENT + 381.0)).stops_to_limit, None);
+    assert_eq!(
+        interval.series(&disc, AMBIENT, None, Some(AMBIENT + 381.0), 10_000).stops_to_limit,
+        None
+    );
 }
 
 /// Braking and cooling at once, constant properties [V]: power falling to 0 over t_s:

@@ -47,7 +47,7 @@ pub struct DutyCycleRequest {
     /// What happens, in order. Speed may jump up between events without time; it falls only in a stop.
     #[schema(min_items = 1, max_items = 1000)]
     pub events: Vec<Event>,
-    /// How often the events happen, 1 if left out; events times repeats must not exceed 20000, and times entries of `fitted` 50000.
+    /// How often the events happen, 1 if left out; events times repeats must not exceed 20000, and times entries of `fitted` 20000.
     #[schema(nullable = false)]
     pub repeats: Option<u32>,
     /// Temperature of the air, 20 degC if left out.
@@ -151,8 +151,10 @@ pub struct Crossing {
     pub repeat: u32,
     /// When, from the start.
     pub time: Time,
-    /// The highest value in the whole duty.
+    /// The value then: the first one found beyond the limit.
     pub actual: AnyAmount,
+    /// The highest value in the whole duty.
+    pub highest: AnyAmount,
     /// The limit.
     pub limit: AnyAmount,
 }
@@ -397,13 +399,14 @@ impl FittedDuty {
             &Option<duty_cycle::Crossing>,
         )| {
             let crossing = (*crossing)?;
-            let actual = Amount { dimension: bound.limit.dimension, si: *highest };
+            let amount = |si| Amount { dimension: bound.limit.dimension, si };
             Some(Crossing {
                 check: bound.code.into(),
                 event_index: crossing.place.event_index,
                 repeat: crossing.place.repeat,
                 time: Time::report_si(crossing.time, units),
-                actual: AnyAmount::report(actual, units),
+                actual: AnyAmount::report(amount(crossing.value), units),
+                highest: AnyAmount::report(amount(*highest), units),
                 limit: AnyAmount::report(bound.limit, units),
             })
         };

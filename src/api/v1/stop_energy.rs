@@ -11,6 +11,7 @@ use super::block::machine::Machine;
 use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
 use crate::api::accept::Negotiated;
 use crate::api::extract::Json;
+use crate::api::heavy::off_thread;
 use crate::api::measure::{
     Acceleration, AngularAcceleration, Energy, EnergyFlux, Finite, Force, Grade,
     HeatTransferCoefficient, Power, PowerFlux, ReportUnits, RotationalSpeed, Speed, StopFrequency,
@@ -83,7 +84,8 @@ pub struct StopEnergyRequest {
     /// The same as stops per time. Give this or `interval`, not both.
     #[schema(nullable = false)]
     pub stop_frequency: Option<StopFrequency>,
-    /// How many repeated stops to follow, 1 to 100000; until steady if left out.
+    /// How many repeated stops to follow, 1 or more, and times the fitted entries at most 10000; until steady if left
+    /// out.
     #[schema(nullable = false)]
     pub stop_count: Option<u32>,
 }
@@ -199,7 +201,8 @@ pub struct FittedEnergy {
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schema(nullable = false)]
     pub trough_after_stops: Option<Temperature>,
-    /// The stop in which the bulk first reaches the lining's continuous limit; absent if none of 100000 does.
+    /// The stop in which the bulk first reaches the lining's continuous limit; absent if none of 10000 (over the fitted
+    /// entries) does.
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schema(nullable = false)]
     pub stops_to_continuous_limit: Option<u32>,
@@ -229,8 +232,9 @@ pub(super) async fn stop_energy(
     form: Negotiated,
     request: Json<StopEnergyRequest>,
 ) -> Result<Reply<Body>, Problem> {
-    let (input, outcome, answer) = request.value.evaluate(&request.body)?;
     let figures = Figures(request.value.report_units.unwrap_or_default());
+    let (input, outcome, answer) =
+        off_thread(move || request.value.evaluate(&request.body)).await??;
     Ok(form.render(answer, |answer| chart(figures, &input, &outcome, answer)))
 }
 
@@ -258,7 +262,7 @@ impl StopEnergyRequest {
 
     fn evaluate(&self, body: &[u8]) -> Result<(Input, Outcome, StopEnergyAnswer), Problem> {
         let (input, defaults) = self.read()?;
-        let outcome = stop_energy::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
+        let outcome = self.evaluated(&input)?;
         let answer = self.answer(body, &input, &outcome, defaults);
         Ok((input, outcome, answer))
     }
@@ -297,6 +301,13 @@ impl StopEnergyRequest {
             interval,
             stop_count,
         }))
+    }
+
+    /// The outcome; a fault of the interval is placed where it was given.
+    fn evaluated(&self, input: &Input) -> Result<Outcome, Problem> {
+        let at = if self.stop_frequency.is_some() { "stop_frequency" } else { "interval" };
+        stop_energy::evaluate(input)
+            .map_err(|faults| record::no_answer(&faults.moved("interval", at)))
     }
 
     /// The time between the starts of two stops, if repeated stops are asked for.

@@ -23,6 +23,8 @@ pub struct Repeating<'a> {
     pub ambient: ThermodynamicTemperature,
     /// How many stops to follow.
     pub stop_count: Option<u32>,
+    /// How many to follow at most, also in search of a limit.
+    pub most_stops: u32,
 }
 
 /// What repeated stops do to a disc. Temperatures in K.
@@ -32,6 +34,8 @@ pub struct Repeated {
     pub steady: Option<Swing>,
     /// Highest surface temperature of that interval.
     pub steady_surface_peak: Option<f64>,
+    /// Highest surface temperature of the last stop of the count.
+    pub surface_after_count: Option<f64>,
     /// The last stop of the count, and the stop that first reaches the lining's continuous limit.
     pub series: Series,
     /// Coefficient of cooling between stops, W/(m²·K), at the hottest bulk temperature found.
@@ -70,18 +74,30 @@ pub fn of_repeated_stops(brake: &Brake, repeating: &Repeating<'_>) -> Option<Rep
     let steady = interval.steady(&disc);
     let limit =
         brake.parts().lining.parts().max_temperature_continuous.map(|limit| limit.value.si());
-    // A limit that the steady state stays below is never reached on the way up to it.
     let start = heating.start.si();
-    let limit = limit.filter(|limit| steady.is_none_or(|steady| steady.peak.max(start) >= *limit));
-    let series = interval.series(&disc, start, repeating.stop_count, limit);
-    let steady_surface_peak = steady.and_then(|steady| {
-        let start = ThermodynamicTemperature::from_si(steady.trough);
+    let first_peak = interval.swing(&disc, start).map_or(start, |swing| swing.peak);
+    // The way to the steady state is monotone: a limit above both ends of it is never reached.
+    let is_reached =
+        |limit: &f64| steady.is_none_or(|steady| steady.peak.max(first_peak) >= *limit);
+    let limit = limit.filter(is_reached);
+    let series = interval.series(&disc, start, repeating.stop_count, limit, repeating.most_stops);
+    let surface_peak = |start: f64| {
+        let start = ThermodynamicTemperature::from_si(start);
         let heat = of_one_stop(brake, &Heating { start, ..*heating }).ok()??;
         Some(heat.surface_peak_temperature.si())
-    });
+    };
+    let steady_surface_peak = steady.and_then(|steady| surface_peak(steady.trough));
+    let surface_after_count = series.last_start.and_then(surface_peak);
     let hottest = steady.or(series.after_count).map_or(start, |swing| swing.peak);
     let coefficient = surface.coefficient(hottest, repeating.resting_speeds);
-    Some(Repeated { steady, steady_surface_peak, series, coefficient, surface })
+    Some(Repeated {
+        steady,
+        steady_surface_peak,
+        surface_after_count,
+        series,
+        coefficient,
+        surface,
+    })
 }
 
 /// Notes the methods behind repeated stops.

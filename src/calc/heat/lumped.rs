@@ -13,7 +13,7 @@ crate::method_sheet! {
         symbols: [("m", "heated mass", "kg"), ("c", "specific heat", "J/(kg.K)"), ("P", "heat into the disc", "W"),
             ("h", "heat transfer coefficient", "W/(m2.K)"), ("A", "cooling area", "m2"), ("T, T_a", "bulk and ambient temperature", "K")],
         valid: "One temperature over the disc; below 10000 K.",
-        accuracy: "Marched in steps of at most 5 K with exponentials, extrapolated; exact for constant properties and power; without cooling exact by enthalpy.",
+        accuracy: "Marched in steps of at most 3 K with exponentials, extrapolated; exact for constant properties and power; without cooling exact by enthalpy.",
         source: "Lumped capacity (Newton's law of cooling); repeated stops in closed form in Shigley, Mechanical Engineering Design, equations 16-59 to 16-61 (from memory).",
         provenance: Memory,
         worked: "60 K a stop, time constant 700 s, every 120 s: after the ninth stop 299.441188 K above ambient, at last 380.856723 K.",
@@ -24,7 +24,7 @@ crate::method_sheet! {
 pub static METHODS: &[&Method] = &[&LUMPED_DISC];
 
 /// The most that the temperature may change in one step, K.
-const STEP: f64 = 5.0;
+const STEP: f64 = 3.0;
 /// A step that changes the temperature by less than this is exact enough at once, K.
 const NARROW: f64 = 0.25;
 /// A step in which the heat capacity changes by more than this share goes by its mean over the step.

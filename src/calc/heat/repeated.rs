@@ -26,7 +26,7 @@ pub static METHODS: &[&Method] = &[&REPEATED_STOPS];
 /// Above this temperature no steady state is sought, K.
 const HOTTEST_STEADY: f64 = 3000.0;
 /// Stops that are followed one by one at most.
-pub const MOST_STOPS: u32 = 100_000;
+pub const MOST_STOPS: u32 = 10_000;
 
 /// One interval between the starts of two stops.
 #[derive(Debug, Clone, PartialEq)]
@@ -55,7 +55,9 @@ pub struct Swing {
 pub struct Series {
     /// The last of the stops followed, if a count was asked for.
     pub after_count: Option<Swing>,
-    /// The stop in which the limit is first reached; none if it never is, or not within [`MOST_STOPS`].
+    /// The temperature before that stop, K.
+    pub last_start: Option<f64>,
+    /// The stop in which the limit is first reached; none if it never is, or not within those followed.
     pub stops_to_limit: Option<u32>,
 }
 
@@ -104,7 +106,7 @@ impl Interval {
         (swing.peak <= HOTTEST_STEADY).then_some(swing)
     }
 
-    /// Follows stops from `start`, K: up to `count`, and up to the one that reaches `limit`.
+    /// Follows stops from `start`, K: up to `count`, and up to the one that reaches `limit`, `most` of them.
     #[must_use]
     pub fn series(
         &self,
@@ -112,11 +114,12 @@ impl Interval {
         start: f64,
         count: Option<u32>,
         limit: Option<f64>,
+        most: u32,
     ) -> Series {
-        let mut series = Series { after_count: None, stops_to_limit: None };
+        let mut series = Series { after_count: None, last_start: None, stops_to_limit: None };
         let mut wants_limit = limit.is_some();
         let mut temperature = start;
-        for stop in 1..=MOST_STOPS {
+        for stop in 1..=most {
             let wants_count = count.is_some_and(|count| stop <= count);
             if !wants_count && !wants_limit {
                 break;
@@ -129,7 +132,7 @@ impl Interval {
             // Nothing changes any more: every later stop is the same.
             let is_steady = (swing.trough - temperature).abs() < 1e-9;
             if wants_count && (is_steady || count == Some(stop)) {
-                series.after_count = Some(swing);
+                (series.after_count, series.last_start) = (Some(swing), Some(temperature));
             }
             if is_steady {
                 break;

@@ -6,8 +6,8 @@ use proptest::prelude::*;
 use serde_json::{Value, json};
 
 use super::duty_requests::{
-    DUTY_CYCLE, STOP_ENERGY, answer, assert_conforms, brake, case, codes, duty, q, ring, try_out,
-    value, with, without,
+    DUTY_CYCLE, STOP_ENERGY, answer, assert_conforms, assert_faults, brake, case, codes, duty, q,
+    ring, try_out, value, with, without,
 };
 use crate::support::close::{assert_close, assert_within};
 
@@ -84,13 +84,15 @@ async fn a_limit_is_crossed_once_and_told_when_where_and_by_how_much() {
     let exact = 13.125 + 3.125 * (1.0 - (1.0 - share).sqrt());
     // At the end of the step in which it happens; steps are at most a twentieth of a stop.
     assert!((exact..exact + 3.125 / 20.0).contains(&value(&bulk["time"])), "{bulk} {exact}");
-    assert_close(value(&bulk["actual"]), 20.0 + 3.0 * rise(), 1e-9);
+    assert_close(value(&bulk["highest"]), 20.0 + 3.0 * rise(), 1e-9);
+    // The first value found beyond the limit: within the step in which it is passed.
+    assert!((60.0..60.0 + rise() / 10.0).contains(&value(&bulk["actual"])), "{bulk}");
     assert_eq!(bulk["limit"], json!({"value": 60.0, "unit": "degC"}));
     let rubbing = of("rubbing_speed").unwrap();
     assert_close(value(&rubbing["actual"]), 9.0, 1e-12);
     assert_eq!((&rubbing["event_index"], &rubbing["repeat"]), (&json!(0), &json!(1)));
     // 75 kJ over two pads of 5062.5 mm².
-    assert_close(value(&of("energy_flux").unwrap()["actual"]), 75e3 / 10_125.0, 1e-9);
+    assert_close(value(&of("energy_flux").unwrap()["highest"]), 75e3 / 10_125.0, 1e-9);
     assert!(of("power_flux").is_none() && of("surface_temperature").is_none());
     let codes = codes(&whole);
     for code in ["disc_bulk_temperature", "rubbing_speed", "energy_flux", "power_flux"] {
@@ -444,4 +446,37 @@ proptest! {
             assert_conforms(DUTY_CYCLE, &answer);
         }
     }
+}
+
+/// Five stops on 12 % uphill with friction fading to a fiftieth: stopped by the slope, and then not held.
+#[tokio::test]
+async fn brakes_too_hot_to_hold_let_the_machine_go() {
+    let mut body = with(&duty(), "/repeats", 5);
+    body["events"][0]["grade"] = q(12.0, "%");
+    let fade = |factor: f64| json!([{"temperature": q(30.0, "degC"), "factor": 1.0}, {"temperature": q(60.0, "degC"), "factor": factor}]);
+    body["fitted"][0]["brake"]["lining"]["fade"] = fade(0.02);
+    assert!(codes(&answer(DUTY_CYCLE, &body).await).contains(&"runs_back_before_brake"));
+    body["fitted"][0]["brake"]["lining"]["fade"] = fade(0.9);
+    assert!(!codes(&answer(DUTY_CYCLE, &body).await).contains(&"runs_back_before_brake"));
+}
+
+/// A published cycle ends with its last stop: the next event may start as slow as that ended.
+#[tokio::test]
+async fn what_comes_after_a_procedure_may_be_slower_than_it() {
+    let mut body = duty();
+    body["events"] = json!([
+        {"kind": "procedure", "id": "us_571_121_fade"},
+        {"kind": "stand", "time": q(60.0, "s")},
+        {"kind": "procedure", "id": "us_571_135_heating_snubs", "max_speed": q(100.0, "km/h")},
+        {"kind": "stop", "initial_speed": q(60.0, "km/h")},
+    ]);
+    let found = answer(DUTY_CYCLE, &body).await;
+    assert_eq!(found["results"]["friction_cases"][0]["completed"], true);
+}
+
+#[tokio::test]
+async fn a_run_knows_no_road_steeper_than_a_stop_does() {
+    let mut body = duty();
+    body["events"] = json!([{"kind": "run", "speed": q(10.0, "m/s"), "time": q(5.0, "s"), "grade": q(300.0, "%")}]);
+    assert_faults(DUTY_CYCLE, &body, &[("#/events/0/grade", "out_of_range")]).await;
 }

@@ -81,7 +81,7 @@ async fn wrong_repeats_are_refused() {
     .await;
     body["stop_frequency"] = q(0.0, "1/h");
     assert_faults(STOP_ENERGY, &body, &at("#/stop_frequency", "not_positive")).await;
-    for count in [0, 100_001] {
+    for count in [0, 10_001] {
         let body = with(&repeated(), "/stop_count", count);
         assert_faults(STOP_ENERGY, &body, &at("#/stop_count", "out_of_range")).await;
     }
@@ -94,11 +94,40 @@ async fn wrong_repeats_are_refused() {
     );
 }
 
-/// 100000 stops are followed, and quickly: once nothing changes any more they are all the same.
+/// 10000 stops are followed, and quickly: once nothing changes any more they are all the same.
 #[tokio::test]
 async fn a_hundred_thousand_stops_are_steady() {
-    let body = with(&repeated(), "/stop_count", 100_000);
+    let body = with(&repeated(), "/stop_count", 10_000);
     let found = case(STOP_ENERGY, &body).await["fitted"][0].clone();
     assert_close(value(&found["peak_after_stops"]), value(&found["steady_bulk_peak"]), 1e-6);
     assert_close(value(&found["trough_after_stops"]), value(&found["steady_bulk_trough"]), 1e-6);
+}
+
+/// With a count the surface of its last stop is judged, not only that of the first, cold one.
+#[tokio::test]
+async fn a_count_of_stops_judges_the_surface_of_its_last() {
+    let body = with(&repeated(), "/fitted/0/brake/lining/max_temperature_peak", q(150.0, "degC"));
+    let exceeds = |whole: &serde_json::Value| codes(whole).contains(&"surface_temperature");
+    assert!(!exceeds(&answer(STOP_ENERGY, &with(&body, "/stop_count", 1)).await));
+    assert!(exceeds(&answer(STOP_ENERGY, &with(&body, "/stop_count", 50)).await));
+}
+
+/// A hot start passes the limit in the first stop although the steady state stays below it.
+#[tokio::test]
+async fn a_limit_passed_in_the_first_stop_is_told() {
+    let steady = case(STOP_ENERGY, &repeated()).await;
+    let peak = value(&steady["fitted"][0]["steady_bulk_peak"]);
+    let mut body = with(&repeated(), "/start_temperature", q(peak, "degC"));
+    let limit = q(peak + 10.0, "degC");
+    body["fitted"][0]["brake"]["lining"]["max_temperature_continuous"] = limit;
+    assert_eq!(case(STOP_ENERGY, &body).await["fitted"][0]["stops_to_continuous_limit"], 1);
+}
+
+#[tokio::test]
+async fn an_interval_too_short_is_one_fault_where_it_was_given() {
+    let body = with(&repeated(), "/interval", q(1.0, "s"));
+    assert_faults(STOP_ENERGY, &body, &[("#/interval", "out_of_range")]).await;
+    let mut body = without(&repeated(), "/interval");
+    body["stop_frequency"] = q(3600.0, "1/h");
+    assert_faults(STOP_ENERGY, &body, &[("#/stop_frequency", "out_of_range")]).await;
 }

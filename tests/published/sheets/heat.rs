@@ -85,7 +85,7 @@ fn repeated() -> (f64, f64) {
         resting_speeds: STILL,
     };
     let ambient = surface.ambient();
-    let ninth = interval.series(&disc, ambient, Some(9), None).after_count.unwrap();
+    let ninth = interval.series(&disc, ambient, Some(9), None, 9).after_count.unwrap();
     (ninth.peak - ambient, interval.steady(&disc).unwrap().peak - ambient)
 }
 

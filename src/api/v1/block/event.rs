@@ -13,6 +13,7 @@ use crate::api::parse::{At, Reader};
 use crate::calc::case::duty_cycle::Event as Happening;
 use crate::calc::case::duty_cycle::procedure::{self, needs_max_speed};
 use crate::calc::fault::FaultCode;
+use crate::calc::machine::Situation;
 use crate::calc::quantity::Si;
 use crate::data::procedures;
 use crate::{only_word, tagged_union};
@@ -228,7 +229,9 @@ impl RunEvent {
         let is_vehicle = matches!(machine, Machine::Vehicle(_));
         let (at_speed, at_turning) = (at.member("speed"), at.member("rotational_speed"));
         if let Some(grade) = &self.grade {
-            reader.quantity(&at.member("grade"), grade);
+            let grade = reader.quantity(&at.member("grade"), grade);
+            let situation = Situation { grade, ..Situation::level() };
+            reader.take(at, situation.faults().into_result(()));
         }
         reader.not_applicable(
             &at.member("grade"),

@@ -77,6 +77,10 @@ pub struct ProcedureStep {
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schema(nullable = false)]
     pub interval: Option<Time>,
+    /// The same between the last stop and the next step.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub interval_to_next_step: Option<Time>,
     /// Way from the start of one stop to that of the next.
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schema(nullable = false)]
@@ -150,6 +154,7 @@ const fn empty(kind: ProcedureStepKind) -> ProcedureStep {
         final_share: None,
         deceleration: None,
         interval: None,
+        interval_to_next_step: None,
         spacing: None,
         speed: None,
         grade: None,
@@ -168,6 +173,7 @@ fn step(step: &Step) -> ProcedureStep {
             final_share,
             deceleration,
             spacing,
+            then,
         } => ProcedureStep {
             count: Some(count),
             initial_speed: speed(initial_speed),
@@ -175,6 +181,7 @@ fn step(step: &Step) -> ProcedureStep {
             final_share: Some(Finite(final_share)),
             deceleration: Some(Acceleration::report_si(deceleration, ReportUnits::Si)),
             interval: interval(spacing),
+            interval_to_next_step: interval(then),
             spacing: way(spacing).and_then(travel),
             ..empty(ProcedureStepKind::Stops)
         },

@@ -49,7 +49,7 @@ pub const MOST_EVENTS: usize = 1000;
 pub const MOST_EVENTS_IN_ALL: usize = 20_000;
 
 /// Events in all repeats times fitted entries at most: each entry is followed on its own.
-pub const MOST_FOLLOWED: usize = 50_000;
+pub const MOST_FOLLOWED: usize = 20_000;
 
 /// Something that happens in a duty. Speeds are SI along the coordinate.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -251,7 +251,7 @@ impl Input {
             holds,
             "repeats",
             FaultCode::OutOfRange,
-            "events times repeats times entries of fitted must not exceed 50000",
+            "events times repeats times entries of fitted must not exceed 20000",
         );
         let holds = (1..=100).contains(&self.fitted.len());
         faults.require(holds, "fitted", FaultCode::WrongCount, "must have 1 to 100 entries");

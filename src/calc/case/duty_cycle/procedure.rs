@@ -16,12 +16,33 @@ pub fn needs_max_speed(row: &ProcedureRow) -> bool {
 }
 
 /// The events of a test cycle, for a vehicle of `max_speed`, m/s (0 where none is needed).
+///
+/// Driven up again at once, the vehicle runs at the speed of the next stop until that is due. Nothing follows the
+/// last one.
 #[must_use]
 pub fn events(row: &ProcedureRow, max_speed: f64, delays: Delays) -> Vec<Event> {
-    row.steps.iter().flat_map(|step| events_of(step, max_speed, delays)).collect()
+    let mut events: Vec<Event> = Vec::new();
+    let mut due: Option<Gap> = None;
+    for step in &row.steps {
+        let (count, event, spacing, then) = event_of(step, max_speed, delays);
+        for _ in 0..count {
+            if let Some(gap) = due {
+                events.push(Event::Space { gap, speed: event.speeds().0 });
+            }
+            events.push(event);
+            due = spacing;
+        }
+        due = then;
+    }
+    events
 }
 
-fn events_of(step: &ProcedureStep, max_speed: f64, delays: Delays) -> Vec<Event> {
+/// How often a step has its event, the event, and what lies between two and before the next step.
+fn event_of(
+    step: &ProcedureStep,
+    max_speed: f64,
+    delays: Delays,
+) -> (u32, Event, Option<Gap>, Option<Gap>) {
     match *step {
         ProcedureStep::Stops {
             count,
@@ -30,6 +51,7 @@ fn events_of(step: &ProcedureStep, max_speed: f64, delays: Delays) -> Vec<Event>
             final_share,
             deceleration,
             spacing,
+            then,
         } => {
             let initial_speed = share_of_max_speed
                 .map_or(initial_speed, |share| initial_speed.min(share * max_speed));
@@ -40,17 +62,18 @@ fn events_of(step: &ProcedureStep, max_speed: f64, delays: Delays) -> Vec<Event>
                 deceleration: Some(deceleration),
             };
             let braking = Event::Stop { situation: Situation::level(), demand };
-            // Driven up again at once, the vehicle runs at its speed until the next start.
-            let gap = match spacing {
-                Spacing::Time(time) => Gap::Time(time),
-                Spacing::Distance(distance) => Gap::Distance(distance),
-            };
-            let space = Event::Space { gap, speed: initial_speed };
-            (0..count).flat_map(|_| [braking, space]).collect()
+            (count, braking, Some(gap(spacing)), Some(gap(then)))
         }
         ProcedureStep::Descent { speed, grade, distance } => {
             let situation = Situation { grade: Angle::from_si(grade), ..Situation::level() };
-            vec![Event::Descent { situation, speed, distance }]
+            (1, Event::Descent { situation, speed, distance }, None, None)
         }
+    }
+}
+
+const fn gap(spacing: Spacing) -> Gap {
+    match spacing {
+        Spacing::Time(time) => Gap::Time(time),
+        Spacing::Distance(distance) => Gap::Distance(distance),
     }
 }

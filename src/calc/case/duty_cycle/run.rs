@@ -147,7 +147,7 @@ impl<'a> Run<'a> {
                 }
                 let braking = Braking { situation, demand, cold };
                 let (distance, time) = braking.follow(self)?;
-                self.is_let_go |= matches!(&cold.ending, Ending::Reached(Some(run_back)) if run_back.time.is_none());
+                self.is_let_go |= demand.final_speed <= 0.0 && !self.holds(situation);
                 self.speed = demand.final_speed;
                 self.last_stop = (distance, time);
                 if self.longest_stop.is_none_or(|longest| distance > longest.distance) {
@@ -173,6 +173,13 @@ impl<'a> Run<'a> {
             Gap::Distance(spacing) => (spacing - distance) / speed,
         }
         .max(0.0)
+    }
+
+    /// Whether the brakes, as hot as they are, hold the machine at rest against what would move it back.
+    fn holds(&self, situation: &Situation) -> bool {
+        let forces = Hot::new(self, situation).forces;
+        let brake = forces.at(1.0, 0.0).brake;
+        brake[0] + brake[1] >= forces.system.reversing()
     }
 
     /// Time without braking, at a speed.

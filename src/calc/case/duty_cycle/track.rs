@@ -28,6 +28,8 @@ pub struct Crossing {
     pub place: Place,
     /// s, from the start.
     pub time: f64,
+    /// The value there, in coherent SI units.
+    pub value: f64,
 }
 
 /// What a duty does to one brake of an entry.
@@ -176,7 +178,7 @@ impl<'a> Tracked<'a> {
         for ((bound, highest), crossing) in followed.filter(|((bound, _), _)| bound.code == code) {
             *highest = highest.max(value);
             if crossing.is_none() && value > bound.limit.si {
-                *crossing = Some(Crossing { place, time });
+                *crossing = Some(Crossing { place, time, value });
             }
         }
     }

@@ -47,8 +47,11 @@ fn hottest(input: &Input, load: &BrakeLoad) -> [(CheckCode, Option<f64>); 2] {
     // A count that was asked for ends before the steady state.
     let series = after.or_else(|| load.repeated.and_then(|repeated| repeated.steady));
     let bulk = [bulk_once, series.map(|swing| swing.peak)].into_iter().flatten().reduce(f64::max);
-    let surface =
-        if after.is_some() { once } else { [once, steady].into_iter().flatten().reduce(f64::max) };
+    let surface_after = match after {
+        Some(_) => load.repeated.and_then(|repeated| repeated.surface_after_count),
+        None => steady,
+    };
+    let surface = [once, surface_after].into_iter().flatten().reduce(f64::max);
     [(CheckCode::SurfaceTemperature, surface), (CheckCode::DiscBulkTemperature, bulk)]
 }
 

@@ -113,6 +113,7 @@ impl<'a> Load<'a> {
             resting_speeds: self.speeds(between),
             ambient: self.input.ambient_temperature,
             stop_count: self.input.stop_count,
+            most_stops: self.input.most_stops(),
         };
         (self.braking_time() > 0.0)
             .then(|| disc_series::of_repeated_stops(brake, &repeating))

@@ -48,7 +48,7 @@ pub struct Input {
     pub start_temperature: ThermodynamicTemperature,
     /// Between the starts of repeated stops.
     pub interval: Option<Time>,
-    /// How many repeated stops to follow, 1 to 100 000.
+    /// How many repeated stops to follow; times the fitted entries at most 10 000.
     pub stop_count: Option<u32>,
 }
 
@@ -129,9 +129,19 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
     let mut faults = Faults::new();
     faults.not_negative("ambient_temperature", input.ambient_temperature);
     faults.not_negative("start_temperature", input.start_temperature);
-    let holds = input.stop_count.is_none_or(|count| (1..=MOST_STOPS).contains(&count));
-    faults.require(holds, "stop_count", FaultCode::OutOfRange, "must lie between 1 and 100000");
+    let holds = input.stop_count.is_none_or(|count| (1..=input.most_stops()).contains(&count));
+    let detail = "must be 1 or more, and times the fitted entries not above 10000";
+    faults.require(holds, "stop_count", FaultCode::OutOfRange, detail);
     let Some(stop) = faults.part("", stopping::evaluate(&input.stop)) else { return Err(faults) };
+    faults.require(
+        input.is_spaced(&stop),
+        "interval",
+        FaultCode::OutOfRange,
+        "must be longer than the braking time",
+    );
+    if !faults.is_empty() {
+        return Err(faults);
+    }
     let mut remarks = stop.remarks.clone();
     remarks.method(&ENERGY_BALANCE);
     remarks.caution(Caution::HotSurfaces);
@@ -145,6 +155,28 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
         friction_cases.push(CaseOutcome { friction_case: case.friction_case, energies });
     }
     faults.into_result(Outcome { friction_cases, stop, remarks })
+}
+
+impl Input {
+    /// Repeated stops that are followed at most, for each entry.
+    fn most_stops(&self) -> u32 {
+        let entries = u32::try_from(self.stop.fitted.len()).unwrap_or(u32::MAX).max(1);
+        (MOST_STOPS / entries).max(1)
+    }
+
+    /// Whether each stop is over before the next one starts, in every friction case.
+    fn is_spaced(&self, stop: &stopping::Outcome) -> bool {
+        let Some(interval) = self.interval else { return true };
+        let braking_time = |case: &stopping::CaseOutcome| {
+            let path = &case.stop.path;
+            path.end().time - path.first_torque().time
+        };
+        let done = stop
+            .friction_cases
+            .iter()
+            .filter(|case| matches!(case.stop.ending, Ending::Reached(_)));
+        done.map(braking_time).all(|time| interval.si() > time)
+    }
 }
 
 /// How the disc of one brake of an entry warms in the stop of a case, in about `count` parts, from the first torque
@@ -169,19 +201,6 @@ fn energies(
 ) -> Result<Energies, Faults> {
     let mut faults = Faults::new();
     let path = &case.stop.path;
-    let braking_time = path.end().time - path.first_torque().time;
-    if let Some(interval) = input.interval {
-        let holds = interval.si() > braking_time;
-        faults.require(
-            holds,
-            "interval",
-            FaultCode::OutOfRange,
-            "must be longer than the braking time",
-        );
-    }
-    if !faults.is_empty() {
-        return Err(faults);
-    }
     let work = path.brake_work();
     let mut fitted = Vec::with_capacity(input.stop.fitted.len());
     for (index, entry) in input.stop.fitted.iter().enumerate() {
