@@ -310,6 +310,35 @@ fn a_held_deceleration_takes_only_the_torque_it_needs() {
     assert_close(full.path.end().distance, 75.0, 1e-12);
 }
 
+/// By hand: 1.5 m/s² held where the slope alone gives 0.98: once at rest the brake holds what it could have given.
+#[test]
+fn a_held_deceleration_uphill_does_not_run_back() {
+    let forces = Forces::new(body(-980.0, 0.0), [6000.0, 0.0]);
+    let held = Demand { deceleration: Some(1.5), ..demand(10.0, 0.0, delays(0.0, 0.0, 0.3)) };
+    assert_eq!(stop(&forces, &held).unwrap().ending, Ending::Reached(None));
+    // Gravity alone exceeds what is held: the operator does nothing until the load rests, and then holds it.
+    let raised = Demand { deceleration: Some(0.5), ..held };
+    assert_eq!(stop(&forces, &raised).unwrap().ending, Ending::Reached(None));
+}
+
+/// By hand: without brake torque 100 N slow 1000 kg and a tenth of it that turns: 100/1100 m/s².
+#[test]
+fn rotating_masses_are_slowed_without_brakes_too() {
+    let system = Reduced { rotating: 0.1, ..body(0.0, 100.0) };
+    let now = Forces::new(system, [0.0, 0.0]).at(1.0, 5.0);
+    assert_close(now.deceleration, 100.0 / 1100.0, 1e-15);
+    assert_within(now.brake[0], 0.0, 1e-12);
+}
+
+/// By hand: 1000 N at the wheel against 1100 N driving, whatever turns with it.
+#[test]
+fn a_brake_too_weak_is_compared_at_the_wheel() {
+    let system = Reduced { rotating: 0.04, ..body(1100.0, 0.0) };
+    let weak = stop(&Forces::new(system, [1000.0, 0.0]), &demand(10.0, 0.0, Delays::NONE)).unwrap();
+    assert_close(weak.available, 1000.0, 1e-12);
+    assert_close(weak.driving, 1100.0, 1e-12);
+}
+
 /// With drag the held deceleration stays constant while the torque changes; energy closes all the same.
 #[test]
 fn a_held_deceleration_stays_constant_against_drag() {

@@ -201,6 +201,13 @@ fn computed(
     let lock = forces.lock_factors(hardest.map_or(input.demand.initial_speed, |(.., speed)| speed));
     let is_finite = stop.path.end().time.is_finite() && stop.path.end().distance.is_finite();
     let hardest = hardest.map(|(instant, fraction, _)| (instant, fraction));
+    // A stop that full torque cannot begin is limited by what limits full torque.
+    let hardest = match stop.ending {
+        Ending::NotReached { .. } => {
+            hardest.or_else(|| Some((forces.at(1.0, input.demand.final_speed), 1.0)))
+        }
+        Ending::Reached(_) => hardest,
+    };
     is_finite.then_some(CaseOutcome {
         friction_case: case,
         stop,

@@ -92,6 +92,7 @@ impl Remarks {
         let used = utilization_of_maximum(comparison.actual, comparison.limit, ambient);
         let Some(severity) = severity_of(used, NEAR_LIMIT_FROM) else { return };
         let position = match severity {
+            Severity::Exceeded if used.is_none() => "has no room: the surroundings are as hot as",
             Severity::Exceeded if comparison.actual.si > comparison.limit.si => "is above",
             Severity::Exceeded => "is not below",
             Severity::NearLimit | Severity::Info => "comes close to",

@@ -115,7 +115,8 @@ impl Forces {
     #[must_use]
     pub fn new(system: Reduced, demand: [f64; 2]) -> Self {
         let total = demand[0] + demand[1];
-        let shares = if total > 0.0 { demand.map(|force| force / total) } else { [0.0; 2] };
+        // Without brakes the rotating masses still have to be slowed, through the tires.
+        let shares = if total > 0.0 { demand.map(|force| force / total) } else { [1.0, 0.0] };
         let mut forces = Self { system, demand, shares, lines: [None; 5] };
         forces.lines = forces.bounds();
         forces

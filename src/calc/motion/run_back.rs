@@ -43,16 +43,11 @@ impl Backward {
 ///
 /// None if nothing moves the machine back or the brake already holds it. Resistance and the brake both act
 /// against the movement; drag at these speeds is left out.
-pub(super) fn run_back(
-    forces: &Forces,
-    fraction: f64,
-    since_dead: f64,
-    build_up: f64,
-) -> Option<RunBack> {
+pub(super) fn run_back(forces: &Forces, since_dead: f64, build_up: f64) -> Option<RunBack> {
     let system = &forces.system;
     let reversing = system.reversing();
     let holding = |share: f64| {
-        let instant = forces.at(fraction * share, 0.0);
+        let instant = forces.at(share, 0.0);
         instant.brake[0] + instant.brake[1]
     };
     let share = if build_up > 0.0 {

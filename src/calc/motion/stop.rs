@@ -119,7 +119,7 @@ pub struct Stop {
     pub fraction: f64,
     /// Force that drives against the brakes at the final speed, 0 or more.
     pub driving: f64,
-    /// Brake force that the full torque gives there, as limited.
+    /// Brake force that the full torque gives there at the wheel, as limited.
     pub available: f64,
 }
 
@@ -140,7 +140,7 @@ pub fn stop(forces: &Forces, demand: &Demand) -> Option<Stop> {
         is_modulated: run.is_modulated,
         fraction: run.largest_fraction,
         driving: (-forces.system.retarding(demand.final_speed)).max(0.0),
-        available: at_end.total_ground(),
+        available: at_end.brake[0] + at_end.brake[1],
         path: run.path,
     })
 }
@@ -320,7 +320,8 @@ impl<'a> Run<'a> {
         }
         let delays = &self.demand.delays;
         let since_dead = self.time - delays.reaction - delays.dead;
-        run_back(self.forces, self.largest_fraction, since_dead, delays.build_up)
+        // Once at rest, an operator who held a deceleration can press as hard as the brake allows.
+        run_back(self.forces, since_dead, delays.build_up)
     }
 }
 
