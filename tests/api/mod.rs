@@ -1,6 +1,7 @@
 //! The service seen through its front door.
 
 mod accept;
+mod canonical;
 mod catalog;
 mod charts;
 mod examples;
