@@ -2,7 +2,6 @@
 
 pub mod accept;
 mod access_log;
-pub mod canonical;
 pub mod count;
 mod docs;
 pub mod error_code;

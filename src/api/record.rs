@@ -1,7 +1,5 @@
 //! What every calculation answers with beside its results: warnings, cautions and the record.
 
-use std::fmt::Write as _;
-
 use serde::Serialize;
 use serde_json::Value;
 use sha2::{Digest, Sha256};
@@ -9,7 +7,6 @@ use utoipa::openapi::RefOr;
 use utoipa::openapi::schema::{ObjectBuilder, Schema, Type};
 use utoipa::{PartialSchema, ToSchema};
 
-use super::canonical::canonical;
 use super::measure::{AnyAmount, ReportUnits};
 use super::parse::RecordedDefault;
 use super::pointer;
@@ -278,10 +275,22 @@ pub fn input_digest(body: &[u8]) -> String {
     if let Value::Object(members) = &mut document {
         members.shift_remove("ref");
     }
-    let digest = Sha256::digest(canonical(&document));
-    let mut text = String::from("sha256:");
-    for byte in digest {
-        let _ = write!(text, "{byte:02x}"); // a text can always be written to memory
+    as_doubles(&mut document);
+    let canonical = serde_jcs::to_vec(&document).unwrap_or_default();
+    let digest = Sha256::digest(&canonical);
+    digest.iter().fold(String::from("sha256:"), |text, byte| text + &format!("{byte:02x}"))
+}
+
+/// Turns whole numbers into doubles, so that `95` and `95.0` are the same input.
+fn as_doubles(value: &mut Value) {
+    match value {
+        Value::Number(number) => {
+            if let Some(double) = number.as_f64().and_then(serde_json::Number::from_f64) {
+                *number = double;
+            }
+        }
+        Value::Array(items) => items.iter_mut().for_each(as_doubles),
+        Value::Object(members) => members.values_mut().for_each(as_doubles),
+        Value::Null | Value::Bool(_) | Value::String(_) => {}
     }
-    text
 }

@@ -1,7 +1,6 @@
 //! The service seen through its front door.
 
 mod accept;
-mod canonical;
 mod catalog;
 mod charts;
 mod examples;
