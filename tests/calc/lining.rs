@@ -80,6 +80,13 @@ fn every_fault_of_a_lining_is_found_at_its_name() {
     assert_eq!(found, expected);
 }
 
+#[test]
+fn no_point_of_fade_lies_at_absolute_zero() {
+    let faults = Lining::new(fading(&[(0.0, 1.0)])).unwrap_err();
+    let [fault] = faults.as_slice() else { panic!("{faults:?}") };
+    assert_eq!((fault.member.as_str(), fault.code), ("fade/0/temperature", FaultCode::OutOfRange));
+}
+
 /// A supplier may well state a continuous limit above the peak limit's; both are only compared with.
 #[test]
 fn a_continuous_limit_above_the_peak_is_no_fault() {
