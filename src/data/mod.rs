@@ -8,4 +8,5 @@ pub mod nearest;
 mod printed;
 mod printed_curve;
 pub mod procedures;
+pub mod rules;
 pub mod units;

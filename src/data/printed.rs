@@ -38,6 +38,12 @@ impl<'text> Printed<'text> {
             .ok_or_else(|| format!("{}: not its unit", self.unit))
     }
 
+    /// The upper bound in SI, if it is a range.
+    pub(super) fn upper(&self, dimension: Dimension) -> Result<Option<f64>, String> {
+        let bound = |upper| Self { lower: upper, upper: None, unit: self.unit }.lower(dimension);
+        self.upper.map(bound).transpose()
+    }
+
     /// The value in SI; a range is refused.
     pub(super) fn single(&self, dimension: Dimension) -> Result<f64, String> {
         match self.upper {

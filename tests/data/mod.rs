@@ -1,4 +1,5 @@
 mod disc_materials;
 mod nearest;
 mod procedures;
+mod rules;
 mod units;
