@@ -2,8 +2,8 @@
 
 use brakewright::calc::method::Provenance;
 use brakewright::data::rules::{
-    self, ControlForce, DistanceLimit, FromSpeed, HoldTest, MachineKind, NotApplicable, Resolution,
-    ResolvedStop, RuleRow, RuleTest, StopTest,
+    self, Clock, ControlForce, DistanceLimit, FromSpeed, HoldTest, MachineKind, NotApplicable,
+    Resolution, ResolvedStop, RuleRow, RuleTest, StopTest,
 };
 
 use crate::support::close::assert_close;
@@ -256,4 +256,37 @@ fn a_formula_is_kept_as_printed() {
     // 0.15 V is a delay of 0.54 s, V²/130 a deceleration of 130/25.92.
     assert_close(formula.linear, 0.54, 1e-14);
     assert_close(formula.deceleration().unwrap(), 130.0 / 25.92, 1e-14);
+}
+
+/// The reference file's table of what a distance includes [seen]: the rules for vehicles start at the control. Machines
+/// that are stopped by a command count from it.
+#[test]
+fn distances_of_drivers_count_from_the_control() {
+    let commanded =
+        ["ilo_lift_b8_4_3", "wac_296_96_05150", "csa_z98_6_6_2", "uk_woodworking_run_down"];
+    for (row, stop) in stops() {
+        let expected =
+            if commanded.contains(&row.id.as_str()) { Clock::Signal } else { Clock::Control };
+        assert_eq!(stop.clock, expected, "{}", row.id);
+        assert!(stop.max_distance.is_none() || stop.clock == Clock::Control, "{}", row.id);
+    }
+}
+
+/// No row has it today: a printed speed for one class of speed only.
+#[test]
+fn a_printed_speed_for_one_class_needs_the_maximum_speed() {
+    let rows = rules::parse(
+        "[[rule]]\nid = \"i\"\nname = \"n\"\nsource = \"s\"\nprovenance = \"seen\"\ncategory = \"c\"\n\
+         machines = [\"vehicle\"]\n[[rule.test]]\nkind = \"stop\"\nfrom = \"10 m/s\"\n\
+         max_speed_up_to = \"20 m/s\"\nclock = \"control\"",
+    )
+    .unwrap();
+    assert_eq!(rows[0].resolve(None), [Resolution::MaxSpeedNeeded]);
+    let other = [Resolution::NotApplicable(NotApplicable::OtherSpeedClass)];
+    assert_eq!(rows[0].resolve(Some(20.1)), other);
+    let found = rows[0].resolve(Some(20.0));
+    let [Resolution::Stop(stop)] = found[..] else { panic!("{found:?}") };
+    assert_close(stop.speed, 10.0, 1e-15);
+    let out = [Resolution::NotApplicable(NotApplicable::AboveMaxSpeed)];
+    assert_eq!(rows[0].resolve(Some(9.9)), out);
 }

@@ -1,5 +1,6 @@
 //! Distances of laws and rules through the front door. Marks: S read in the text, M from memory, V recomputed.
 
+use brakewright::data::rules::{self, Resolution, ResolvedStop};
 use serde_json::Value;
 
 use crate::support::client::TestApp;
@@ -192,4 +193,302 @@ async fn distance_terms_give_the_mean_fully_developed_deceleration_printed_with_
 async fn a_mile_an_hour_is_exact() {
     let found = stop(&braked(1.0, &q(1.0, "mph"))).await;
     assert_close(si(&found["total_time"]), MILE_PER_HOUR, 1e-15);
+}
+
+const KILOMETRE_PER_HOUR: f64 = 1.0 / 3.6; // m/s
+const POUND_FORCE: f64 = 4.448_221_615_260_5; // N, exact
+
+/// The stops of a catalog row for a machine of `max_speed`, m/s.
+fn row_stops(id: &str, max_speed: f64) -> Vec<ResolvedStop> {
+    let row = rules::find(id).unwrap_or_else(|| panic!("{id}"));
+    let stop = |resolution| match resolution {
+        Resolution::Stop(stop) => Some(stop),
+        Resolution::Hold(_)
+        | Resolution::ForceOverWeight(_)
+        | Resolution::MaxSpeedNeeded
+        | Resolution::NotApplicable(_) => None,
+    };
+    row.resolve(Some(max_speed)).into_iter().filter_map(stop).collect()
+}
+
+/// The only stop of a row, for a machine that reaches its speed.
+fn row_stop(id: &str) -> ResolvedStop {
+    let found = row_stops(id, 90.0);
+    assert_eq!(found.len(), 1, "{id}");
+    found[0]
+}
+
+/// 49 CFR 393.52(d) [S]: feet of the service and emergency columns, ft/s², percent; note (a): column 2 is the
+/// deceleration over 32.2 ft/s².
+#[test]
+fn the_rows_of_393_52_hold_its_table() {
+    let rows = [
+        ("a1", 65.2, 21.0, 20.0, 54.0),
+        ("a2", 52.8, 17.0, 25.0, 66.0),
+        ("a3", 43.5, 14.0, 35.0, 85.0),
+        ("b1", 52.8, 17.0, 25.0, 66.0),
+        ("b2", 43.5, 14.0, 35.0, 85.0),
+        ("b3", 43.5, 14.0, 40.0, 90.0),
+    ];
+    for (row, percent, deceleration, service, emergency) in rows {
+        let stop = row_stop(&format!("cfr49_393_52_{row}_service"));
+        assert_close(stop.speed, 20.0 * MILE_PER_HOUR, 1e-14);
+        assert_close(stop.max_distance.unwrap() / FOOT, service, 1e-14);
+        let found = stop.limits.min_peak_deceleration.unwrap() / FOOT;
+        assert_close(found, deceleration, 1e-14);
+        assert_close(100.0 * stop.limits.min_braking_ratio.unwrap(), percent, 1e-14);
+        // Printed with three digits.
+        assert_within(found / 32.2, stop.limits.min_braking_ratio.unwrap(), 5e-4);
+        let stop = row_stop(&format!("cfr49_393_52_{row}_emergency"));
+        assert_close(stop.max_distance.unwrap() / FOOT, emergency, 1e-14);
+        assert_eq!(stop.limits, rules::StopLimits::default());
+    }
+    // 49 CFR 570.59(a)(2) [S].
+    for (row, feet) in [("single_unit", 35.0), ("combination", 40.0)] {
+        let stop = row_stop(&format!("cfr49_570_59_{row}"));
+        assert_close(stop.max_distance.unwrap() / FOOT, feet, 1e-14);
+    }
+}
+
+/// 49 CFR 571.135 [S]: metres and feet printed for 100 km/h beside each formula; the implied deceleration [V].
+#[test]
+fn the_formulas_of_571_135_give_its_printed_distances() {
+    let rows = [
+        ("5", 70.0, 230.0, 6.43),
+        ("7", 70.0, 230.0, 6.43),
+        ("8", 85.0, 279.0, 5.14),
+        ("9", 110.0, 361.0, 3.86),
+        ("10", 168.0, 551.0, 2.44),
+        ("11", 168.0, 551.0, 2.44),
+        ("14", 89.0, 292.0, 4.88),
+    ];
+    for (paragraph, metres, feet, deceleration) in rows {
+        let stop = row_stop(&format!("cfr49_571_135_s7_{paragraph}"));
+        assert_close(stop.speed, 100.0 * KILOMETRE_PER_HOUR, 1e-14);
+        let distance = stop.max_distance.unwrap();
+        assert_within(distance, metres, 1e-9);
+        assert_within(distance / FOOT, feet, 0.5);
+        let after_delay = distance - 0.10 * 100.0;
+        assert_within(0.5 * stop.speed.powi(2) / after_delay, deceleration, 0.005);
+    }
+    let fast = row_stop("cfr49_571_135_s7_6");
+    assert_close(fast.speed, 160.0 * KILOMETRE_PER_HOUR, 1e-14);
+    let after_delay = fast.max_distance.unwrap() - 16.0;
+    assert_within(0.5 * fast.speed.powi(2) / after_delay, 5.76, 0.005);
+}
+
+/// 49 CFR 571.121 Table II [S], all cells.
+#[test]
+fn the_rows_of_571_121_hold_its_table() {
+    for column in 1..=8 {
+        let stops = row_stops(&format!("cfr49_571_121_table_2_column_{column}"), 90.0);
+        assert_eq!(stops.len(), TABLE_II.len());
+        for (stop, printed) in stops.iter().zip(TABLE_II) {
+            assert_close(stop.speed / MILE_PER_HOUR, printed[0], 1e-14);
+            assert_close(stop.max_distance.unwrap() / FOOT, printed[column], 1e-14);
+        }
+    }
+}
+
+/// 49 CFR 571.122 [S], the implied decelerations [V] with two decimals, at the test speed of the category.
+#[test]
+fn the_rows_of_571_122_imply_the_decelerations_recomputed_for_them() {
+    let rows = [
+        ("front_3_1", 40.0, 3.48),
+        ("front_3_2", 40.0, 2.70),
+        ("front_3_3", 60.0, 4.43),
+        ("front_3_4", 60.0, 3.67),
+        ("rear_3_1", 40.0, 2.70),
+        ("rear_3_3", 60.0, 2.90),
+        ("rear_3_4", 60.0, 3.67),
+        ("combined_3_1", 40.0, 4.43),
+        ("combined_3_3", 60.0, 5.08),
+        ("combined_3_4", 60.0, 5.43),
+        ("combined_3_5", 60.0, 5.01),
+        ("secondary_3_2", 40.0, 2.51),
+        ("secondary_3_5", 60.0, 2.51),
+    ];
+    for (row, speed, deceleration) in rows {
+        let stop = row_stop(&format!("cfr49_571_122_{row}"));
+        assert_close(stop.speed, speed * KILOMETRE_PER_HOUR, 1e-14);
+        let after_delay = stop.max_distance.unwrap() - 0.1 * speed;
+        assert_within(0.5 * stop.speed.powi(2) / after_delay, deceleration, 0.005);
+        // A slow one starts from 0.9 of its maximum.
+        let slow = row_stops(&format!("cfr49_571_122_{row}"), 10.0);
+        assert_close(slow[0].speed, 9.0, 1e-14);
+    }
+    // Without a delay.
+    for (row, deceleration) in [("s6_4", 6.43), ("abs_3_1", 6.12), ("abs_3_3", 6.12)] {
+        let stop = row_stop(&format!("cfr49_571_122_{row}"));
+        let mean = 0.5 * stop.speed.powi(2) / stop.max_distance.unwrap();
+        assert_within(mean, deceleration, 0.005);
+    }
+    for (row, linear, deceleration) in [("s6_5", 16.0, 5.76), ("s6_10", 5.0, 3.30)] {
+        let stop = row_stops(&format!("cfr49_571_122_{row}"), 90.0)[0];
+        let after_delay = stop.max_distance.unwrap() - linear;
+        assert_within(0.5 * stop.speed.powi(2) / after_delay, deceleration, 0.005);
+    }
+}
+
+/// Directive 93/14/EEC, Annex, Appendix 1 [S]: V²/Q beside a deceleration; Q/25.92 [V].
+#[test]
+fn the_rows_of_93_14_give_q_over_25_92() {
+    let rows = [
+        ("front_moped_2", 90.0, 3.47, 3.4),
+        ("front_moped_3", 70.0, 2.70, 2.7),
+        ("front_motorcycle", 115.0, 4.44, 4.4),
+        ("front_sidecar", 95.0, 3.67, 3.6),
+        ("rear_moped_2", 70.0, 2.70, 2.7),
+        ("rear_moped_3", 70.0, 2.70, 2.7),
+        ("rear_motorcycle", 75.0, 2.89, 2.9),
+        ("rear_sidecar", 95.0, 3.67, 3.6),
+        ("unladen_moped", 65.0, 2.51, 2.5),
+        ("unladen_motorcycle", 65.0, 2.51, 2.5),
+    ];
+    for (row, q, implied, printed) in rows {
+        let stop = row_stop(&format!("eu_93_14_{row}"));
+        let speed = if row.contains("moped") { 40.0 } else { 60.0 };
+        assert_close(stop.speed, speed * KILOMETRE_PER_HOUR, 1e-14);
+        let after_delay = stop.max_distance.unwrap() - 0.1 * speed;
+        assert_close(speed * speed / after_delay, q, 1e-12);
+        assert_within(0.5 * stop.speed.powi(2) / after_delay, implied, 0.005);
+        let found = stop.limits.min_mean_fully_developed_deceleration.unwrap();
+        assert_close(found, printed, 1e-15);
+    }
+}
+
+/// Regulation (EU) 2015/68, Annex II, point 3 [S]: 14.28 m from 30 km/h and 18.31 m from 40 km/h [V]; 3.55, 5.0 m/s².
+/// UN R13 Type-0 [M]: 36.69 m from 60 km/h, 61.23 m from 80 km/h [V]; UN R13-H [M]: 70 m.
+#[test]
+fn tractors_trucks_and_cars_have_their_distances() {
+    for (row, max_speed, metres, deceleration) in [
+        ("eu_2015_68_up_to_30", 30.0, 14.28, 3.55),
+        ("eu_2015_68_above_30", 40.0, 18.31, 5.0),
+        ("un_r13_type_0_n2", 90.0, 36.69, 5.0),
+        ("un_r13_type_0_n3", 90.0, 36.69, 5.0),
+        ("un_r13_type_0_m2", 90.0, 36.69, 5.0),
+        ("un_r13_type_0_m3", 90.0, 36.69, 5.0),
+        ("un_r13_type_0_n1", 90.0, 61.23, 5.0),
+        ("un_r13h_type_0", 180.0, 70.0, 6.43),
+    ] {
+        let [stop] = row_stops(row, max_speed * KILOMETRE_PER_HOUR)[..] else { panic!("{row}") };
+        assert_within(stop.max_distance.unwrap(), metres, 0.005);
+        let found = stop.limits.min_mean_fully_developed_deceleration.unwrap();
+        assert_close(found, deceleration, 1e-15);
+    }
+}
+
+/// 16 CFR 1512.5 and 1512.18 [S]: 15 ft (4.57 m) from 15 or 10 mph, 40 lbf (178 N).
+/// 29 CFR 1910.179(f)(4)(vii) [S]: from 200 ft/min in 20 ft [V].
+#[test]
+fn bicycles_and_cranes_have_their_distances() {
+    for (row, speed) in [("hand_fast", 15.0), ("hand_slow", 10.0), ("foot_fast", 15.0)] {
+        let stop = row_stop(&format!("cfr16_1512_5_{row}"));
+        assert_close(stop.speed / MILE_PER_HOUR, speed, 1e-14);
+        assert_within(stop.max_distance.unwrap(), 4.57, 0.005);
+    }
+    let force = rules::find("cfr16_1512_5_hand_fast").unwrap().hand_force.unwrap().most;
+    assert_close(force, 40.0 * POUND_FORCE, 1e-14);
+    assert_within(force, 178.0, 0.5);
+    let foot_per_minute = FOOT / 60.0;
+    let [travel] = row_stops("cfr29_1910_179_travel", 200.0 * foot_per_minute)[..] else {
+        panic!()
+    };
+    assert_close(travel.speed, 200.0 * foot_per_minute, 1e-14);
+    assert_close(travel.max_distance.unwrap() / FOOT, 20.0, 1e-12);
+}
+
+/// Slopes, holding factors and forces over weight, as printed: 49 CFR 571.135 S7.12, 571.121 S5.6, 571.122 S6.8,
+/// 571.105 S5.2, 29 CFR 1910.179(f)(2)(i), UK MOT inspection manual 1.2.2, 1.3.2, 1.4.2 [S]; UN R13, R13-H [M].
+#[test]
+fn parking_and_holding_rows_hold_their_figures() {
+    let slopes = [
+        ("cfr49_571_135_s7_12", 20.0),
+        ("cfr49_571_121_s5_6_2", 20.0),
+        ("cfr49_571_122_s6_8", 18.0),
+        ("cfr49_571_105_s5_2_school_bus", 30.0),
+        ("cfr49_571_105_s5_2_light", 20.0),
+        ("cfr49_571_105_s5_2_heavy", 20.0),
+        ("un_r13_parking", 18.0),
+        ("un_r13h_parking", 20.0),
+    ];
+    for (row, percent) in slopes {
+        let tests = rules::find(row).unwrap().resolve(None);
+        let [Resolution::Hold(rules::HoldTest::Slope { grade, is_both_ways: true })] = tests[..]
+        else {
+            panic!("{row}: {tests:?}")
+        };
+        assert_close(100.0 * grade.tan(), percent, 1e-14);
+    }
+    for (row, factor) in [("other", 1.25), ("mechanical", 1.0), ("two", 1.0)] {
+        let row = format!("cfr29_1910_179_hoist_{row}");
+        let hold = rules::HoldTest::Load { load_factor: 1.0, min_holding_factor: factor };
+        assert_eq!(rules::find(&row).unwrap().resolve(None), [Resolution::Hold(hold)]);
+    }
+    let ratios = [
+        ("uk_mot_service_m1_new", 0.58),
+        ("uk_mot_service_m1_old", 0.50),
+        ("uk_mot_service_n1_m2_m3", 0.50),
+        ("uk_mot_service_l5", 0.50),
+        ("uk_mot_service_l2_l6", 0.40),
+        ("uk_mot_first_control_l", 0.30),
+        ("uk_mot_second_control_l", 0.25),
+        ("uk_mot_secondary", 0.25),
+        ("uk_mot_parking", 0.16),
+        ("cfr49_571_121_s5_6_1_tractor", 0.14),
+    ];
+    for (row, ratio) in ratios {
+        let found = rules::find(row).unwrap().resolve(None);
+        assert_eq!(found, [Resolution::ForceOverWeight(ratio)], "{row}");
+    }
+}
+
+/// Control forces as printed, N: 49 CFR 571.135, 571.122, regulation (EU) 2015/68 [S]; 571.105 S5.2 in pounds [S];
+/// UN R13, R13-H [M].
+#[test]
+fn rows_hold_their_control_forces() {
+    let rows = [
+        ("cfr49_571_135_s7_12", Some(400.0), Some(500.0)),
+        ("cfr49_571_135_s7_10", None, Some(500.0)),
+        ("cfr49_571_122_front_3_3", Some(200.0), Some(350.0)),
+        ("cfr49_571_122_front_3_4", Some(200.0), Some(500.0)),
+        ("cfr49_571_122_combined_3_5", None, None),
+        ("cfr49_571_122_s6_4", Some(250.0), Some(400.0)),
+        ("cfr49_571_122_s6_8", Some(400.0), Some(500.0)),
+        ("eu_2015_68_up_to_30", Some(400.0), Some(600.0)),
+        ("cfr49_571_105_s5_2_light", Some(90.0 * POUND_FORCE), Some(125.0 * POUND_FORCE)),
+        ("cfr49_571_105_s5_2_heavy", Some(125.0 * POUND_FORCE), Some(150.0 * POUND_FORCE)),
+        ("un_r13_type_0_n3", None, Some(700.0)),
+        ("un_r13_parking", Some(600.0), Some(700.0)),
+        ("un_r13h_parking", Some(400.0), Some(500.0)),
+    ];
+    for (row, hand, foot) in rows {
+        let found = rules::find(row).unwrap();
+        for (found, expected) in [(found.hand_force, hand), (found.foot_force, foot)] {
+            match (found, expected) {
+                (Some(force), Some(expected)) => assert_close(force.most, expected, 1e-14),
+                (found, expected) => assert_eq!((found, expected), (None, None), "{row}"),
+            }
+        }
+    }
+}
+
+/// CSA Z98-07 6.6.2 [S]: 0.45 to 1.5 m/s²; HSE WIS 38 [S]: 10 s; ILO B8.4.3 and WAC 296-96-05150 [S]: the load with
+/// a quarter more.
+#[test]
+fn lifts_ropeways_and_machine_tools_count_from_their_own_speed() {
+    let stop = |row| {
+        let [stop] = row_stops(row, 2.5)[..] else { panic!("{row}") };
+        assert_close(stop.speed, 2.5, 1e-15);
+        stop
+    };
+    let ropeway = stop("csa_z98_6_6_2").limits;
+    assert_eq!((ropeway.min_mean_deceleration, ropeway.max_deceleration), (Some(0.45), Some(1.5)));
+    assert_eq!(stop("uk_woodworking_run_down").limits.max_time, Some(10.0));
+    for row in ["ilo_lift_b8_4_3", "wac_296_96_05150"] {
+        assert_close(stop(row).load_factor, 1.25, 1e-15);
+    }
+    let hold = rules::HoldTest::Load { load_factor: 1.25, min_holding_factor: 1.0 };
+    let resolved = rules::find("wac_296_96_05150").unwrap().resolve(Some(2.5));
+    assert!(resolved.contains(&Resolution::Hold(hold)));
 }

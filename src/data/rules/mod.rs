@@ -136,17 +136,6 @@ pub enum Clock {
     Signal,
 }
 
-impl Clock {
-    /// The name on the wire.
-    #[must_use]
-    pub const fn as_str(self) -> &'static str {
-        match self {
-            Self::Control => "control",
-            Self::Signal => "signal",
-        }
-    }
-}
-
 /// The longest distance allowed.
 #[derive(Debug, Clone, PartialEq)]
 pub enum DistanceLimit {

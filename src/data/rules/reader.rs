@@ -63,7 +63,7 @@ enum ClockEntry {
 #[derive(Deserialize)]
 #[serde(deny_unknown_fields, tag = "kind", rename_all = "snake_case")]
 enum TestEntry {
-    Stop(StopEntry),
+    Stop(Box<StopEntry>),
     /// Stops that differ in speed and distance only.
     StopTable {
         clock: ClockEntry,

@@ -71,7 +71,7 @@ impl StopTest {
     fn resolve(&self, max_speed: Option<f64>) -> Resolution {
         let Some(max_speed) = max_speed else {
             return match self.from {
-                FromSpeed::Fixed(speed) if !self.is_for_a_speed_class() => self.from_speed(speed),
+                FromSpeed::Fixed(speed) if !self.is_for_a_speed_class() => self.at(speed),
                 FromSpeed::Fixed(_) | FromSpeed::ShareOfMaxSpeed { .. } => {
                     Resolution::MaxSpeedNeeded
                 }
@@ -86,10 +86,10 @@ impl StopTest {
             FromSpeed::Fixed(speed) if speed > max_speed => {
                 Resolution::NotApplicable(NotApplicable::AboveMaxSpeed)
             }
-            FromSpeed::Fixed(speed) => self.from_speed(speed),
+            FromSpeed::Fixed(speed) => self.at(speed),
             FromSpeed::ShareOfMaxSpeed { share, at_most } => {
                 let speed = share * max_speed;
-                self.from_speed(at_most.map_or(speed, |at_most| at_most.min(speed)))
+                self.at(at_most.map_or(speed, |at_most| at_most.min(speed)))
             }
         }
     }
@@ -98,7 +98,7 @@ impl StopTest {
         self.max_speed_above.is_some() || self.max_speed_up_to.is_some()
     }
 
-    fn from_speed(&self, speed: f64) -> Resolution {
+    fn at(&self, speed: f64) -> Resolution {
         let max_distance = self.max_distance.as_ref().map(|limit| limit.at(speed));
         let Self { load_factor, clock, limits, .. } = *self;
         Resolution::Stop(ResolvedStop { speed, load_factor, clock, max_distance, limits })
