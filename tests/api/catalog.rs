@@ -7,19 +7,20 @@ use axum::http::Request;
 use brakewright::api::openapi::openapi_json;
 use brakewright::calc::method_index;
 use brakewright::calc::quantity::{Si, ThermodynamicTemperature, ZERO_CELSIUS};
-use brakewright::data::{disc_materials, friction_codes, linings, procedures, units};
+use brakewright::data::{disc_materials, friction_codes, linings, procedures, rules, units};
 use serde_json::{Map, Value, json};
 
 use crate::support::client::TestApp;
 use crate::support::close::assert_close;
 
 /// Path, schema of a row, number of rows.
-fn lists() -> [(&'static str, &'static str, usize); 6] {
+fn lists() -> [(&'static str, &'static str, usize); 7] {
     [
         ("linings", "LiningItem", linings::all().len()),
         ("friction-codes", "FrictionCodeItem", friction_codes::table().letters.len()),
         ("disc-materials", "DiscMaterialItem", disc_materials::all().len()),
         ("procedures", "ProcedureItem", procedures::all().len()),
+        ("rules", "RuleItem", rules::all().len()),
         ("units", "UnitItem", units::all().len()),
         ("methods", "MethodItem", method_index::all().count()),
     ]
@@ -110,6 +111,7 @@ async fn an_unknown_id_is_answered_with_the_nearest_known_one() {
         ("linings/sintered_metal_dri", "sintered_metal_dry"),
         ("disc-materials/grey_cast_iron", "gray_cast_iron"),
         ("procedures/us_571_135_heating_snub", "us_571_135_heating_snubs"),
+        ("rules/cfr49_571_135_s75", "cfr49_571_135_s7_5"),
         ("units/length.inches", "length.inch"),
         ("methods/friction.torqe", "friction.torque"),
         ("friction-codes/f", "F"),
@@ -430,4 +432,65 @@ async fn a_procedure_is_listed_with_its_steps() {
             );
         }
     }
+}
+
+/// 49 CFR 571.135 S7.5 (seen): 0.10 V + 0.0060 V², V in km/h, pedal force 65 to 500 N; 393.52(d) row A(1) (seen):
+/// 20 ft, 21 ft/s² and 65.2 % from 20 mph; 29 CFR 1910.179 (seen): 125 %.
+#[tokio::test]
+async fn a_rule_is_listed_with_its_tests() {
+    let cold = item("rules", "cfr49_571_135_s7_5").await;
+    assert_eq!(cold["machines"], json!(["vehicle"]));
+    let newtons = |value: f64| json!({"value": value, "unit": "N"});
+    assert_eq!(cold["foot_force"], json!({"min": newtons(65.0), "max": newtons(500.0)}));
+    assert!(cold["hand_force"].is_null());
+    let test = &cold["tests"][0];
+    assert_eq!((&test["kind"], &test["clock"]), (&json!("stop"), &json!("control")));
+    assert_close(test["initial_speed"]["value"].as_f64().unwrap(), 100.0 / 3.6, 1e-14);
+    let formula = &test["max_distance_formula"];
+    assert_eq!(formula["text"], "0.10 V + 0.0060 V2 [m, km/h]");
+    assert_close(formula["time"]["value"].as_f64().unwrap(), 0.36, 1e-14);
+    // The column of implied decelerations of the reference file: 6.43 m/s², here with its digits.
+    let implied = 1.0 / (25.92 * 0.0060);
+    assert_close(formula["deceleration"]["value"].as_f64().unwrap(), implied, 1e-14);
+    let used = item("rules", "cfr49_393_52_a1_service").await;
+    let test = &used["tests"][0];
+    assert_close(test["max_distance"]["value"].as_f64().unwrap(), 20.0 * 0.3048, 1e-14);
+    assert_close(test["min_peak_deceleration"]["value"].as_f64().unwrap(), 21.0 * 0.3048, 1e-14);
+    assert_eq!(test["min_braking_ratio"], 0.652);
+    let hoist = item("rules", "cfr29_1910_179_hoist_other").await;
+    assert_eq!(hoist["tests"], json!([{"kind": "hold_load", "min_holding_factor": 1.25}]));
+    assert_eq!(item("rules", "un_r13_parking").await["provenance"], "memory");
+}
+
+/// The members that each kind promises are there, and no others; every member is met somewhere.
+#[tokio::test]
+async fn the_members_of_a_rules_tests_are_those_of_its_kind() {
+    let document: Value = serde_json::from_str(openapi_json()).unwrap();
+    let known = document["components"]["schemas"]["RuleTest"]["properties"].as_object().unwrap();
+    let mut met = BTreeSet::new();
+    for row in items("rules").await {
+        for test in row["tests"].as_array().unwrap() {
+            met.extend(test.as_object().unwrap().keys().cloned());
+            let is_there = |member: &str| !test[member].is_null();
+            let stop = ["initial_speed", "share_of_max_speed", "clock", "max_time", "max_distance"];
+            let stop = stop.into_iter().any(is_there);
+            let found = (
+                stop,
+                ["grade", "both_ways"].into_iter().all(is_there),
+                is_there("min_holding_factor"),
+                is_there("min_force_over_weight"),
+            );
+            let expected = match test["kind"].as_str().unwrap() {
+                "stop" => (true, false, false, false),
+                "hold_on_slope" => (false, true, false, false),
+                "hold_load" => (false, false, true, false),
+                _ => (false, false, false, true),
+            };
+            assert_eq!(found, expected, "{row}");
+            let speed = is_there("initial_speed") || is_there("share_of_max_speed");
+            assert_eq!((speed, is_there("clock")), (expected.0, expected.0), "{row}");
+        }
+    }
+    let never: Vec<_> = known.keys().filter(|member| !met.contains(*member)).collect();
+    assert!(never.is_empty(), "{never:?}");
 }

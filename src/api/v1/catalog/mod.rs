@@ -7,6 +7,7 @@ pub mod friction_codes;
 pub mod linings;
 pub mod methods;
 pub mod procedures;
+pub mod rules;
 pub mod units;
 
 use axum::body::Body;
@@ -33,6 +34,8 @@ pub(super) fn routes() -> OpenApiRouter {
         .routes(routes!(disc_materials::disc_material))
         .routes(routes!(procedures::procedures))
         .routes(routes!(procedures::procedure))
+        .routes(routes!(rules::rules))
+        .routes(routes!(rules::rule))
         .routes(routes!(units::units))
         .routes(routes!(units::unit))
         .routes(routes!(methods::methods))
