@@ -1,6 +1,8 @@
 //! What every calculation answers with beside its results: warnings, cautions and the record.
 
-use serde::Serialize;
+use std::borrow::Cow;
+
+use serde::{Deserialize, Deserializer, Serialize, Serializer};
 use serde_json::Value;
 use sha2::{Digest, Sha256};
 use utoipa::openapi::RefOr;
@@ -82,13 +84,31 @@ impl PartialSchema for WarningCode {
 impl ToSchema for WarningCode {}
 
 /// The code of a check. A closed set.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
-#[serde(transparent)]
-pub struct CheckName(&'static str);
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct CheckName(pub CheckCode);
 
 impl From<CheckCode> for CheckName {
     fn from(code: CheckCode) -> Self {
-        Self(code.as_str())
+        Self(code)
+    }
+}
+
+impl<'de> Deserialize<'de> for CheckName {
+    fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+        let text = <Cow<'de, str>>::deserialize(deserializer)?;
+        let code = CheckCode::ALL.iter().find(|code| code.as_str() == text);
+        code.map(|code| Self(*code)).ok_or_else(|| {
+            serde::de::Error::invalid_value(
+                serde::de::Unexpected::Str(&text),
+                &"the code of a check",
+            )
+        })
+    }
+}
+
+impl Serialize for CheckName {
+    fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        serializer.serialize_str(self.0.as_str())
     }
 }
 
@@ -215,9 +235,13 @@ impl Recorded<'_> {
         }
     }
 
-    fn locate(&self, subject: &Subject) -> String {
+    /// The pointer of an input.
+    #[must_use]
+    pub fn locate(&self, subject: &Subject) -> String {
         match subject {
             Subject::Request(input) => pointer_to(input),
+            Subject::Duty { index, input } => pointer_to(&format!("duties/{index}/{input}")),
+            Subject::Waiver { index } => pointer_to(&format!("waive/{index}")),
             Subject::Fitted { index, input } => pointer_to(&format!("fitted/{index}/{input}")),
             Subject::Brake { fitted_index: Some(index), input } => {
                 pointer_to(&format!("fitted/{index}/brake/{input}"))

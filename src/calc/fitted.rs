@@ -1,5 +1,7 @@
 //! Brakes as fitted to a machine: how many, where, and who presses them.
 
+use std::sync::Arc;
+
 use super::actuation::{Actuation, Chosen, Input, Pressing};
 use super::brake::Brake;
 use super::fault::{FaultCode, Faults};
@@ -10,7 +12,7 @@ use super::quantity::{Force, Length, Si, Torque, Volume};
 #[derive(Debug, Clone, PartialEq)]
 pub enum Source {
     /// A brake in all its parts.
-    Brake(Box<Brake>),
+    Brake(Arc<Brake>),
     /// One brake of known torque.
     Torque(Torque),
 }
@@ -101,11 +103,29 @@ impl Fitted {
 
     /// The brake, if it is given in its parts.
     #[must_use]
-    pub const fn brake(&self) -> Option<&Brake> {
+    pub fn brake(&self) -> Option<&Brake> {
         match &self.0.source {
             Source::Brake(brake) => Some(brake),
             Source::Torque(_) => None,
         }
+    }
+
+    /// The same entry with another number of brakes.
+    ///
+    /// # Errors
+    /// A number that [`Self::new`] refuses.
+    pub fn with_count(&self, count: u32) -> Result<Self, Faults> {
+        Self::new(FittedParts { count, ..self.0.clone() })
+    }
+
+    /// The same entry with its friction multiplied, as hot linings have it. A known torque stays as it is.
+    #[must_use]
+    pub fn with_friction_factor(&self, factor: f64) -> Self {
+        let source = match &self.0.source {
+            Source::Brake(brake) => Source::Brake(Arc::new(brake.with_friction_factor(factor))),
+            Source::Torque(torque) => Source::Torque(*torque),
+        };
+        Self(FittedParts { source, ..self.0.clone() })
     }
 
     fn actuation(&self) -> Option<&Actuation> {

@@ -91,6 +91,13 @@ impl Friction {
         }
     }
 
+    /// The same friction multiplied by a fade factor.
+    #[must_use]
+    pub(super) fn multiplied(&self, factor: f64) -> Self {
+        let Self { low, nominal, high, is_range } = *self;
+        Self { low: low * factor, nominal: nominal * factor, high: high * factor, is_range }
+    }
+
     /// Whether a range was given, not a single value.
     #[must_use]
     pub const fn is_range(&self) -> bool {

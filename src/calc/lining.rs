@@ -182,6 +182,12 @@ impl Lining {
         self.0.friction
     }
 
+    /// The same lining with its friction multiplied.
+    #[must_use]
+    pub fn with_friction_factor(&self, factor: f64) -> Self {
+        Self(LiningParts { friction: self.0.friction.multiplied(factor), ..self.0.clone() })
+    }
+
     /// What conducts and stores heat in it; none if density, specific heat or conductivity is not known.
     #[must_use]
     pub fn substance(&self) -> Option<Substance> {

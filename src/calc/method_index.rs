@@ -18,6 +18,7 @@ pub fn all() -> impl Iterator<Item = &'static Method> {
         heat::lumped::METHODS,
         heat::repeated::METHODS,
         case::duty_cycle::METHODS,
+        case::spec_check::METHODS,
         wear::METHODS,
     ]
     .into_iter()

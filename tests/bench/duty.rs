@@ -51,7 +51,7 @@ fn brake(force: f64, fades: bool) -> Option<Brake> {
 
 fn entry(force: f64, place: Place, fades: bool) -> Option<Fitted> {
     Fitted::new(FittedParts {
-        source: Source::Brake(Box::new(brake(force, fades)?)),
+        source: Source::Brake(std::sync::Arc::new(brake(force, fades)?)),
         count: 2,
         place: Some(place),
         brakes_per_disc: 1,

@@ -87,7 +87,7 @@ pub(crate) fn brake(actuation: Option<Actuation>) -> Brake {
 fn axle(place: Place, clamp_force: f64) -> Fitted {
     let actuation = Actuation::ClampForce(Some(Force::from_si(clamp_force)));
     let parts = FittedParts {
-        source: Source::Brake(Box::new(brake(Some(actuation)))),
+        source: Source::Brake(std::sync::Arc::new(brake(Some(actuation)))),
         count: 2,
         place: Some(place),
         brakes_per_disc: 1,

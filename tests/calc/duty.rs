@@ -73,7 +73,7 @@ fn brake(
 
 fn fitted(brake: Brake) -> Vec<Fitted> {
     let parts = FittedParts {
-        source: Source::Brake(Box::new(brake)),
+        source: Source::Brake(std::sync::Arc::new(brake)),
         count: 4,
         place: Some(Place::All),
         brakes_per_disc: 1,

@@ -9,13 +9,14 @@ use super::block::event::Event;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
 use super::block::stop::stood_in;
+use super::block::temperatures;
 use crate::api::accept::Negotiated;
 use crate::api::extract::Json;
 use crate::api::heavy::off_thread;
 use crate::api::measure::{
     Angle, AnyAmount, Energy, Finite, Length, ReportUnits, Temperature, Time,
 };
-use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
+use crate::api::parse::{At, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, CautionText, CheckName, FrictionCase, Record, Recorded, Warning};
 use crate::api::render::duty_cycle::{POINTS, chart};
@@ -288,21 +289,14 @@ impl DutyCycleRequest {
             .map(|(index, event)| event.read(&self.machine, &at_events.index(index), &mut reader))
             .collect();
         let repeats = reader.count(&at.member("repeats"), self.repeats, 1);
-        let at_ambient = at.member("ambient_temperature");
         let ambient_temperature =
-            reader.or_default(&at_ambient, self.ambient_temperature.as_ref(), 20.0, "degC");
-        let at_start = at.member("start_temperature");
-        let start_temperature =
-            reader.optional(&at_start, self.start_temperature.as_ref()).unwrap_or_else(|| {
-                let start =
-                    Temperature::report(ambient_temperature, self.report_units.unwrap_or_default());
-                reader.record(
-                    &at_start,
-                    DefaultValue::Number(Finite(start.value())),
-                    Some(start.unit().symbol),
-                );
-                ambient_temperature
-            });
+            temperatures::ambient(self.ambient_temperature.as_ref(), &at, &mut reader);
+        let start_temperature = temperatures::start(
+            self.start_temperature.as_ref(),
+            ambient_temperature,
+            self.report_units.unwrap_or_default(),
+            (&at, &mut reader),
+        );
         let points = self.points(&at, &mut reader);
         let events: Option<Vec<Vec<_>>> = events.into_iter().collect();
         let parts = machine.zip(fitted).zip(events);

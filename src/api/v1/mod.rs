@@ -5,6 +5,7 @@ pub mod block;
 pub mod catalog;
 pub mod duty_cycle;
 pub mod pad_capacity;
+pub mod spec_check;
 pub mod stop_energy;
 pub mod stopping;
 
@@ -22,6 +23,7 @@ pub(super) fn routes() -> OpenApiRouter {
     OpenApiRouter::default()
         .routes(routes!(pad_capacity::pad_capacity))
         .routes(routes!(actuation_force::actuation_force))
+        .routes(routes!(spec_check::spec_check))
         .merge(pictured(pictures))
         .merge(catalog::routes())
 }

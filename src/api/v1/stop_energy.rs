@@ -9,6 +9,7 @@ use super::block::delays::Response;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
 use super::block::stop::{Direction, StopMembers, Stopping, Surroundings, stood_in};
+use super::block::temperatures;
 use crate::api::accept::Negotiated;
 use crate::api::extract::Json;
 use crate::api::heavy::off_thread;
@@ -17,14 +18,12 @@ use crate::api::measure::{
     HeatTransferCoefficient, Power, PowerFlux, ReportUnits, RotationalSpeed, Speed, StopFrequency,
     Temperature, TemperatureDifference, Time,
 };
-use crate::api::parse::{At, DefaultValue, Reader, RecordedDefault};
+use crate::api::parse::{At, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, CautionText, FrictionCase, Record, Recorded, Warning};
 use crate::api::render::frame::Figures;
 use crate::api::render::stop_energy::chart;
 use crate::calc::case::stop_energy::{self, CaseOutcome, Energies, EntryEnergy, Input, Outcome};
-use crate::calc::fault::FaultCode;
-use crate::calc::quantity::Si;
 
 /// A machine, its brakes and the stop whose energy is asked for.
 #[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
@@ -270,22 +269,16 @@ impl StopEnergyRequest {
     fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {
         let (at, mut reader) = (At::ROOT, Reader::new());
         let stop = self.members().read(&at, &mut reader);
-        let at_ambient = at.member("ambient_temperature");
         let ambient_temperature =
-            reader.or_default(&at_ambient, self.ambient_temperature.as_ref(), 20.0, "degC");
-        let at_start = at.member("start_temperature");
-        let start_temperature =
-            reader.optional(&at_start, self.start_temperature.as_ref()).unwrap_or_else(|| {
-                let start =
-                    Temperature::report(ambient_temperature, self.report_units.unwrap_or_default());
-                reader.record(
-                    &at_start,
-                    DefaultValue::Number(Finite(start.value())),
-                    Some(start.unit().symbol),
-                );
-                ambient_temperature
-            });
-        let interval = self.interval(&at, &mut reader);
+            temperatures::ambient(self.ambient_temperature.as_ref(), &at, &mut reader);
+        let start_temperature = temperatures::start(
+            self.start_temperature.as_ref(),
+            ambient_temperature,
+            self.report_units.unwrap_or_default(),
+            (&at, &mut reader),
+        );
+        let (interval, frequency) = (self.interval.as_ref(), self.stop_frequency.as_ref());
+        let interval = temperatures::interval(interval, frequency, (&at, &mut reader));
         let at_count = at.member("stop_count");
         let is_wanted = self.interval.is_some() || self.stop_frequency.is_some();
         reader.not_applicable(
@@ -308,36 +301,6 @@ impl StopEnergyRequest {
         let at = if self.stop_frequency.is_some() { "stop_frequency" } else { "interval" };
         stop_energy::evaluate(input)
             .map_err(|faults| record::no_answer(&faults.moved("interval", at)))
-    }
-
-    /// The time between the starts of two stops, if repeated stops are asked for.
-    fn interval(&self, at: &At<'_>, reader: &mut Reader) -> Option<crate::calc::quantity::Time> {
-        let (at_interval, at_frequency) = (at.member("interval"), at.member("stop_frequency"));
-        let interval = reader.optional(&at_interval, self.interval.as_ref());
-        let frequency = reader.optional(&at_frequency, self.stop_frequency.as_ref());
-        match (interval, frequency) {
-            (Some(_), Some(_)) => {
-                reader.fault(
-                    &at_frequency,
-                    FaultCode::Conflict,
-                    "give either this or interval, not both",
-                );
-                None
-            }
-            (None, Some(frequency)) if frequency.si() > 0.0 => {
-                Some(crate::calc::quantity::Time::from_si(1.0 / frequency.si()))
-            }
-            (None, Some(_)) => {
-                reader.fault(&at_frequency, FaultCode::NotPositive, "must be above 0");
-                None
-            }
-            (Some(interval), None) if interval.si() > 0.0 => Some(interval),
-            (Some(_), None) => {
-                reader.fault(&at_interval, FaultCode::NotPositive, "must be above 0");
-                None
-            }
-            (None, None) => None,
-        }
     }
 
     fn answer(

@@ -70,6 +70,7 @@ impl Bound {
 
 /// The limit of a lining that a check is about, if the lining has it.
 #[must_use]
+#[expect(clippy::wildcard_enum_match_arm, reason = "most checks have no limit of a lining")]
 pub fn lining_bound(lining: &Lining, code: CheckCode) -> Option<Bound> {
     let parts = lining.parts();
     match code {
@@ -104,18 +105,14 @@ pub fn lining_bound(lining: &Lining, code: CheckCode) -> Option<Bound> {
                 (code, "lining/max_temperature_continuous", "the bulk temperature of the disc");
             Bound::of_lining(words, Dimension::Temperature, parts.max_temperature_continuous)
         }
-        CheckCode::Stops
-        | CheckCode::LinePressure
-        | CheckCode::OperatorForce
-        | CheckCode::OperatorStroke
-        | CheckCode::ReleasePressure
-        | CheckCode::AirPressure => None,
+        _ => None,
     }
 }
 
 impl Brake {
     /// The upper limit that a check is about, if the brake has it.
     #[must_use]
+    #[expect(clippy::wildcard_enum_match_arm, reason = "the rest is about the lining or nothing")]
     pub fn bound(&self, code: CheckCode) -> Option<Bound> {
         match code {
             CheckCode::DiscBulkTemperature => self.bulk_bound(),
@@ -126,13 +123,7 @@ impl Brake {
             | CheckCode::AirPressure => {
                 self.0.actuation.as_ref().and_then(|chain| actuation_bound(chain, code))
             }
-            CheckCode::Stops
-            | CheckCode::PadPeakPressure
-            | CheckCode::RubbingSpeed
-            | CheckCode::PressureVelocity
-            | CheckCode::PowerFlux
-            | CheckCode::EnergyFlux
-            | CheckCode::SurfaceTemperature => lining_bound(&self.0.lining, code),
+            _ => lining_bound(&self.0.lining, code),
         }
     }
 
@@ -179,11 +170,22 @@ impl Brake {
         clamp_force: Force,
         spot: Spot,
     ) {
-        let outer = shaft_speed * self.0.pad.largest_radius().si();
+        let outer = self.rubbing_speed(shaft_speed);
         self.hold(remarks, CheckCode::RubbingSpeed, Some(outer), spot);
-        let at_effective_radius = shaft_speed * self.effective_radius().si();
-        let pressure_velocity = mean_pressure(&self.0.pad, clamp_force).si() * at_effective_radius;
+        let pressure_velocity = self.pressure_velocity(shaft_speed, clamp_force);
         self.hold(remarks, CheckCode::PressureVelocity, Some(pressure_velocity), spot);
+    }
+
+    /// Rubbing speed at the pad's outer radius, m/s, at a shaft speed, rad/s.
+    #[must_use]
+    pub fn rubbing_speed(&self, shaft_speed: f64) -> f64 {
+        shaft_speed * self.0.pad.largest_radius().si()
+    }
+
+    /// Mean pressure times rubbing speed at the effective radius, Pa·m/s, at a shaft speed, rad/s.
+    #[must_use]
+    pub fn pressure_velocity(&self, shaft_speed: f64, clamp_force: Force) -> f64 {
+        mean_pressure(&self.0.pad, clamp_force).si() * shaft_speed * self.effective_radius().si()
     }
 }
 

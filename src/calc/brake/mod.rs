@@ -68,6 +68,13 @@ impl Brake {
         &self.0
     }
 
+    /// The same brake with its friction multiplied, as a hot lining has it.
+    #[must_use]
+    pub fn with_friction_factor(&self, factor: f64) -> Self {
+        let lining = self.0.lining.with_friction_factor(factor);
+        Self(BrakeParts { lining, ..self.0.clone() })
+    }
+
     /// Radius at which the friction force acts.
     #[must_use]
     pub fn effective_radius(&self) -> Length {

@@ -3,5 +3,6 @@
 pub mod actuation_force;
 pub mod duty_cycle;
 pub mod pad_capacity;
+pub mod spec_check;
 pub mod stop_energy;
 pub mod stopping;

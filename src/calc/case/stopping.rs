@@ -38,6 +38,8 @@ pub struct Outcome {
     pub friction_cases: Vec<CaseOutcome>,
     /// What presses each entry; none for an entry of known torque.
     pub pressed: Vec<Option<Pressed>>,
+    /// How far each axle is from locking with front linings at low and rear ones at high friction.
+    pub mixed_lock: Option<LockFactors>,
     /// What is to be said about the results.
     pub remarks: Remarks,
 }
@@ -172,19 +174,27 @@ pub fn entry_faults(is_vehicle: bool, place: Option<Place>, has_rolling_radius: 
 pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
     let mut faults = input.faults();
     let Some(pressed) = faults.part("fitted", press(&input.fitted)) else { return Err(faults) };
-    if !faults.is_empty() {
-        return Err(faults);
-    }
+    faults.into_result(())?;
+    evaluate_pressed(input, pressed)
+}
+
+/// Computes the stop of an input without faults whose brakes are pressed as said.
+///
+/// # Errors
+/// A result beyond what numbers can hold.
+pub fn evaluate_pressed(input: &Input, pressed: Vec<Option<Pressed>>) -> Result<Outcome, Faults> {
     let system = input.machine.reduced(&input.situation);
     let cases = friction_cases(&input.fitted).iter();
     let found: Option<Vec<CaseOutcome>> =
         cases.map(|&case| computed(input, &system, &pressed, case)).collect();
     let Some(friction_cases) = found else {
+        let mut faults = Faults::new();
         faults.add("", FaultCode::OutOfRange, "the stop leaves the range that numbers can follow");
         return Err(faults);
     };
-    let remarks = remarks(input, &system, &pressed, &friction_cases);
-    Ok(Outcome { friction_cases, pressed, remarks })
+    let mixed_lock = mixed_lock(input, &system, &friction_cases);
+    let remarks = remarks(input, &system, &pressed, (&friction_cases, mixed_lock));
+    Ok(Outcome { friction_cases, pressed, mixed_lock, remarks })
 }
 
 fn computed(
@@ -272,7 +282,7 @@ fn remarks(
     input: &Input,
     system: &Reduced,
     pressed: &[Option<Pressed>],
-    cases: &[CaseOutcome],
+    (cases, mixed_lock): (&[CaseOutcome], Option<LockFactors>),
 ) -> Remarks {
     let mut remarks = Remarks::new();
     note_methods(&mut remarks, input, system);
@@ -288,7 +298,7 @@ fn remarks(
         note_limits(&mut remarks, input, case);
         note_pressing(&mut remarks, input, pressed, case);
     }
-    note_lock_order(&mut remarks, input, system, cases);
+    note_lock_order(&mut remarks, cases, mixed_lock);
     remarks
 }
 
@@ -474,21 +484,21 @@ fn note_pressing(
     }
 }
 
+/// The lock factors with front linings at low and rear ones at high friction.
+fn mixed_lock(input: &Input, system: &Reduced, cases: &[CaseOutcome]) -> Option<LockFactors> {
+    let (low, high) = cases.first().zip(cases.last())?;
+    let demand = [total(&low.demands)[0], total(&high.demands)[1]];
+    lock_factors(system, demand, input.demand.initial_speed)
+}
+
 /// Warns if the rear axle may lock first: in any case, or with front linings at low and rear ones at high friction.
-fn note_lock_order(remarks: &mut Remarks, input: &Input, system: &Reduced, cases: &[CaseOutcome]) {
+fn note_lock_order(remarks: &mut Remarks, cases: &[CaseOutcome], mixed: Option<LockFactors>) {
     if cases.iter().all(|case| case.lock.is_none()) {
         return;
     }
     remarks.method(&LOCK_ORDER);
-    let worst = match (cases.first(), cases.last()) {
-        (Some(low), Some(high)) => {
-            let [front, rear] = [total(&low.demands)[0], total(&high.demands)[1]];
-            lock_factors(system, [front, rear], input.demand.initial_speed)
-        }
-        _ => None,
-    };
     let rear_first = |lock: &Option<LockFactors>| lock.is_some_and(|factors| factors.rear_first());
-    if cases.iter().any(|case| rear_first(&case.lock)) || rear_first(&worst) {
+    if cases.iter().any(|case| rear_first(&case.lock)) || rear_first(&mixed) {
         let detail = "the rear axle reaches its adhesion before the front one in at least one combination of friction: the vehicle may become unstable";
         remarks.notice(
             Notice::RearAxleLocksFirst,

@@ -24,6 +24,20 @@ codes! {
     CheckCode {
         /// The brake stops the machine: driving against available effort.
         Stops = "stops";
+        /// Distance of a stop.
+        StoppingDistance = "stopping_distance";
+        /// Time of a stop.
+        StoppingTime = "stopping_time";
+        /// Mean deceleration from the first torque on.
+        MeanDeceleration = "mean_deceleration";
+        /// Mean fully developed deceleration.
+        MeanFullyDevelopedDeceleration = "mean_fully_developed_deceleration";
+        /// Peak deceleration, at least.
+        PeakDecelerationMinimum = "peak_deceleration_minimum";
+        /// Peak deceleration, at most.
+        PeakDeceleration = "peak_deceleration";
+        /// Highest force of all tires on the ground over the weight.
+        BrakingRatio = "braking_ratio";
         /// Peak lining pressure at the clamp force that acts.
         PadPeakPressure = "pad_peak_pressure";
         /// Highest rubbing speed at the pad's outer radius.
@@ -44,10 +58,22 @@ codes! {
         ReleasePressure = "release_pressure";
         /// Air pressure at the chamber.
         AirPressure = "air_pressure";
+        /// What an axle's brakes demand of its tires, where no wheel may lock.
+        Adhesion = "adhesion";
+        /// Ground force against that which lifts the rear wheel.
+        RearWheelLift = "rear_wheel_lift";
+        /// Which axle reaches its adhesion first.
+        AxleLockOrder = "axle_lock_order";
         /// Highest bulk temperature of the disc.
         DiscBulkTemperature = "disc_bulk_temperature";
         /// Highest temperature of the rubbed surface.
         SurfaceTemperature = "surface_temperature";
+        /// Torque at rest against what it must hold.
+        HoldingTorque = "holding_torque";
+        /// What the tires of the braked axles hold at rest.
+        HoldingAdhesion = "holding_adhesion";
+        /// Stops until the usable pad is worn off.
+        PadLife = "pad_life";
     }
 }
 
@@ -108,6 +134,8 @@ codes! {
         FadeNotGiven = "fade_not_given";
         /// An event of a duty cannot be done.
         DutyNotCompleted = "duty_not_completed";
+        /// A waiver that changed nothing: its check is not among those that could not be assessed.
+        WithoutEffect = "without_effect";
     }
 }
 

@@ -30,6 +30,18 @@ pub enum Severity {
 pub enum Subject {
     /// An input of the request itself.
     Request(&'static str),
+    /// An input of a duty.
+    Duty {
+        /// Which duty.
+        index: usize,
+        /// Path below the duty.
+        input: &'static str,
+    },
+    /// A waiver.
+    Waiver {
+        /// Which.
+        index: usize,
+    },
     /// An input of a fitted entry.
     Fitted {
         /// Which entry.
@@ -102,6 +114,13 @@ pub fn utilization_of_maximum(actual: Amount, limit: Amount, ambient: f64) -> Op
     let floor = if limit.dimension == Dimension::Temperature { ambient } else { 0.0 };
     let room = limit.si - floor;
     (room > 0.0).then(|| (actual.si - floor) / room)
+}
+
+/// How much of a lower limit is used: 1 exactly at the limit, more below it. None if there is nothing to hold
+/// against the limit.
+#[must_use]
+pub fn utilization_of_minimum(actual: Amount, limit: Amount) -> Option<f64> {
+    (actual.si > 0.0).then(|| limit.si / actual.si)
 }
 
 /// The severity of a utilization; anything not provably within the limit is exceeded.

@@ -85,6 +85,19 @@ impl Remarks {
         }
     }
 
+    /// Takes over what was said about a part: methods, cautions, and the findings that `place` puts in their place.
+    pub fn join(&mut self, other: &Self, mut place: impl FnMut(&Finding) -> Option<Finding>) {
+        for method in &other.methods {
+            self.method(method);
+        }
+        self.cautions.extend(other.cautions.iter().copied());
+        for finding in &other.findings {
+            if let Some(finding) = place(finding) {
+                self.find_once(finding);
+            }
+        }
+    }
+
     /// Holds a value against an upper limit and reports it from the near-limit share on.
     ///
     /// Of the friction cases in which a limit is met, only the worst is kept. `ambient` counts for temperatures.

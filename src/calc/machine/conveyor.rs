@@ -73,12 +73,21 @@ impl Conveyor {
         self.0.gear_ratio / self.0.pulley_radius.si()
     }
 
+    /// What gravity pulls the material back with, N; negative where it is carried downhill.
+    pub(super) fn downhill_force(&self) -> f64 {
+        self.0.material_mass.si() * STANDARD_GRAVITY * libm::sin(self.0.incline.si())
+    }
+
+    pub(super) fn with_load_factor(&self, factor: f64) -> Self {
+        Self(ConveyorParts { material_mass: self.0.material_mass * factor, ..self.0 })
+    }
+
     pub(super) fn reduced(&self) -> Reduced {
         let parts = &self.0;
         let per_way = self.shaft_per_way();
         let translating = parts.material_mass.si() + parts.belt_mass.si();
         let incline = parts.incline.si();
-        let gravity = -parts.material_mass.si() * STANDARD_GRAVITY * libm::sin(incline);
+        let gravity = -self.downhill_force();
         let normal = parts.material_mass.si() * libm::cos(incline) + parts.belt_mass.si();
         Reduced {
             coordinate: Coordinate::Way,

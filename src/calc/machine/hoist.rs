@@ -77,11 +77,20 @@ impl Hoist {
         self.0.gear_ratio * self.0.falls / self.0.drum_radius.si()
     }
 
+    /// What gravity pulls down with, N; negative where the counterweight is heavier.
+    pub(super) fn downward_force(&self) -> f64 {
+        (self.0.load_mass.si() - self.0.counterweight_mass.si()) * STANDARD_GRAVITY
+    }
+
+    pub(super) fn with_load_factor(&self, factor: f64) -> Self {
+        Self(HoistParts { load_mass: self.0.load_mass * factor, ..self.0 })
+    }
+
     pub(super) fn reduced(&self, direction: Direction) -> Reduced {
         let parts = &self.0;
         let per_way = self.shaft_per_way();
         let translating = parts.load_mass.si() + parts.counterweight_mass.si();
-        let downward = (parts.load_mass.si() - parts.counterweight_mass.si()) * STANDARD_GRAVITY;
+        let downward = self.downward_force();
         let gravity = match direction {
             Direction::Lowering => downward,
             Direction::Raising => -downward,

@@ -72,6 +72,29 @@ impl Machine {
         }
     }
 
+    /// The same machine with its load multiplied: the mass of a vehicle, the load of a hoist, the material of a belt.
+    /// A shaft stays as it is.
+    #[must_use]
+    pub fn with_load_factor(&self, factor: f64) -> Self {
+        match self {
+            Self::Vehicle(vehicle) => Self::Vehicle(vehicle.with_load_factor(factor)),
+            Self::Shaft(shaft) => Self::Shaft(*shaft),
+            Self::Hoist(hoist) => Self::Hoist(hoist.with_load_factor(factor)),
+            Self::Conveyor(conveyor) => Self::Conveyor(conveyor.with_load_factor(factor)),
+        }
+    }
+
+    /// What must be held at rest, along the coordinate ([`HOLDING`]): resistances are not counted on.
+    #[must_use]
+    pub fn holding_force(&self, situation: &Situation) -> f64 {
+        match self {
+            Self::Vehicle(vehicle) => vehicle.downhill_force(situation).abs(),
+            Self::Shaft(shaft) => shaft.driving_torque().si().abs(),
+            Self::Hoist(hoist) => hoist.downward_force().abs(),
+            Self::Conveyor(conveyor) => conveyor.downhill_force().abs(),
+        }
+    }
+
     /// Radians that the reference brake shaft turns per unit of the coordinate.
     ///
     /// A wheel's own rolling radius goes before the machine's.
@@ -115,9 +138,26 @@ impl Machine {
     }
 }
 
+crate::method_sheet! {
+    HOLDING {
+        id: "machine.holding",
+        name: "Holding at rest",
+        equation: "H = m g |sin(b)|, |m_l - m_c| g, m_b g |sin(i)| or |T_drive|; holding factor = sum T n/r at low friction over H; tires: sum of min(T_i/r, mu N_i) against H, N_r = (m g cos(b) l_f + h m g sin(b))/L",
+        symbols: [("H", "what must be held along the coordinate", "N or N.m"), ("m", "mass of a vehicle", "kg"), ("b", "grade angle, positive facing uphill", "rad"),
+            ("m_l, m_c", "load and counterweight", "kg"), ("m_b", "material on a belt", "kg"), ("i", "incline of the belt", "rad"), ("T_drive", "driving torque of a shaft", "N.m"),
+            ("T, n, r", "brake torque, its speed ratio, rolling radius", "N.m, 1, m"), ("mu", "adhesion", "1"), ("N", "normal force of an axle", "N"),
+            ("l_f, h, L", "front axle to center of gravity, its height, wheelbase", "m")],
+        valid: "At rest; resistances and losses of the drive are not counted on; worn springs.",
+        accuracy: "Exact under these assumptions.",
+        source: "Statics of a body on a slope.",
+        provenance: Seen,
+        worked: "1500 kg on 20 %: 2884.86 N.",
+    }
+}
+
 /// The sheets of this folder.
 pub static METHODS: &[&Method] =
-    &[&vehicle::REDUCTION, &shaft::REDUCTION, &hoist::REDUCTION, &conveyor::REDUCTION];
+    &[&vehicle::REDUCTION, &shaft::REDUCTION, &hoist::REDUCTION, &conveyor::REDUCTION, &HOLDING];
 
 /// The torque of gravity at the shaft with the losses of the drive: they help when gravity is held back.
 fn with_efficiency(gravity: f64, efficiency: f64) -> f64 {

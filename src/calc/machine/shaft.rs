@@ -44,6 +44,10 @@ impl Shaft {
         faults.into_result(Self(parts))
     }
 
+    pub(super) const fn driving_torque(&self) -> Torque {
+        self.0.driving_torque
+    }
+
     pub(super) fn reduced(&self) -> Reduced {
         Reduced {
             coordinate: Coordinate::Angle,

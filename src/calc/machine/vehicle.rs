@@ -145,28 +145,55 @@ impl Vehicle {
         self.0.geometry.is_some()
     }
 
+    /// Where the weight acts along the vehicle and how high, if that is known.
+    #[must_use]
+    pub fn wheelbase(&self) -> Option<Wheelbase> {
+        self.0.geometry.map(|Geometry(geometry)| Wheelbase {
+            wheelbase: geometry.wheelbase.si(),
+            height: geometry.center_of_gravity_height.si(),
+            front: geometry.front_axle_to_center_of_gravity.si(),
+        })
+    }
+
+    fn weight(&self) -> f64 {
+        self.0.mass.si() * STANDARD_GRAVITY
+    }
+
+    /// The part of the weight along the slope, N, positive when it pulls backwards.
+    pub(super) fn downhill_force(&self, situation: &Situation) -> f64 {
+        self.weight() * libm::sin(situation.grade.si())
+    }
+
+    /// Normal force of the front (or every) and the rear axle at rest on a slope, N ([`super::HOLDING`]).
+    #[must_use]
+    pub fn normal_forces_at_rest(&self, situation: &Situation) -> [f64; 2] {
+        let total = self.weight() * libm::cos(situation.grade.si());
+        let Some(base) = self.wheelbase() else { return [total, 0.0] };
+        let moment = total * base.front + base.height * self.downhill_force(situation);
+        let rear = (moment / base.wheelbase).clamp(0.0, total);
+        [total - rear, rear]
+    }
+
+    pub(super) fn with_load_factor(&self, factor: f64) -> Self {
+        Self(VehicleParts { mass: self.0.mass * factor, ..self.0 })
+    }
+
     pub(super) fn reduced(&self, situation: &Situation) -> Reduced {
         let parts = &self.0;
-        let weight = parts.mass.si() * STANDARD_GRAVITY;
-        let slope = situation.grade.si();
-        let normal_force = weight * libm::cos(slope);
+        let normal_force = self.weight() * libm::cos(situation.grade.si());
         Reduced {
             coordinate: Coordinate::Way,
             mass: parts.mass.si(),
             rotating: parts.rotating_mass_factor - 1.0,
             translating: parts.mass.si(),
-            outside: situation.drive_force.si() - weight * libm::sin(slope),
+            outside: situation.drive_force.si() - self.downhill_force(situation),
             reversal: 1.0,
             resistance: parts.rolling_resistance * normal_force,
             drag: 0.5 * parts.air_density.si() * parts.drag_area.si(),
             tires: Some(Tires {
                 normal_force,
                 adhesion: parts.adhesion,
-                wheelbase: parts.geometry.map(|Geometry(geometry)| Wheelbase {
-                    wheelbase: geometry.wheelbase.si(),
-                    height: geometry.center_of_gravity_height.si(),
-                    front: geometry.front_axle_to_center_of_gravity.si(),
-                }),
+                wheelbase: self.wheelbase(),
             }),
         }
     }

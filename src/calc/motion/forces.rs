@@ -122,6 +122,13 @@ impl Forces {
         forces
     }
 
+    /// The same machine, held down so that no wheel lifts.
+    #[must_use]
+    pub fn without_lift(mut self) -> Self {
+        self.lines[4] = None;
+        self
+    }
+
     /// The same machine with all demands multiplied.
     #[must_use]
     pub fn scaled(&self, factor: f64) -> Self {

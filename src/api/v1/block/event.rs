@@ -174,30 +174,41 @@ impl Event {
 
 impl ProcedureEvent {
     fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Vec<Happening>> {
-        let is_vehicle = matches!(machine, Machine::Vehicle(_));
-        reader.not_applicable(
-            &at.member("kind"),
-            !is_vehicle,
-            "published test cycles belong to vehicles only",
-        );
-        let at_speed = at.member("max_speed");
-        let max_speed = self.max_speed.map(|speed| positive(&at_speed, speed, reader));
-        let delays = Response::read(self.response.as_ref(), &at.member("response"), reader);
-        let row = procedures::find(&self.id);
-        if row.is_none() {
-            let near = procedures::closest(&self.id);
-            let hint = near.map_or(String::new(), |near| format!("; did you mean {near}?"));
-            let detail = format!("is not a row of GET /v1/procedures{hint}");
-            reader.fault(&at.member("id"), FaultCode::UnknownId, detail);
-        }
-        let row = row?;
-        let max_speed = if needs_max_speed(row) {
-            reader.required(&at_speed, max_speed, "is required: the cycle counts from it")?
-        } else {
-            Some(0.0)
-        };
-        Some(procedure::events(row, max_speed?, delays?))
+        let (max_speed, response) = (self.max_speed.as_ref(), self.response.as_ref());
+        procedure_events(&self.id, max_speed, response, (machine, at, reader))
     }
+}
+
+/// The events of a published test cycle.
+pub fn procedure_events(
+    id: &str,
+    max_speed: Option<&Speed>,
+    response: Option<&Response>,
+    (machine, at, reader): (&Machine, &At<'_>, &mut Reader),
+) -> Option<Vec<Happening>> {
+    let is_vehicle = matches!(machine, Machine::Vehicle(_));
+    reader.not_applicable(
+        &at.member("kind"),
+        !is_vehicle,
+        "published test cycles belong to vehicles only",
+    );
+    let at_speed = at.member("max_speed");
+    let max_speed = max_speed.map(|speed| positive(&at_speed, *speed, reader));
+    let delays = Response::read(response, &at.member("response"), reader);
+    let row = procedures::find(id);
+    if row.is_none() {
+        let near = procedures::closest(id);
+        let hint = near.map_or(String::new(), |near| format!("; did you mean {near}?"));
+        let detail = format!("is not a row of GET /v1/procedures{hint}");
+        reader.fault(&at.member("id"), FaultCode::UnknownId, detail);
+    }
+    let row = row?;
+    let max_speed = if needs_max_speed(row) {
+        reader.required(&at_speed, max_speed, "is required: the cycle counts from it")?
+    } else {
+        Some(0.0)
+    };
+    Some(procedure::events(row, max_speed?, delays?))
 }
 
 impl StopEvent {
@@ -314,7 +325,7 @@ impl DescentEvent {
 }
 
 /// A quantity above zero, in coherent SI units.
-fn positive<K: crate::api::measure::Kind>(
+pub fn positive<K: crate::api::measure::Kind>(
     at: &At<'_>,
     measure: crate::api::measure::Measure<K>,
     reader: &mut Reader,

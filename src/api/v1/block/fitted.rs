@@ -1,5 +1,7 @@
 //! Brakes as fitted to a machine.
 
+use std::sync::Arc;
+
 use serde::Deserialize;
 use utoipa::ToSchema;
 
@@ -101,7 +103,7 @@ impl Fitted {
     fn source(&self, at: &At<'_>, reader: &mut Reader) -> Option<Source> {
         match (&self.brake, &self.torque) {
             (Some(brake), None) => {
-                brake.read(&at.member("brake"), reader).map(|brake| Source::Brake(Box::new(brake)))
+                brake.read(&at.member("brake"), reader).map(|brake| Source::Brake(Arc::new(brake)))
             }
             (None, Some(torque)) => {
                 Some(Source::Torque(reader.quantity(&at.member("torque"), torque)))

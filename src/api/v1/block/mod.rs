@@ -10,3 +10,4 @@ pub mod lining;
 pub mod machine;
 pub mod pad;
 pub mod stop;
+pub mod temperatures;

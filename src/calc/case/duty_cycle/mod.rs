@@ -213,6 +213,14 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
     let mut faults = input.faults();
     let pressed = faults.part("fitted", press(&input.fitted));
     let Some(pressed) = pressed.filter(|_| faults.is_empty()) else { return Err(faults) };
+    evaluate_pressed(input, pressed)
+}
+
+/// Follows a duty without faults whose brakes are pressed as said.
+///
+/// # Errors
+/// A result beyond what numbers can hold.
+pub fn evaluate_pressed(input: &Input, pressed: Vec<Option<Pressed>>) -> Result<Outcome, Faults> {
     let cases = friction_cases(&input.fitted).iter();
     let friction_cases: Vec<CaseOutcome> = cases
         .map(|&case| run::run(input, &pressed, case))

@@ -39,7 +39,10 @@ pub(super) fn hold(
 }
 
 /// The highest temperatures that a load comes to, K: of the surface and of the bulk.
-fn hottest(input: &Input, load: &BrakeLoad) -> [(CheckCode, Option<f64>); 2] {
+pub(in crate::calc::case) fn hottest(
+    input: &Input,
+    load: &BrakeLoad,
+) -> [(CheckCode, Option<f64>); 2] {
     let once = load.disc.map(|disc| disc.surface_peak_temperature.si());
     let steady = load.repeated.and_then(|repeated| repeated.steady_surface_peak);
     let bulk_once = load.disc.map(|disc| input.start_temperature.si() + disc.bulk_rise.si());

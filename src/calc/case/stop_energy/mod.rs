@@ -1,6 +1,6 @@
 //! What a stop costs: energy, power and temperature, for the machine and for each brake.
 
-mod limits;
+pub(super) mod limits;
 mod load;
 
 use crate::calc::fault::{FaultCode, Faults};
@@ -133,6 +133,16 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
     let detail = "must be 1 or more, and times the fitted entries not above 10000";
     faults.require(holds, "stop_count", FaultCode::OutOfRange, detail);
     let Some(stop) = faults.part("", stopping::evaluate(&input.stop)) else { return Err(faults) };
+    faults.into_result(())?;
+    evaluate_stopped(input, stop)
+}
+
+/// Computes the energies of a stop that is known already.
+///
+/// # Errors
+/// An interval that is shorter than the braking, or temperatures beyond any material.
+pub fn evaluate_stopped(input: &Input, stop: stopping::Outcome) -> Result<Outcome, Faults> {
+    let mut faults = Faults::new();
     faults.require(
         input.is_spaced(&stop),
         "interval",
