@@ -186,20 +186,38 @@ const GAUSS: [(f64, f64); 5] = [
     (0.953_089_922_969_332, 0.118_463_442_528_094_54),
 ];
 
-/// Integral of `value` from `from` to `to`, five points.
-fn gauss(from: f64, to: f64, value: &impl Fn(f64) -> f64) -> f64 {
-    let width = to - from;
-    GAUSS.iter().map(|(node, weight)| weight * width * value(from + node * width)).sum()
+/// A function of time with two values, and the size below which their changes are rounding.
+struct Pair<F> {
+    at: F,
+    /// Per unit of time.
+    rounding: f64,
 }
 
-/// The same, halved until the halves agree with the `whole`: forces bend where another limit takes over.
-fn halved(from: f64, to: f64, whole: f64, depth: u32, value: &impl Fn(f64) -> f64) -> f64 {
-    let middle = f64::midpoint(from, to);
-    let (first, second) = (gauss(from, middle, value), gauss(middle, to, value));
-    if depth == 0 || (first + second - whole).abs() <= 1e-10 * whole.abs() {
-        return first + second;
+impl<F: Fn(f64) -> [f64; 2]> Pair<F> {
+    /// Integral from `from` to `to`, five points.
+    fn gauss(&self, from: f64, to: f64) -> [f64; 2] {
+        let width = to - from;
+        GAUSS.iter().fold([0.0; 2], |sum, (node, weight)| {
+            let value = (self.at)(from + node * width);
+            [0, 1].map(|one: usize| sum[one] + weight * width * value[one])
+        })
     }
-    halved(from, middle, first, depth - 1, value) + halved(middle, to, second, depth - 1, value)
+
+    /// The same, halved until the halves agree with the `whole`: forces bend where another limit takes over.
+    fn halved(&self, from: f64, to: f64, whole: [f64; 2], depth: u32) -> [f64; 2] {
+        let middle = f64::midpoint(from, to);
+        let (first, second) = (self.gauss(from, middle), self.gauss(middle, to));
+        let both = [first[0] + second[0], first[1] + second[1]];
+        let tolerance =
+            1e-10 * (whole[0].abs() + whole[1].abs()) + self.rounding * (to - from).abs();
+        let agrees = |one: usize| (both[one] - whole[one]).abs() <= tolerance;
+        if depth == 0 || (agrees(0) && agrees(1)) {
+            return both;
+        }
+        let first = self.halved(from, middle, first, depth - 1);
+        let second = self.halved(middle, to, second, depth - 1);
+        [first[0] + second[0], first[1] + second[1]]
+    }
 }
 
 /// The course of a stop with the forces that caused it.
@@ -350,33 +368,39 @@ impl Path {
         high
     }
 
-    /// Integral over time, while torque acts, of a function of the force balance and the speed.
-    fn integral(&self, value: impl Fn(&Instant, f64) -> f64) -> f64 {
+    /// Integrals over time, while torque acts, of two forces, given by the force balance and the speed, times the speed.
+    fn work(&self, forces: impl Fn(&Instant, f64) -> [f64; 2]) -> [f64; 2] {
+        let system = &self.forces.system;
         let of_piece = |piece: &Piece| {
-            let at = |time: f64| value(&self.instant(piece, time), piece.speed_at(time));
-            let whole = gauss(0.0, piece.duration, &at);
+            let at = |time: f64| {
+                let speed = piece.speed_at(time);
+                forces(&self.instant(piece, time), speed).map(|force| force * speed)
+            };
+            // The force of a brake is what is left of a balance of all forces: it is known to a rounding of these.
+            let balance = system.outside.abs() + system.resistance + system.mass;
+            let pair = Pair { at, rounding: 1e-12 * balance * piece.speed_at(0.0).abs() };
+            let whole = pair.gauss(0.0, piece.duration);
             match piece.motion {
                 Motion::Polynomial { .. } => whole,
-                Motion::Integrated(_) => halved(0.0, piece.duration, whole, 16, &at),
+                Motion::Integrated(_) => pair.halved(0.0, piece.duration, whole, 16),
             }
         };
-        self.torque_pieces().map(of_piece).sum()
+        self.torque_pieces()
+            .map(of_piece)
+            .fold([0.0; 2], |sum, one| [sum[0] + one[0], sum[1] + one[1]])
     }
 
     /// Work of the brakes of each axle, front (or all) and rear, J.
     #[must_use]
     pub fn brake_work(&self) -> [f64; 2] {
-        [
-            self.integral(|instant, speed| instant.brake[0] * speed),
-            self.integral(|instant, speed| instant.brake[1] * speed),
-        ]
+        self.work(|instant, _| instant.brake)
     }
 
     /// Work of the resistances while torque acts, J, positive.
     #[must_use]
     pub fn resistance_work(&self) -> f64 {
         let system = &self.forces.system;
-        self.integral(|_, speed| (system.resistance + system.drag * speed * speed) * speed)
+        self.work(|_, speed| [system.resistance + system.drag * speed * speed, 0.0])[0]
     }
 
     /// Power of the brakes of each axle over time from the first torque on, as nodes joined by straight lines.

@@ -108,12 +108,7 @@ impl Judgement {
         descended.checks(&cases)
     }
 
-    fn hold(
-        &mut self,
-        bench: &Bench<'_>,
-        situation: &Situation,
-        limits: HoldLimits,
-    ) -> Vec<Check> {
+    fn hold(&mut self, bench: &Bench<'_>, situation: &Situation, limits: HoldLimits) -> Vec<Check> {
         self.note_brakes(bench);
         self.remarks.method(&HOLDING);
         if matches!(bench.machine, Machine::Hoist(_)) {
