@@ -25,9 +25,11 @@ use crate::calc::case::duty_cycle::{
     self, CaseOutcome, Course, FailureReason, Input, Outcome, TrackedOutcome,
 };
 use crate::calc::fault::FaultCode;
-use crate::calc::finding::Caution;
+use crate::calc::finding::{Caution, Notice, Remarks, Severity, Subject};
+use crate::calc::method::Provenance;
 use crate::calc::motion::Coordinate;
 use crate::calc::quantity::{Amount, Dimension};
+use crate::data::procedures;
 
 /// A machine, its brakes and what they go through.
 #[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
@@ -272,10 +274,27 @@ impl DutyCycleRequest {
             duty_cycle::evaluate(&input).map_err(|faults| record::no_answer(&faults))?;
         if self.events.iter().any(|event| matches!(event, Event::Procedure(_))) {
             outcome.remarks.caution(Caution::NotTheTest);
+            self.note_memory(&mut outcome.remarks);
         }
         let answer = self.answer(body, &input, &outcome, defaults);
         let figures = Figures(self.report_units.unwrap_or_default());
         Ok(form.render(answer, |answer| chart(figures, &input, &outcome, answer)))
+    }
+
+    /// A test cycle that nobody read again in its source is not to be relied on.
+    fn note_memory(&self, remarks: &mut Remarks) {
+        let is_memory = |event: &Event| match event {
+            Event::Procedure(event) => {
+                procedures::find(&event.id).is_some_and(|row| row.provenance == Provenance::Memory)
+            }
+            Event::Stop(_) | Event::Run(_) | Event::Descent(_) | Event::Stand(_) => false,
+        };
+        if self.events.iter().any(is_memory) {
+            let subject = Subject::Request("events");
+            let detail = "the figures of a test cycle were entered from memory of their source: check them there";
+            remarks.notice(Notice::ValueFromMemory, Severity::Info, subject, detail);
+            remarks.caution(Caution::FromMemory);
+        }
     }
 
     fn read(&self) -> Result<(Input, Vec<RecordedDefault>), Problem> {

@@ -15,7 +15,7 @@ use crate::calc::case::duty_cycle::procedure::{self, needs_max_speed};
 use crate::calc::fault::FaultCode;
 use crate::calc::machine::Situation;
 use crate::calc::quantity::Si;
-use crate::data::procedures;
+use crate::data::procedures::{self, ProcedureRow};
 use crate::{only_word, tagged_union};
 
 tagged_union! {
@@ -175,17 +175,18 @@ impl Event {
 impl ProcedureEvent {
     fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Vec<Happening>> {
         let (max_speed, response) = (self.max_speed.as_ref(), self.response.as_ref());
-        procedure_events(&self.id, max_speed, response, (machine, at, reader))
+        let (_, events) = procedure_events(&self.id, max_speed, response, (machine, at, reader))?;
+        Some(events)
     }
 }
 
-/// The events of a published test cycle.
+/// The row and the events of a published test cycle.
 pub fn procedure_events(
     id: &str,
     max_speed: Option<&Speed>,
     response: Option<&Response>,
     (machine, at, reader): (&Machine, &At<'_>, &mut Reader),
-) -> Option<Vec<Happening>> {
+) -> Option<(&'static ProcedureRow, Vec<Happening>)> {
     let is_vehicle = matches!(machine, Machine::Vehicle(_));
     reader.not_applicable(
         &at.member("kind"),
@@ -208,7 +209,7 @@ pub fn procedure_events(
     } else {
         Some(0.0)
     };
-    Some(procedure::events(row, max_speed?, delays?))
+    Some((row, procedure::events(row, max_speed?, delays?)))
 }
 
 impl StopEvent {

@@ -514,7 +514,7 @@ impl RuleDuty {
 impl ProcedureDuty {
     fn read(&self, machine: &Machine, at: &At<'_>, reader: &mut Reader) -> Option<Task> {
         let (max_speed, response) = (self.max_speed.as_ref(), self.response.as_ref());
-        let events = procedure_events(&self.id, max_speed, response, (machine, at, reader))?;
-        Some(Task::Procedure { events })
+        let (row, events) = procedure_events(&self.id, max_speed, response, (machine, at, reader))?;
+        Some(Task::Procedure { row, events })
     }
 }

@@ -7,6 +7,7 @@ use crate::calc::friction::FrictionCase;
 use crate::calc::machine::Situation;
 use crate::calc::motion::{Delays, Demand};
 use crate::calc::quantity::{Angle, ThermodynamicTemperature, Time};
+use crate::data::procedures::ProcedureRow;
 use crate::data::rules::RuleRow;
 
 /// A duty. Speeds and distances are SI along the coordinate.
@@ -74,6 +75,8 @@ pub enum Task {
     },
     /// A published test cycle.
     Procedure {
+        /// Its row.
+        row: &'static ProcedureRow,
         /// Its events.
         events: Vec<Event>,
     },

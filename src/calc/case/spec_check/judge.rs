@@ -13,8 +13,9 @@ use super::ruled::{Ruled, merge};
 use super::stopped::Stopped;
 use crate::calc::case::{stop_energy, stopping};
 use crate::calc::fault::Faults;
-use crate::calc::finding::{Caution, Remarks};
+use crate::calc::finding::{Caution, Notice, Remarks, Severity};
 use crate::calc::machine::{HOLDING, Machine, Situation};
+use crate::calc::method::Provenance;
 use crate::calc::motion::{Demand, Ending};
 use crate::calc::pressure::FRICTION_TORQUE;
 use crate::calc::quantity::{Si, ThermodynamicTemperature, Time};
@@ -80,12 +81,14 @@ impl Judgement {
             Task::Hold { situation, limits } => Ok(self.hold(bench, situation, *limits)),
             Task::Rule { row, delays, max_speed, operated_by } => {
                 self.note_brakes(bench);
+                self.note_source(bench, row.provenance);
                 self.remarks.caution(Caution::NotTheTest);
                 let (delays, max_speed, operated_by) = (*delays, *max_speed, *operated_by);
                 let ruled = Ruled { bench, row, delays, max_speed, operated_by, start };
                 ruled.checks(&mut self.numbers, &mut self.remarks)
             }
-            Task::Procedure { events } => {
+            Task::Procedure { row, events } => {
+                self.note_source(bench, row.provenance);
                 self.remarks.caution(Caution::NotTheTest);
                 let outcome = follow(bench, events, start)?;
                 self.remarks.join(&outcome.remarks, |finding| Some(finding.clone()));
@@ -118,6 +121,16 @@ impl Judgement {
         let held = Held { bench, situation, limits: &limits, limit_at };
         self.numbers.holds.push(held.numbers());
         held.checks()
+    }
+
+    /// A row that nobody read again in its source is not to be relied on.
+    fn note_source(&mut self, bench: &Bench<'_>, provenance: Provenance) {
+        if provenance == Provenance::Memory {
+            let detail = "the figures of this row were entered from memory of their source: check them there";
+            let subject = bench.at_duty("id");
+            self.remarks.notice(Notice::ValueFromMemory, Severity::Info, subject, detail);
+            self.remarks.caution(Caution::FromMemory);
+        }
     }
 
     fn note_brakes(&mut self, bench: &Bench<'_>) {

@@ -145,7 +145,7 @@ impl Input {
                 let holds = has_a_test(row, *max_speed);
                 faults.require(holds, "max_speed", FaultCode::NotApplicable, detail);
             }
-            Task::Procedure { events } => {
+            Task::Procedure { events, .. } => {
                 let holds = (1..=super::duty_cycle::MOST_EVENTS).contains(&events.len());
                 let detail = "must come to 1 to 1000 events";
                 faults.require(holds, "id", FaultCode::WrongCount, detail);

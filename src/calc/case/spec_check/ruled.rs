@@ -9,7 +9,7 @@ use super::require::{self, HoldLimits, StopLimits};
 use crate::calc::fault::Faults;
 use crate::calc::finding::{CheckCode, Remarks, Subject};
 use crate::calc::fitted::friction_cases;
-use crate::calc::machine::{Machine, Situation};
+use crate::calc::machine::{HOLDING, Machine, Situation};
 use crate::calc::motion::{Delays, Demand};
 use crate::calc::quantity::{
     Amount, Angle, Dimension, STANDARD_GRAVITY, Si, ThermodynamicTemperature,
@@ -57,7 +57,10 @@ impl Ruled<'_> {
         for (test, resolution) in self.row.tests.iter().zip(self.row.resolve(self.max_speed)) {
             let found = match resolution {
                 Resolution::Stop(test) => self.stop(&test, numbers, remarks)?,
-                Resolution::Hold(test) => self.hold(&test, numbers),
+                Resolution::Hold(test) => {
+                    remarks.method(&HOLDING);
+                    self.hold(&test, numbers)
+                }
                 Resolution::ForceOverWeight(least) => vec![self.force_over_weight(least)],
                 Resolution::MaxSpeedNeeded => self.unknown_speed(test),
                 Resolution::NotApplicable(_) => Vec::new(),
