@@ -293,6 +293,23 @@ fn a_descent_heats_each_brake_with_its_share() {
     assert_close(surface - bulk, power / (2.0 * area) * 0.01 / (3.0 * 48.0), 1e-6);
 }
 
+/// Without fade every stop is what it is alone, whatever stop came before: energies add up, the longest is the fastest.
+#[test]
+fn different_stops_in_turn_are_each_their_own() {
+    let outcome_of =
+        |events| run(&duty(brake(8e3, coefficient(30.0), plain_material(), Vec::new()), events, 1));
+    let stop = |speed, end| stop_event(speed, end, 0.2);
+    let (slow, fast, slight) = (stop(12.0, 0.0), stop(30.0, 0.0), stop(30.0, 20.0));
+    let energy = |events| outcome_of(events).fitted[0].energy;
+    let alone = [slow, fast, slight].map(|event| energy(vec![event]));
+    let rest = Event::Stand { time: 5.0 };
+    let whole = outcome_of(vec![slow, slow, rest, fast, slow, fast, fast, slight]);
+    let expected = 3.0 * alone[0] + 3.0 * alone[1] + alone[2];
+    assert_close(whole.fitted[0].energy, expected, 1e-12);
+    let longest = outcome_of(vec![fast]).longest_stop.unwrap();
+    assert_close(whole.longest_stop.unwrap().distance, longest.distance, 1e-15);
+}
+
 #[test]
 fn a_descent_that_the_brakes_cannot_hold_ends_the_duty() {
     let situation = Situation { grade: Angle::from_si(-0.3), ..Situation::level() };

@@ -6,8 +6,9 @@
 use brakewright::calc::disc::{
     Construction, Cooling, Disc, DiscMaterial, DiscMaterialParts, DiscParts,
 };
+use brakewright::calc::heat::air::{Air, AirTable};
 use brakewright::calc::heat::cooling::{
-    Air, CoolingSurface, Speeds, nusselt_of_airstream, nusselt_of_rotating_disc,
+    CoolingSurface, HeldSurface, Speeds, nusselt_of_airstream, nusselt_of_rotating_disc,
     radiation_coefficient,
 };
 use brakewright::calc::heat::lumped::{LumpedDisc, Stretch};
@@ -18,6 +19,7 @@ use brakewright::calc::quantity::{
     HeatTransfer, Length, MassDensity, Si, SpecificHeatCapacity, ThermalConductivity,
     ThermodynamicTemperature,
 };
+use proptest::prelude::*;
 
 use crate::support::close::{assert_close, assert_within};
 
@@ -192,4 +194,39 @@ fn cooling_during_the_stop_follows_the_closed_form() {
     let (end, highest) = disc.after(AMBIENT, &stretch).unwrap();
     assert_close(end - AMBIENT, rise(duration), 1e-3);
     assert_close(highest - AMBIENT, rise(tau * (1.0 + duration / tau).ln()), 2e-3);
+}
+
+proptest! {
+    /// The table against the formulas, within it and beside it: far below what either correlation is good for.
+    #[test]
+    fn the_table_of_air_is_the_formula(temperature in 50.0..5000.0_f64, shaft in 0.0..400.0_f64, way in 0.0..120.0_f64, model in prop_oneof![Just(Cooling::RotatingDisc), Just(Cooling::Airstream)]) {
+        let (surface, speeds) = (cooled(model), Speeds { shaft, way });
+        let air = AirTable::new();
+        let held = HeldSurface::in_air(surface, speeds, &air);
+        let (quick, exact) = (held.conductance(temperature), surface.conductance(temperature, speeds));
+        prop_assert!((quick - exact).abs() <= 1e-7 * exact, "{quick} {exact}");
+    }
+}
+
+/// Closed form [V]: without heat and with a given coefficient the excess over ambient falls as e^(-x), x the time over
+/// the time constant, also where so little is lost that the exponential would cancel.
+#[test]
+fn a_cooling_disc_loses_by_the_exponential() {
+    let heat = constant_heat(500.0);
+    let surface = surface(25.0);
+    let disc = LumpedDisc { mass: 8.0, specific_heat: &heat, cooling: Some(surface) };
+    let time_constant = 8.0 * 500.0 / (25.0 * surface.area());
+    for x in [1e-6, 1e-3, 0.0078, 0.007_813, 0.02, 0.5, 3.0] {
+        let stretch = Stretch {
+            duration: x * time_constant,
+            power_at_start: 0.0,
+            power_at_end: 0.0,
+            speeds: STILL,
+        };
+        for excess in [2.0, 400.0] {
+            let end = disc.end(AMBIENT + excess, &stretch).unwrap();
+            let lost = (AMBIENT + excess - end) / excess;
+            assert_within(lost, 1.0 - f64::exp(-x), 1e-12);
+        }
+    }
 }

@@ -1,6 +1,6 @@
 //! A disc of one temperature that is heated and cools.
 
-use super::cooling::{CoolingSurface, Speeds};
+use super::cooling::{CoolingSurface, HeldSurface, Speeds};
 use super::property::{SpecificEnergy, SpecificHeat};
 use crate::calc::method::Method;
 use crate::calc::quantity::{Si, ThermodynamicTemperature};
@@ -78,6 +78,17 @@ impl LumpedDisc<'_> {
         self.follow(temperature, stretch, 1.0, |_| {})
     }
 
+    /// The temperature after a stretch, K, of a disc that cools by `surface`. None beyond the ceiling.
+    #[must_use]
+    pub fn end_on(
+        &self,
+        surface: &HeldSurface<'_>,
+        temperature: f64,
+        stretch: &Stretch,
+    ) -> Option<f64> {
+        self.with_cooling(temperature, (stretch, 1.0), surface, |_| {})
+    }
+
     fn follow(
         &self,
         start: f64,
@@ -91,7 +102,10 @@ impl LumpedDisc<'_> {
                     0.5 * (stretch.power_at_start + stretch.power_at_end) * stretch.duration;
                 self.without_cooling(start, energy)
             }
-            Some(surface) => self.with_cooling(start, (stretch, parts), surface, look),
+            Some(surface) => {
+                let held = HeldSurface::new(*surface, stretch.speeds);
+                self.with_cooling(start, (stretch, parts), &held, look)
+            }
         }
     }
 
@@ -105,7 +119,7 @@ impl LumpedDisc<'_> {
         &self,
         start: f64,
         (stretch, parts): (&Stretch, f64),
-        surface: &CoolingSurface,
+        surface: &HeldSurface<'_>,
         mut look: impl FnMut(&Part<'_>),
     ) -> Option<f64> {
         let (mut time, mut temperature) = (0.0, start);
@@ -113,17 +127,17 @@ impl LumpedDisc<'_> {
             if stretch.duration - time <= 0.0 {
                 return Some(temperature);
             }
-            let conductance = surface.conductance(temperature, stretch.speeds);
             let mut part = Part {
                 stretch,
                 surface,
                 time,
                 start: temperature,
-                conductance,
+                conductance: surface.conductance(temperature),
+                capacity: self.capacity(temperature),
                 duration: 0.0,
                 end: 0.0,
             };
-            part.duration = self.step(&part, parts);
+            part.duration = Self::step(&part, parts);
             part.end = self.refined(&part);
             if part.end.is_nan() || part.end >= CEILING {
                 return None;
@@ -137,14 +151,19 @@ impl LumpedDisc<'_> {
     }
 
     /// A step in which the temperature changes by about [`STEP`] at most, and in which it can follow the power.
-    fn step(&self, part: &Part<'_>, parts: f64) -> f64 {
+    fn step(part: &Part<'_>, parts: f64) -> f64 {
         let stretch = part.stretch;
         let rest = stretch.duration - part.time;
-        let time_constant = self.capacity(part.start) / part.conductance;
+        let time_constant = part.capacity / part.conductance;
         let equilibrium = part.surface.ambient() + power_at(stretch, part.time) / part.conductance;
         let gap = equilibrium - part.start;
-        let by_gap =
-            if gap.abs() > STEP { -time_constant * libm::log1p(-STEP / gap.abs()) } else { rest };
+        // −ln(1 − x) is never less than x: often that is enough to know that the rest is the shorter.
+        let is_near = gap.abs() * rest <= STEP * time_constant;
+        let by_gap = if gap.abs() > STEP && !is_near {
+            -time_constant * libm::log1p(-STEP / gap.abs())
+        } else {
+            rest
+        };
         let shift = (stretch.power_at_end - stretch.power_at_start).abs() / part.conductance;
         if shift <= STEP {
             return rest.min(by_gap);
@@ -162,17 +181,17 @@ impl LumpedDisc<'_> {
 
     /// The highest temperature of a part that first warms and then cools, its rate taken as linear.
     fn summit(&self, part: &Part<'_>) -> f64 {
-        let rate = |temperature: f64, conductance: f64, time: f64| {
+        let rate = |temperature: f64, conductance: f64, capacity: f64, time: f64| {
             let loss = conductance * (temperature - part.surface.ambient());
-            (power_at(part.stretch, time) - loss) / self.capacity(temperature)
+            (power_at(part.stretch, time) - loss) / capacity
         };
-        let first = rate(part.start, part.conductance, part.time);
+        let first = rate(part.start, part.conductance, part.capacity, part.time);
         let highest = part.start.max(part.end);
         if first.is_nan() || first <= 0.0 {
             return highest;
         }
-        let at_end = part.surface.conductance(part.end, part.stretch.speeds);
-        let last = rate(part.end, at_end, part.time + part.duration);
+        let at_end = part.surface.conductance(part.end);
+        let last = rate(part.end, at_end, self.capacity(part.end), part.time + part.duration);
         let turns = last < 0.0;
         let summit = part.start + 0.5 * first * first * part.duration / (first - last);
         if turns { highest.max(summit) } else { highest }
@@ -181,21 +200,20 @@ impl LumpedDisc<'_> {
     /// A step by the midpoint rule; a wide one also in two halves, extrapolated to take its error off.
     fn refined(&self, part: &Part<'_>) -> f64 {
         let power = power_at(part.stretch, part.time + 0.5 * part.duration);
-        let towards = |at: f64| {
-            self.towards(at, power, part.surface.conductance(at, part.stretch.speeds), part)
-        };
+        let towards =
+            |at: f64| part.towards(power, part.surface.conductance(at), self.capacity(at));
         let step = |start: f64, first: &Relaxation, time: f64| {
             let half = first.after(start, 0.5 * time);
             let way = towards(half);
             let end = way.after(start, time);
-            if self.is_even([start, half, end]) {
+            if is_even([first.capacity, way.capacity, self.capacity(end)]) {
                 end
             } else {
                 self.by_enthalpy(start, end, &way, time)
             }
         };
         let (start, time) = (part.start, part.duration);
-        let first = self.towards(start, power, part.conductance, part);
+        let first = part.towards(power, part.conductance, part.capacity);
         let whole = step(start, &first, time);
         if (whole - start).abs() <= NARROW {
             return whole;
@@ -203,14 +221,6 @@ impl LumpedDisc<'_> {
         let half = step(start, &first, 0.5 * time);
         let halves = step(half, &towards(half), 0.5 * time);
         halves + (halves - whole) / 3.0
-    }
-
-    /// Whether the heat capacity is nearly the same at some temperatures.
-    fn is_even(&self, temperatures: [f64; 3]) -> bool {
-        let capacities = temperatures.map(|temperature| self.capacity(temperature));
-        let least = capacities.into_iter().fold(f64::INFINITY, f64::min);
-        let most = capacities.into_iter().fold(0.0, f64::max);
-        most <= least * (1.0 + UNEVEN)
     }
 
     /// The end of a step over a jump or peak of the specific heat: with the mean heat capacity between start and end.
@@ -224,49 +234,70 @@ impl LumpedDisc<'_> {
             if rise.abs() < 1e-6 || capacity.is_nan() {
                 return end;
             }
-            let time_constant = capacity / way.conductance;
-            end = Relaxation { time_constant, ..*way }.after(start, time);
+            end = Relaxation { capacity, ..*way }.after(start, time);
         }
         end
-    }
-
-    /// Where the temperature tends to, with properties held at `at`.
-    fn towards(&self, at: f64, power: f64, conductance: f64, part: &Part<'_>) -> Relaxation {
-        Relaxation {
-            equilibrium: part.surface.ambient() + power / conductance,
-            time_constant: self.capacity(at) / conductance,
-            conductance,
-        }
     }
 }
 
 /// A part of a stretch: what it starts from and what it comes to.
 struct Part<'a> {
     stretch: &'a Stretch,
-    surface: &'a CoolingSurface,
+    surface: &'a HeldSurface<'a>,
     /// From the start of the stretch, s.
     time: f64,
     /// K.
     start: f64,
     /// At the start, W/K.
     conductance: f64,
+    /// At the start, J/K.
+    capacity: f64,
     /// s.
     duration: f64,
     /// K.
     end: f64,
 }
 
+impl Part<'_> {
+    /// Where the temperature tends to, with power and properties held.
+    fn towards(&self, power: f64, conductance: f64, capacity: f64) -> Relaxation {
+        Relaxation {
+            equilibrium: self.surface.ambient() + power / conductance,
+            conductance,
+            capacity,
+        }
+    }
+}
+
 /// The exact way of a temperature with properties held.
 struct Relaxation {
     equilibrium: f64,
-    time_constant: f64,
     conductance: f64,
+    capacity: f64,
 }
 
 impl Relaxation {
     fn after(&self, start: f64, time: f64) -> f64 {
-        start - (self.equilibrium - start) * libm::expm1(-time / self.time_constant)
+        start + (self.equilibrium - start) * approach(time * self.conductance / self.capacity)
     }
+}
+
+/// Whether some heat capacities are nearly the same.
+fn is_even(capacities: [f64; 3]) -> bool {
+    let least = capacities.into_iter().fold(f64::INFINITY, f64::min);
+    let most = capacities.into_iter().fold(0.0, f64::max);
+    most <= least * (1.0 + UNEVEN)
+}
+
+/// 1 − e^−x for x of 0 or more; where it is small, by its series, exact to rounding and quicker.
+fn approach(x: f64) -> f64 {
+    const SMALL: f64 = 1.0 / 128.0;
+    if x > SMALL {
+        return -libm::expm1(-x);
+    }
+    // Seven terms: the next is below 2^-49/8! of the first.
+    let nested = |inner: f64, order: f64| 1.0 - x * (1.0 / order) * inner;
+    x * [7.0, 6.0, 5.0, 4.0, 3.0, 2.0].into_iter().fold(1.0, nested)
 }
 
 fn power_at(stretch: &Stretch, time: f64) -> f64 {

@@ -1,5 +1,6 @@
 //! Heat of one stop: what a disc takes up, how warm its body and its surface become.
 
+pub mod air;
 pub mod bulk;
 pub mod cooling;
 pub mod disc_heat;

@@ -108,6 +108,35 @@ fn the_steps_are_of_second_order() {
     assert!((3.0..5.5).contains(&ratio), "{ratio}");
 }
 
+/// However long a step is against the time that heat takes through the slab: nothing is left, and nothing cancels.
+#[test]
+fn an_endless_step_leaves_nothing() {
+    for duration in [1e9, 1e12, 1e17, 1e30, 1e100] {
+        let mut slab = SlabVolumes::new(Length::from_si(1.0));
+        slab.advance(&unit_step(0.1, 1.0, 1.0));
+        let before = slab.surface();
+        slab.advance(&unit_step(duration, 0.0, 0.0));
+        assert!(slab.surface().abs() <= 1e-7 * before, "{duration} {}", slab.surface());
+    }
+}
+
+/// A step may be tried and taken back; what follows is then the same to the last bit.
+#[test]
+fn a_step_taken_back_leaves_no_trace() {
+    let mut tried = SlabVolumes::new(Length::from_si(1.0));
+    let mut plain = tried.clone();
+    for duration in [0.01, 0.02, 0.02, 0.5] {
+        let before = tried.deviations();
+        tried.advance(&unit_step(2.0 * duration, 3.0, 0.5));
+        assert_ne!(tried.deviations(), before);
+        tried.restore(before);
+        for slab in [&mut tried, &mut plain] {
+            slab.advance(&unit_step(duration, 1.0, 2.0));
+        }
+        assert_eq!(tried, plain);
+    }
+}
+
 proptest! {
     /// The heat content is what was put in: the deviations keep a mean of zero to 1e-9 of the largest.
     #[test]

@@ -3,9 +3,10 @@
 use brakewright::calc::disc::{
     Construction, Cooling, Disc, DiscMaterial, DiscMaterialParts, DiscParts,
 };
+use brakewright::calc::heat::air::Air;
 use brakewright::calc::heat::bulk::{BULK_RISE, bulk_rise};
 use brakewright::calc::heat::cooling::{
-    AIRSTREAM, Air, COOLING_SURFACE, CoolingSurface, RADIATION, ROTATING_DISC, Speeds,
+    AIRSTREAM, COOLING_SURFACE, CoolingSurface, RADIATION, ROTATING_DISC, Speeds,
     nusselt_of_airstream, nusselt_of_rotating_disc, radiation_coefficient,
 };
 use brakewright::calc::heat::lumped::{LUMPED_DISC, LumpedDisc};

@@ -1,13 +1,12 @@
 //! A stop within a duty. Without fade it is the stop of `stopping`; with fade it is followed step by step.
 
 use super::FailureReason;
+use super::cold::{ColdStop, Node, STEPS};
 use super::run::Run;
 use super::track::Tracked;
 use crate::calc::machine::Situation;
-use crate::calc::motion::{Demand, Forces, Phase, Point, Stop};
+use crate::calc::motion::{Demand, Forces, Phase, Point};
 
-/// Steps of a stop, growing from the first torque on.
-const STEPS: u32 = 40;
 /// A stop with fade ends in a failure after these: a hundred times the time that it takes cold.
 const MOST_STEPS: u32 = 400;
 
@@ -50,7 +49,7 @@ pub(super) struct Braking<'a> {
     pub(super) situation: &'a Situation,
     pub(super) demand: &'a Demand,
     /// The same stop at cold friction.
-    pub(super) cold: &'a Stop,
+    pub(super) cold: &'a ColdStop,
 }
 
 impl Braking<'_> {
@@ -60,34 +59,32 @@ impl Braking<'_> {
     }
 
     fn without_fade(&self, run: &mut Run<'_>) -> Result<(f64, f64), FailureReason> {
-        let path = &self.cold.path;
+        let path = &self.cold.stop.path;
         let (begin, end) = (path.first_torque(), path.end());
         run.idle(begin.time, self.demand.initial_speed)?;
         let shares = run.shares(&vec![1.0; run.tracked.len()]);
-        let work = path.brake_work();
+        let work = self.cold.work;
         for (tracked, shares) in run.tracked.iter_mut().zip(&shares) {
             tracked.begin(work[0] * shares[0] + work[1] * shares[1]);
         }
         let braking_time = end.time - begin.time;
         let cooled_at =
             if braking_time > 0.0 { (end.distance - begin.distance) / braking_time } else { 0.0 };
-        let nodes = path.brake_power(STEPS as usize);
-        let powers = |power: [f64; 2]| -> Vec<f64> {
-            shares.iter().map(|shares| power[0] * shares[0] + power[1] * shares[1]).collect()
-        };
-        let mut before = None;
-        for (time, power) in refined(&nodes, braking_time) {
-            let now = powers(power);
-            if let Some((last, then)) = before.replace((time, now.clone())) {
-                let speed_at = |since: f64| path.at(begin.time + since).speed;
+        let mut powers = vec![(0.0, 0.0); shares.len()];
+        let mut before: Option<Node> = None;
+        for node in &self.cold.nodes {
+            for ((from, to), shares) in powers.iter_mut().zip(&shares) {
+                (*from, *to) = (*to, node.power[0] * shares[0] + node.power[1] * shares[1]);
+            }
+            if let Some(before) = before.replace(*node) {
                 let step = Step {
-                    duration: time - last,
-                    speed: speed_at(last),
-                    end_speed: speed_at(time),
+                    duration: node.since - before.since,
+                    speed: before.speed,
+                    end_speed: node.speed,
                     cooled_at,
                     activity: Activity::Stopping,
                 };
-                run.step(&step, &then.into_iter().zip(now).collect::<Vec<_>>())?;
+                run.step(&step, &powers)?;
             }
         }
         Ok((end.distance, end.time))
@@ -95,10 +92,10 @@ impl Braking<'_> {
 
     fn with_fade(&self, run: &mut Run<'_>) -> Result<(f64, f64), FailureReason> {
         let Some(mut motion) = self.until_torque(run)? else {
-            let end = self.cold.path.end();
+            let end = self.cold.stop.path.end();
             return Ok((end.distance, end.time));
         };
-        let system = &self.cold.path.forces().system;
+        let system = &self.cold.stop.path.forces().system;
         let (initial, end) = (motion.speed, self.demand.final_speed);
         run.begin(
             &Hot::new(run, self.situation),
@@ -110,9 +107,10 @@ impl Braking<'_> {
         let cooled_at = f64::midpoint(initial, end);
         let mut since = 0.0;
         for step in 1..=MOST_STEPS {
-            let kink = build_up.kink(since, &Hot::new(run, self.situation).forces);
+            let hot = Hot::new(run, self.situation);
+            let kink = build_up.kink(since, &hot.forces);
             let stretch = build_up.stretch(since, scale * f64::from(2 * step - 1), kink);
-            if self.coupled(run, &mut motion, &stretch, cooled_at)? {
+            if self.coupled(run, &hot, &mut motion, &stretch, cooled_at)? {
                 return Ok((motion.way, motion.time));
             }
             since += stretch.duration;
@@ -122,7 +120,7 @@ impl Braking<'_> {
 
     /// Reaction and dead time, as in the cold stop: friction plays no part in them. None if the stop ends there.
     fn until_torque(&self, run: &mut Run<'_>) -> Result<Option<Motion>, FailureReason> {
-        let path = &self.cold.path;
+        let path = &self.cold.stop.path;
         let has_torque = path.phases().iter().any(|phase| phase.phase >= Phase::BuildUp);
         let start = Point { time: 0.0, speed: self.demand.initial_speed, distance: 0.0 };
         let begin = if path.phases().is_empty() {
@@ -144,7 +142,7 @@ impl Braking<'_> {
 
     /// About how long the braking takes: sets the scale of the steps.
     fn expected_time(&self, speed: f64) -> f64 {
-        let full = self.cold.path.forces().at(1.0, self.demand.final_speed).deceleration;
+        let full = self.cold.stop.path.forces().at(1.0, self.demand.final_speed).deceleration;
         let held = self.demand.deceleration;
         let deceleration = held.map_or(full, |held| if full > 0.0 { held.min(full) } else { held });
         let change = speed - self.demand.final_speed;
@@ -161,17 +159,17 @@ impl Braking<'_> {
         self.demand.deceleration.and_then(held).unwrap_or(1.0)
     }
 
-    /// One step of motion and heat together, by Heun's method; true if the final speed is reached in it.
+    /// One step of motion and heat together from brakes as `hot` as they are, by Heun's method; true if the final speed is reached in it.
     fn coupled(
         &self,
         run: &mut Run<'_>,
+        hot: &Hot,
         motion: &mut Motion,
         stretch: &RampedStep,
         cooled_at: f64,
     ) -> Result<bool, FailureReason> {
         let duration = stretch.duration;
-        let start =
-            self.state(&Hot::new(run, self.situation), stretch.from, motion.speed, stretch.is_full);
+        let start = self.state(hot, stretch.from, motion.speed, stretch.is_full);
         if stretch.is_full && (start.deceleration.is_nan() || start.deceleration <= 0.0) {
             return Err(FailureReason::FinalSpeedNotReached);
         }
@@ -325,25 +323,4 @@ fn time_to(gap: f64, deceleration: f64, rise: f64, duration: f64) -> Option<f64>
         (root - deceleration) / rise
     };
     (time >= 0.0 && time <= duration).then_some(time)
-}
-
-/// Power over time with nodes close enough for the slab: dense after the first torque, never wider than a fortieth.
-fn refined(nodes: &[(f64, [f64; 2])], braking_time: f64) -> Vec<(f64, [f64; 2])> {
-    let mut refined: Vec<(f64, [f64; 2])> = nodes.first().copied().into_iter().collect();
-    for (from, to) in nodes.iter().zip(nodes.iter().skip(1)) {
-        let share = if braking_time > 0.0 { (to.0 - from.0) / braking_time } else { 0.0 };
-        let parts = (f64::from(STEPS) * share).ceil().clamp(1.0, f64::from(STEPS));
-        let is_jump = from.0 <= 0.0 && from.1[0] + from.1[1] > 0.0;
-        let mut part = 1.0;
-        while part <= parts {
-            let place = if is_jump { (part / parts) * (part / parts) } else { part / parts };
-            let between = |one: f64, other: f64| one + (other - one) * place;
-            refined.push((
-                between(from.0, to.0),
-                [between(from.1[0], to.1[0]), between(from.1[1], to.1[1])],
-            ));
-            part += 1.0;
-        }
-    }
-    refined
 }

@@ -1,6 +1,7 @@
 //! A duty over time: temperature, friction and stopping distance through any sequence of events.
 
 mod braked;
+mod cold;
 mod course;
 pub mod procedure;
 mod run;
@@ -18,6 +19,7 @@ use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{Caution, Finding, Notice, Remarks, Severity, Subject};
 use crate::calc::fitted::{Fitted, Pressed, friction_cases, press};
 use crate::calc::friction::FrictionCase;
+use crate::calc::heat::air::AirTable;
 use crate::calc::heat::slab::SLAB_VOLUMES;
 use crate::calc::lining::FADE;
 use crate::calc::machine::{Machine, Situation};
@@ -222,8 +224,9 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
 /// A result beyond what numbers can hold.
 pub fn evaluate_pressed(input: &Input, pressed: Vec<Option<Pressed>>) -> Result<Outcome, Faults> {
     let cases = friction_cases(&input.fitted).iter();
+    let air = AirTable::new();
     let friction_cases: Vec<CaseOutcome> = cases
-        .map(|&case| run::run(input, &pressed, case))
+        .map(|&case| run::run(input, &pressed, case, &air))
         .collect::<Option<_>>()
         .ok_or_else(|| {
             let mut faults = Faults::new();

@@ -1,14 +1,18 @@
 //! One duty at one friction, event by event.
 
+use std::rc::Rc;
+
 use super::braked::{Activity, Braking, Hot, Step};
+use super::cold::ColdStop;
 use super::course::{Course, Moment};
 use super::track::Tracked;
 use super::{CaseOutcome, Event, Failure, FailureReason, Gap, Input, LongestStop, Place};
 use crate::calc::case::stopping;
 use crate::calc::fitted::Pressed;
 use crate::calc::friction::FrictionCase;
+use crate::calc::heat::air::AirTable;
 use crate::calc::machine::Situation;
-use crate::calc::motion::{Ending, Forces, Stop, stop};
+use crate::calc::motion::{Demand, Ending, Forces, stop};
 
 /// Steps of an event without braking, growing from its start on: what is left of a stop dies out early.
 const IDLE_STEPS: u32 = 8;
@@ -20,13 +24,14 @@ pub(super) fn run(
     input: &Input,
     pressed: &[Option<Pressed>],
     case: FrictionCase,
+    air: &AirTable,
 ) -> Option<CaseOutcome> {
-    let mut run = Run::new(input, pressed, case);
+    let mut run = Run::new(input, pressed, case, air);
     let cold = run.cold_stops()?;
     'duty: for repeat in 1..=input.repeats {
         for (event_index, (event, cold)) in input.events.iter().zip(&cold).enumerate() {
             run.place = Place { event_index: input.origin(event_index), repeat };
-            if let Err(reason) = run.event(event, cold.as_ref()) {
+            if let Err(reason) = run.event(event, cold.as_deref()) {
                 run.first_failure = Some(Failure { place: run.place, reason });
                 break 'duty;
             }
@@ -56,14 +61,19 @@ pub(super) struct Run<'a> {
 pub(super) type Done = Result<(), FailureReason>;
 
 impl<'a> Run<'a> {
-    fn new(input: &'a Input, pressed: &[Option<Pressed>], case: FrictionCase) -> Self {
+    fn new(
+        input: &'a Input,
+        pressed: &[Option<Pressed>],
+        case: FrictionCase,
+        air: &'a AirTable,
+    ) -> Self {
         let torques = stopping::full_torques(&input.fitted, pressed, case);
         let tracked = input.fitted.iter();
         let (start, ambient) = (input.start_temperature, input.ambient_temperature);
         let mut run = Self {
             input,
             tracked: tracked
-                .map(|entry| Tracked::new(&input.machine, entry, start, ambient))
+                .map(|entry| Tracked::new(&input.machine, entry, start, ambient, air))
                 .collect(),
             demands: stopping::brake_forces(&input.machine, &input.fitted, &torques),
             place: Place { event_index: 0, repeat: 1 },
@@ -81,18 +91,12 @@ impl<'a> Run<'a> {
     }
 
     /// The stops at cold friction, one for each event that is a stop.
-    fn cold_stops(&self) -> Option<Vec<Option<Stop>>> {
-        let cold = |event: &Event| match event {
-            Event::Stop { situation, demand } => {
-                let cold = vec![1.0; self.tracked.len()];
-                stop(&self.forces(situation, &cold), demand).map(Some)
-            }
-            Event::Run { .. }
-            | Event::Descent { .. }
-            | Event::Space { .. }
-            | Event::Stand { .. } => Some(None),
+    fn cold_stops(&self) -> Option<Vec<Option<Rc<ColdStop>>>> {
+        let factors = vec![1.0; self.tracked.len()];
+        let cold = |situation: &Situation, demand: &Demand| {
+            stop(&self.forces(situation, &factors), demand)
         };
-        self.input.events.iter().map(cold).collect()
+        ColdStop::of_events(&self.input.events, self.fades(), cold)
     }
 
     /// Whether the friction of any entry changes with temperature.
@@ -111,12 +115,12 @@ impl<'a> Run<'a> {
 
     /// The factor of each entry after a step that is not taken.
     pub(super) fn factors_after(
-        &self,
+        &mut self,
         duration: f64,
         powers: &[(f64, f64)],
         speed: f64,
     ) -> Result<Vec<f64>, FailureReason> {
-        let entries = self.tracked.iter().zip(powers);
+        let entries = self.tracked.iter_mut().zip(powers);
         let factors = entries.map(|(tracked, power)| tracked.factor_after(duration, *power, speed));
         factors.collect::<Option<_>>().ok_or(FailureReason::TooHot)
     }
@@ -139,10 +143,10 @@ impl<'a> Run<'a> {
             .collect()
     }
 
-    fn event(&mut self, event: &Event, cold: Option<&Stop>) -> Done {
+    fn event(&mut self, event: &Event, cold: Option<&ColdStop>) -> Done {
         match (event, cold) {
             (Event::Stop { situation, demand }, Some(cold)) => {
-                if matches!(cold.ending, Ending::NotReached { .. }) && !self.fades() {
+                if matches!(cold.stop.ending, Ending::NotReached { .. }) && !self.fades() {
                     return Err(FailureReason::FinalSpeedNotReached);
                 }
                 let braking = Braking { situation, demand, cold };

@@ -3,8 +3,9 @@
 use crate::calc::brake::Brake;
 use crate::calc::disc::DiscMaterial;
 use crate::calc::fitted::Fitted;
+use crate::calc::heat::air::AirTable;
 use crate::calc::heat::bulk::heated_depth;
-use crate::calc::heat::cooling::{CoolingSurface, Speeds};
+use crate::calc::heat::cooling::{CoolingSurface, HeldSurface, Speeds};
 use crate::calc::heat::disc_heat::{Heating, heated_ring, share_of};
 use crate::calc::heat::disc_series::cooling_surface;
 use crate::calc::heat::lumped::{LumpedDisc, Stretch};
@@ -17,6 +18,9 @@ pub(super) struct Thermal<'a> {
     material: &'a DiscMaterial,
     disc: LumpedDisc<'a>,
     slab: SlabVolumes,
+    air: &'a AirTable,
+    /// The disc's surface at the speeds of the last step.
+    held: Option<HeldSurface<'a>>,
     /// Heat into the disc per power of one brake.
     into_disc: f64,
     /// Flux into each face per heat into the disc, 1/m².
@@ -34,6 +38,7 @@ impl<'a> Thermal<'a> {
         brake: &'a Brake,
         start: ThermodynamicTemperature,
         ambient: ThermodynamicTemperature,
+        air: &'a AirTable,
     ) -> Option<Self> {
         let parts = brake.parts();
         let material = parts.disc.as_ref()?.material();
@@ -46,6 +51,8 @@ impl<'a> Thermal<'a> {
             material,
             disc: LumpedDisc { mass: mass.si(), specific_heat: material.specific_heat(), cooling },
             slab: SlabVolumes::new(depth),
+            air,
+            held: None,
             into_disc: share_of(brake, &ring, &heating) * f64::from(brakes_per_disc),
             flux_per_heat: 1.0 / (f64::from(parts.faces) * ring.area().si()),
             bulk: start.si(),
@@ -96,7 +103,11 @@ impl<'a> Thermal<'a> {
     ) -> Option<()> {
         let [power_at_start, power_at_end] = [power.0, power.1].map(|power| power * self.into_disc);
         let stretch = Stretch { duration, power_at_start, power_at_end, speeds };
-        self.bulk = self.disc.end(self.bulk, &stretch)?;
+        self.hold_speeds(speeds);
+        self.bulk = match &self.held {
+            Some(held) => self.disc.end_on(held, self.bulk, &stretch)?,
+            None => self.disc.end(self.bulk, &stretch)?,
+        };
         self.slab.advance(&SlabStep {
             duration,
             flux_at_start: power_at_start * self.flux_per_heat,
@@ -105,5 +116,27 @@ impl<'a> Thermal<'a> {
             volumetric_heat: self.volumetric_heat,
         });
         Some(())
+    }
+
+    /// The surface temperature, K, after a step that is not taken. None if it gets too hot.
+    pub(super) fn surface_after(
+        &mut self,
+        duration: f64,
+        power: (f64, f64),
+        speeds: Speeds,
+    ) -> Option<f64> {
+        let (bulk, deviations) = (self.bulk, self.slab.deviations());
+        let is_followed = self.advance(duration, power, speeds);
+        let surface = self.surface();
+        self.bulk = bulk;
+        self.slab.restore(deviations);
+        is_followed.map(|()| surface)
+    }
+
+    fn hold_speeds(&mut self, speeds: Speeds) {
+        if self.held.is_none_or(|held| held.speeds() != speeds) {
+            let at_speeds = |surface| HeldSurface::in_air(surface, speeds, self.air);
+            self.held = self.disc.cooling.map(at_speeds);
+        }
     }
 }

@@ -7,6 +7,7 @@ use super::thermal::Thermal;
 use crate::calc::brake::{Bound, Brake};
 use crate::calc::finding::CheckCode;
 use crate::calc::fitted::Fitted;
+use crate::calc::heat::air::AirTable;
 use crate::calc::heat::cooling::{CoolingSurface, Speeds};
 use crate::calc::machine::Machine;
 use crate::calc::motion::Coordinate;
@@ -73,9 +74,10 @@ impl<'a> Tracked<'a> {
         entry: &'a Fitted,
         start: ThermodynamicTemperature,
         ambient: ThermodynamicTemperature,
+        air: &'a AirTable,
     ) -> Self {
         let brake = entry.brake();
-        let thermal = brake.and_then(|brake| Thermal::new(entry, brake, start, ambient));
+        let thermal = brake.and_then(|brake| Thermal::new(entry, brake, start, ambient, air));
         let bounds: Vec<Bound> =
             FOLLOWED.iter().filter_map(|code| brake.and_then(|brake| brake.bound(*code))).collect();
         let parts = entry.parts();
@@ -141,13 +143,18 @@ impl<'a> Tracked<'a> {
     }
 
     /// The friction factor after a step that is not taken. None if it gets too hot.
-    pub(super) fn factor_after(&self, duration: f64, power: (f64, f64), speed: f64) -> Option<f64> {
+    pub(super) fn factor_after(
+        &mut self,
+        duration: f64,
+        power: (f64, f64),
+        speed: f64,
+    ) -> Option<f64> {
         if !self.fades() {
             return Some(1.0);
         }
-        let mut thermal = self.thermal.clone()?;
-        thermal.advance(duration, power, self.speeds(speed))?;
-        let surface = ThermodynamicTemperature::from_si(thermal.surface());
+        let speeds = self.speeds(speed);
+        let surface = self.thermal.as_mut()?.surface_after(duration, power, speeds)?;
+        let surface = ThermodynamicTemperature::from_si(surface);
         self.brake.map(|brake| brake.parts().lining.fade_factor(surface))
     }
 

@@ -44,6 +44,15 @@ pub struct SlabVolumes {
     gradient: f64,
     /// What deviates from the parabola, K.
     rest: [f64; CELLS],
+    /// Of the last step: the next is often as long.
+    matrix: Matrix,
+}
+
+/// What changes of a slab's temperatures as it goes through steps.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Deviations {
+    gradient: f64,
+    rest: [f64; CELLS],
 }
 
 /// A step in time with its flux and the slab's properties, all SI.
@@ -83,7 +92,19 @@ impl SlabVolumes {
             parabola: parabola(&widths, depth),
             gradient: 0.0,
             rest: [0.0; CELLS],
+            matrix: Matrix::unit(),
         }
+    }
+
+    /// The temperatures as they are, to come back to by [`Self::restore`].
+    #[must_use]
+    pub const fn deviations(&self) -> Deviations {
+        Deviations { gradient: self.gradient, rest: self.rest }
+    }
+
+    /// Takes up temperatures of the same slab again.
+    pub const fn restore(&mut self, deviations: Deviations) {
+        (self.gradient, self.rest) = (deviations.gradient, deviations.rest);
     }
 
     /// The heated face above the mean, K.
@@ -119,29 +140,34 @@ impl SlabVolumes {
         let [from, to] =
             [step.flux_at_start, step.flux_at_end].map(|flux| flux / step.conductivity);
         self.take_off(from - self.gradient);
-        let matrix = Matrix::new(&self.couplings, step);
-        let gain = -GAMMA * (to - from) * self.depth;
-        let first = matrix.solve(self.with_source(&self.rest, gain));
-        let mut between = self.rest;
-        for (value, stage) in between.iter_mut().zip(first) {
-            *value += (1.0 - GAMMA) / GAMMA * (stage - *value);
+        let factor = GAMMA * step.duration * step.conductivity / step.volumetric_heat;
+        if factor.to_bits() != self.matrix.factor.to_bits() {
+            self.matrix.eliminate(&self.couplings, factor);
         }
-        self.rest = matrix.solve(self.with_source(&between, gain));
+        let gain = -GAMMA * (to - from) * self.depth;
+        let mut stage = self.rest;
+        self.add_source(&mut stage, gain);
+        self.matrix.solve(&mut stage);
+        for (value, start) in stage.iter_mut().zip(&self.rest) {
+            *value = start + (1.0 - GAMMA) / GAMMA * (*value - start);
+        }
+        self.add_source(&mut stage, gain);
+        self.matrix.solve(&mut stage);
+        self.rest = stage;
         self.gradient = to;
     }
 
     /// Lets the parabola of a further gradient stand in for a part of the rest: the temperatures stay as they are.
     fn take_off(&mut self, gradient: f64) {
-        let scale = gradient * self.depth;
-        self.rest = self.with_source(&self.rest, -scale);
+        let mut rest = self.rest;
+        self.add_source(&mut rest, -gradient * self.depth);
+        self.rest = rest;
     }
 
-    fn with_source(&self, start: &[f64; CELLS], gain: f64) -> [f64; CELLS] {
-        let mut result = *start;
-        for (value, parabola) in result.iter_mut().zip(self.parabola) {
+    fn add_source(&self, cells: &mut [f64; CELLS], gain: f64) {
+        for (value, parabola) in cells.iter_mut().zip(&self.parabola) {
             *value += gain * parabola;
         }
-        result
     }
 }
 
@@ -178,53 +204,81 @@ fn at_flat_face((first, width): (f64, f64), (second, next): (f64, f64)) -> f64 {
     first - (second - first) * near_mean / (far_mean - near_mean)
 }
 
+/// Half of the cells: they are eliminated from both faces towards the middle, two chains at once, each of which waits
+/// for itself only.
+const HALF: usize = CELLS / 2;
+
 /// I − γ·Δt·A of the conduction A, ready to be solved: tridiagonal, eliminated once for both stages.
+#[derive(Debug, Clone, PartialEq)]
 struct Matrix {
-    lower: [f64; CELLS],
-    upper_over_pivot: [f64; CELLS],
-    /// A product is several times as quick as a quotient, and each waits for the one before.
-    one_over_pivot: [f64; CELLS],
+    /// γ·Δt times the diffusivity, m².
+    factor: f64,
+    /// From either face inwards, for each cell of the heated and of the insulated half.
+    rows: [[Row; 2]; HALF],
+    /// What the two innermost cells, eliminated up to each other, are solved by.
+    middle: f64,
+}
+
+/// A row after elimination. Products instead of quotients: they are several times as quick, and each row waits for the one before.
+#[derive(Debug, Clone, Copy, PartialEq)]
+struct Row {
+    /// Of the pivot.
+    inverse: f64,
+    /// Coupling with the cell outside, over the pivot.
+    outer: f64,
+    /// Coupling with the cell inside, over the pivot.
+    inner: f64,
 }
 
 impl Matrix {
-    fn new([to_before, to_next]: &[[f64; CELLS]; 2], step: &SlabStep) -> Self {
-        let factor = GAMMA * step.duration * step.conductivity / step.volumetric_heat;
-        let mut matrix = Self {
-            lower: [0.0; CELLS],
-            upper_over_pivot: [0.0; CELLS],
-            one_over_pivot: [1.0; CELLS],
-        };
-        let mut before_over_pivot = 0.0;
-        let cells = matrix
-            .lower
-            .iter_mut()
-            .zip(&mut matrix.upper_over_pivot)
-            .zip(&mut matrix.one_over_pivot);
-        for (((lower, upper_over_pivot), one_over_pivot), (before, next)) in
-            cells.zip(to_before.iter().zip(to_next))
-        {
-            *lower = -factor * before;
-            let pivot = 1.0 + factor * (before + next) - *lower * before_over_pivot;
-            *one_over_pivot = 1.0 / pivot;
-            *upper_over_pivot = -factor * next * *one_over_pivot;
-            before_over_pivot = *upper_over_pivot;
-        }
-        matrix
+    const fn unit() -> Self {
+        let row = Row { inverse: 1.0, outer: 0.0, inner: 0.0 };
+        Self { factor: 0.0, rows: [[row; 2]; HALF], middle: 1.0 }
     }
 
-    fn solve(&self, mut right: [f64; CELLS]) -> [f64; CELLS] {
-        let mut before = 0.0;
-        for ((value, lower), one_over_pivot) in
-            right.iter_mut().zip(self.lower).zip(self.one_over_pivot)
-        {
-            *value = (*value - lower * before) * one_over_pivot;
-            before = *value;
+    fn eliminate(&mut self, [to_before, to_next]: &[[f64; CELLS]; 2], factor: f64) {
+        self.factor = factor;
+        // What a cell keeps to itself, over its pivot: followed as such, and not as 1 − coupling, it does not cancel
+        // however long the step.
+        let mut kept = [1.0; 2];
+        let heated = to_before.iter().zip(to_next);
+        let insulated = to_next.iter().zip(to_before).rev();
+        for (rows, sides) in self.rows.iter_mut().zip(heated.zip(insulated)) {
+            for ((row, kept), (outer, inner)) in
+                rows.iter_mut().zip(&mut kept).zip([sides.0, sides.1])
+            {
+                let own = 1.0 + factor * outer * *kept;
+                row.inverse = 1.0 / (own + factor * inner);
+                row.outer = -factor * outer * row.inverse;
+                row.inner = -factor * inner * row.inverse;
+                *kept = own * row.inverse;
+            }
         }
-        let mut after = 0.0;
-        for (value, upper_over_pivot) in right.iter_mut().zip(self.upper_over_pivot).rev() {
-            *value -= upper_over_pivot * after;
-            after = *value;
+        let [one, other] = kept;
+        self.middle = 1.0 / (one + other - one * other); // 1 less the product of the innermost couplings
+    }
+
+    fn solve(&self, values: &mut [f64; CELLS]) {
+        let (heated, insulated) = values.split_at_mut(HALF);
+        let mut outside = [0.0; 2];
+        let cells = heated.iter_mut().zip(insulated.iter_mut().rev());
+        for ([one, other], (value, opposite)) in self.rows.iter().zip(cells) {
+            outside = [
+                *value * one.inverse - outside[0] * one.outer,
+                *opposite * other.inverse - outside[1] * other.outer,
+            ];
+            [*value, *opposite] = outside;
         }
-        right
+        // The innermost two depend on each other only; what is inside of each follows from that.
+        let couplings = self.rows[HALF - 1].map(|row| row.inner);
+        let mut inside = [
+            (outside[1] - couplings[1] * outside[0]) * self.middle,
+            (outside[0] - couplings[0] * outside[1]) * self.middle,
+        ];
+        let cells = heated.iter_mut().zip(insulated.iter_mut().rev());
+        for ([one, other], (value, opposite)) in self.rows.iter().zip(cells).rev() {
+            inside = [*value - one.inner * inside[0], *opposite - other.inner * inside[1]];
+            [*value, *opposite] = inside;
+        }
     }
 }
