@@ -1,5 +1,6 @@
 //! Heat of one stop and of many.
 
+use brakewright::calc::case::spec_check::descended::{DESCENT, surface_excess};
 use brakewright::calc::disc::{
     Construction, Cooling, Disc, DiscMaterial, DiscMaterialParts, DiscParts,
 };
@@ -154,6 +155,7 @@ pub(super) fn all() -> Vec<Worked> {
     let wide = disc(0.2, 0.02, 25.0);
     let radiated = radiation_coefficient(0.55, celsius(300.0).si(), celsius(20.0).si());
     vec![
+        worked(&DESCENT, &[("6.667", surface_excess(1e5, 0.01, 50.0))]),
         worked(&SWEPT_RING, &[("0.0942478", ring(&wide).area().si())]),
         worked(&COOLING_SURFACE, &[("0.0973894", surface().area())]),
         worked(&ROTATING_DISC, &[("884.8", nusselt_of_rotating_disc(1e6))]),

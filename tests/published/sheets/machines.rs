@@ -4,8 +4,8 @@ use std::f64::consts::PI;
 
 use brakewright::calc::case::stop_energy::ENERGY_BALANCE;
 use brakewright::calc::machine::{
-    Conveyor, ConveyorParts, Direction, Geometry, GeometryParts, Hoist, HoistParts, Machine, Shaft,
-    ShaftParts, Situation, Vehicle, VehicleParts, conveyor, hoist, shaft, vehicle,
+    Conveyor, ConveyorParts, Direction, Geometry, GeometryParts, HOLDING, Hoist, HoistParts,
+    Machine, Shaft, ShaftParts, Situation, Vehicle, VehicleParts, conveyor, hoist, shaft, vehicle,
 };
 use brakewright::calc::motion::{
     AXLE_FORCES, Coordinate, DRAG, Delays, Demand, Ending, Forces, LOCK_ORDER,
@@ -161,6 +161,12 @@ fn lock_order() -> Worked {
     worked(&LOCK_ORDER, &[("0.7111111", factors.rear.unwrap())])
 }
 
+fn holding() -> Worked {
+    let grade = Angle::from_si(0.2_f64.atan());
+    let force = car(1500.0, None).holding_force(&Situation { grade, ..Situation::level() });
+    worked(&HOLDING, &[("2884.86", force)])
+}
+
 fn energy() -> Worked {
     let machine = turning(12.25);
     let path = from(500.0 * RPM, &Forces::new(level(&machine), [100.0, 0.0]), 0.0, 0.2).path;
@@ -171,6 +177,14 @@ fn energy() -> Worked {
 
 pub(super) fn all() -> Vec<Worked> {
     let machines = [vehicles(), shafts(), hoists(), conveyors()];
-    let motion = [phases(), drag(), mean_fully_developed(), axle_forces(), lock_order(), energy()];
+    let motion = [
+        phases(),
+        drag(),
+        mean_fully_developed(),
+        axle_forces(),
+        lock_order(),
+        energy(),
+        holding(),
+    ];
     machines.into_iter().chain(motion).collect()
 }

@@ -38,6 +38,13 @@ crate::method_sheet! {
 /// The sheets of this file.
 pub static METHODS: &[&Method] = &[&DESCENT];
 
+/// What the rubbed surface is above the bulk under a flux that lasts ([`DESCENT`]), K: flux in W/m², depth in m,
+/// conductivity in W/(m·K).
+#[must_use]
+pub fn surface_excess(flux: f64, depth: f64, conductivity: f64) -> f64 {
+    flux * depth / (3.0 * conductivity)
+}
+
 /// A speed held over a distance.
 pub(super) struct Descended<'a> {
     pub(super) bench: &'a Bench<'a>,
@@ -166,7 +173,7 @@ impl Descended<'_> {
         let flux = heat / (f64::from(faces) * ring.area().si());
         let conductivity =
             material.substance_at(ThermodynamicTemperature::from_si(bulk)).conductivity().si();
-        Some((bulk, bulk + flux * depth / (3.0 * conductivity)))
+        Some((bulk, bulk + surface_excess(flux, depth, conductivity)))
     }
 
     /// All checks of the descent.
