@@ -288,9 +288,23 @@ pub fn operator_stroke(
     Some(master.stroke(Volume::from_si(total)))
 }
 
+/// What acts on an entry that is applied by a fraction of its force, 0 to 1.
+///
+/// A spring stays as strong as it is: what opens the brake does not change.
+#[must_use]
+pub fn eased(entry: &Fitted, pressed: &Pressed, fraction: f64) -> Option<Pressing> {
+    let full = pressed.pressing;
+    let eased = needed(entry, Force::from_si(full.clamp_force.si() * fraction))?;
+    Some(Pressing {
+        spring_force: full.spring_force,
+        release_pressure: full.release_pressure,
+        ..eased
+    })
+}
+
 /// The operator's force of an entry that must clamp with `clamp_force`: its share goes in.
 #[must_use]
-pub fn needed(entry: &Fitted, clamp_force: Force) -> Option<Pressing> {
+fn needed(entry: &Fitted, clamp_force: Force) -> Option<Pressing> {
     let brake = entry.brake()?;
     let mut needed = brake.parts().actuation.as_ref()?.needed(clamp_force, brake.parts().faces);
     needed.operator_force = needed.operator_force.map(|force| force / entry.0.operator_share);

@@ -181,7 +181,10 @@ impl Hydraulic {
 
     pub(super) fn press(&self, input: Input, share: f64, faces: u32) -> Pressing {
         let (pressure, operator_force) = match (input, &self.0.master_cylinder) {
-            (Input::LinePressure(pressure), _) => (pressure.si(), None),
+            (Input::LinePressure(pressure), master) => {
+                let force = master.map(|master| Force::from_si(pressure.si() / master.gain(share)));
+                (pressure.si(), force)
+            }
             (Input::OperatorForce(force), Some(master)) => {
                 (force.si() * master.gain(share), Some(force))
             }

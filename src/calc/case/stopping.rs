@@ -7,7 +7,7 @@ use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{
     Caution, CheckCode, Finding, Notice, Remarks, Severity, Subject, WarningCode,
 };
-use crate::calc::fitted::{Fitted, Place, Pressed, friction_cases, needed, operator_stroke, press};
+use crate::calc::fitted::{Fitted, Place, Pressed, eased, friction_cases, operator_stroke, press};
 use crate::calc::friction::FrictionCase;
 use crate::calc::machine::{Machine, Situation, Vehicle};
 use crate::calc::motion::{
@@ -15,7 +15,7 @@ use crate::calc::motion::{
     LockFactors, MEAN_FULLY_DEVELOPED, PHASES, Reduced, Stop, lock_factors, stop,
 };
 use crate::calc::pressure::FRICTION_TORQUE;
-use crate::calc::quantity::{Amount, Dimension, Force, STANDARD_GRAVITY, Si, Torque, Volume};
+use crate::calc::quantity::{Amount, Dimension, STANDARD_GRAVITY, Si, Torque, Volume};
 
 /// A machine, its brakes and the stop asked of them. Speeds and the deceleration are SI along the coordinate:
 /// m/s and m/s² of a vehicle, load or belt, rad/s and rad/s² of a shaft.
@@ -449,11 +449,8 @@ fn note_limits(remarks: &mut Remarks, input: &Input, case: &CaseOutcome) {
 /// What acts on each entry in a case: as pressed, or what a held deceleration needs of it.
 #[must_use]
 pub fn acting(entry: &Fitted, pressed: Option<&Pressed>, stop: &Stop) -> Option<Pressing> {
-    let pressing = pressed?.pressing;
-    if !stop.is_modulated {
-        return Some(pressing);
-    }
-    needed(entry, Force::from_si(pressing.clamp_force.si() * stop.fraction))
+    let pressed = pressed?;
+    if stop.is_modulated { eased(entry, pressed, stop.fraction) } else { Some(pressed.pressing) }
 }
 
 fn note_pressing(

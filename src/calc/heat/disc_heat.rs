@@ -162,7 +162,9 @@ pub fn course(
     warmth.map(Some).ok_or_else(too_hot)
 }
 
-fn too_hot() -> Faults {
+/// The fault of a heat that no disc stands.
+#[must_use]
+pub fn too_hot() -> Faults {
     let mut faults = Faults::new();
     faults.add(
         "disc",

@@ -69,6 +69,13 @@ impl Reduced {
         self.resistance + self.drag * speed * speed - self.outside
     }
 
+    /// What drives against the brakes at `speed`, 0 if nothing does.
+    #[must_use]
+    pub fn driving(&self, speed: f64) -> f64 {
+        let retarding = self.retarding(speed);
+        if retarding < 0.0 { -retarding } else { 0.0 }
+    }
+
     /// What has to be decelerated in all.
     #[must_use]
     pub fn inertia(&self) -> f64 {

@@ -139,7 +139,7 @@ pub fn stop(forces: &Forces, demand: &Demand) -> Option<Stop> {
         ending,
         is_modulated: run.is_modulated,
         fraction: run.largest_fraction,
-        driving: (-forces.system.retarding(demand.final_speed)).max(0.0),
+        driving: forces.system.driving(demand.final_speed),
         available: at_end.brake[0] + at_end.brake[1],
         path: run.path,
     })

@@ -371,7 +371,7 @@ impl Report<'_> {
             actual: compared.and_then(|compared| compared.actual).map(amount),
             limit: compared.and_then(|compared| compared.limit).map(amount),
             utilization: compared.and_then(|compared| compared.utilization).map(Finite),
-            missing: compared.is_none().then(|| missing.collect()),
+            missing: (missing.len() > 0).then(|| missing.collect()),
             detail: spec_check::detail(check, status),
         }
     }

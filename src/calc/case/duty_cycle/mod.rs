@@ -83,7 +83,7 @@ pub enum Event {
     Space {
         /// When it is due.
         gap: Gap,
-        /// Speed.
+        /// Mean speed.
         speed: f64,
     },
     /// At rest.

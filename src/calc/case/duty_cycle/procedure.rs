@@ -17,8 +17,8 @@ pub fn needs_max_speed(row: &ProcedureRow) -> bool {
 
 /// The events of a test cycle, for a vehicle of `max_speed`, m/s (0 where none is needed).
 ///
-/// Driven up again at once, the vehicle runs at the speed of the next stop until that is due. Nothing follows the
-/// last one.
+/// Between two stops the vehicle is driven up again until the next is due: on the way its discs cool at the mean of the
+/// final speed of the one and the initial speed of the other, as under repeated stops. Nothing follows the last one.
 #[must_use]
 pub fn events(row: &ProcedureRow, max_speed: f64, delays: Delays) -> Vec<Event> {
     let mut events: Vec<Event> = Vec::new();
@@ -27,7 +27,9 @@ pub fn events(row: &ProcedureRow, max_speed: f64, delays: Delays) -> Vec<Event> 
         let (count, event, spacing, then) = event_of(step, max_speed, delays);
         for _ in 0..count {
             if let Some(gap) = due {
-                events.push(Event::Space { gap, speed: event.speeds().0 });
+                let ended = events.last().map_or(0.0, |last| last.speeds().1);
+                let speed = f64::midpoint(ended, event.speeds().0);
+                events.push(Event::Space { gap, speed });
             }
             events.push(event);
             due = spacing;

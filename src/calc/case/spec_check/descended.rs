@@ -8,7 +8,7 @@ use crate::calc::actuation::Pressing;
 use crate::calc::brake::Brake;
 use crate::calc::case::stopping::{brake_forces, full_torques, total};
 use crate::calc::finding::{CheckCode, Finding, Notice, Remarks, Severity, Subject};
-use crate::calc::fitted::{Fitted, Pressed, friction_cases, needed};
+use crate::calc::fitted::{Fitted, eased, friction_cases};
 use crate::calc::friction::FrictionCase;
 use crate::calc::heat::bulk::heated_depth;
 use crate::calc::heat::cooling::Speeds;
@@ -18,7 +18,7 @@ use crate::calc::heat::lumped::{LUMPED_DISC, LumpedDisc, Stretch};
 use crate::calc::machine::Situation;
 use crate::calc::method::Method;
 use crate::calc::motion::{Coordinate, Forces};
-use crate::calc::quantity::{Amount, Dimension, Force, Si, ThermodynamicTemperature};
+use crate::calc::quantity::{Amount, Dimension, Si, ThermodynamicTemperature};
 
 crate::method_sheet! {
     DESCENT {
@@ -83,7 +83,7 @@ impl Descended<'_> {
         let torques = full_torques(&acting.fitted, &acting.pressed, friction_case);
         let demands = brake_forces(self.bench.machine, &acting.fitted, &torques);
         let system = self.bench.machine.reduced(self.situation);
-        let driving = (-system.retarding(self.speed)).max(0.0);
+        let driving = system.driving(self.speed);
         let cold = Forces::new(system, total(&demands));
         let powers = self.powers(&cold, &demands, driving);
         let temperatures: Vec<Option<(f64, f64)>> = (self.bench.brakes().zip(&powers))
@@ -104,7 +104,7 @@ impl Descended<'_> {
             hot_demands.map(|(demand, factor)| demand.map(|force| force * factor)).collect();
         let hot = Forces::new(system, total(&hot_demands));
         let full = hot.at(1.0, self.speed);
-        let fraction = hot.fraction_for(0.0, self.speed).unwrap_or(1.0);
+        let fraction = hot.fraction_for(0.0, self.speed).unwrap_or(1.0).clamp(0.0, 1.0);
         let entries = acting.fitted.iter().zip(&acting.pressed);
         DescentCase {
             friction_case,
@@ -112,7 +112,7 @@ impl Descended<'_> {
             available: full.brake[0] + full.brake[1],
             is_held: full.total_ground() >= driving,
             pressings: entries
-                .map(|(entry, pressed)| eased(entry, pressed.as_ref(), fraction))
+                .map(|(entry, pressed)| eased(entry, pressed.as_ref()?, fraction))
                 .collect(),
             powers,
             temperatures,
@@ -184,46 +184,55 @@ impl Descended<'_> {
             cases.iter().map(|case| (case.friction_case, case.pressings.clone())).collect();
         for (acting, entry, brake) in self.bench.brakes() {
             self.bench.on_pressing(&mut checks, acting, true, &pressings);
-            let speed = self.speeds(entry).shaft;
-            let of_cases = |value: &dyn Fn(&DescentCase) -> Option<Found>| {
-                let found =
-                    cases.iter().filter_map(|case| Some((case.friction_case, value(case)?)));
-                found.collect::<Vec<(FrictionCase, Found)>>()
-            };
-            let mut hold = |code, applies, found: Vec<(FrictionCase, Found)>| {
-                checks.extend(self.bench.on_brake((acting, brake), code, applies, found));
-            };
-            hold(
-                CheckCode::RubbingSpeed,
-                true,
-                of_cases(&|_| Some(Ok(brake.rubbing_speed(speed)))),
-            );
-            hold(
-                CheckCode::PressureVelocity,
-                false,
-                of_cases(&|case| {
-                    let own = case.pressings.get(acting).copied().flatten()?;
-                    Some(Ok(brake.pressure_velocity(speed, own.highest_clamp_force)))
-                }),
-            );
+            self.on_rubbing(&mut checks, (acting, entry, brake), cases);
+            // At high friction, as for a stop. The energy per area belongs to a stop: a descent has none.
             let area = brake.parts().pad.area().si() * f64::from(brake.parts().faces);
-            hold(
-                CheckCode::PowerFlux,
-                false,
-                of_cases(&|case| Some(Ok(case.powers.get(acting)? / area))),
-            );
-            let missing = self.bench.missing_of_heat(acting, brake, true);
-            let temperature = |case: &DescentCase, is_surface: bool| {
-                let found = case.temperatures.get(acting).copied().flatten();
-                Some(found.map_or_else(
-                    || Err(missing.clone()),
-                    |(bulk, surface)| Ok(if is_surface { surface } else { bulk }),
-                ))
-            };
-            hold(CheckCode::DiscBulkTemperature, true, of_cases(&|case| temperature(case, false)));
-            hold(CheckCode::SurfaceTemperature, true, of_cases(&|case| temperature(case, true)));
+            let flux =
+                |high: &DescentCase| Some((high.friction_case, high.powers.get(acting)? / area));
+            let check = cases.last().and_then(flux).and_then(|found| {
+                self.bench.of_one_case((acting, brake), CheckCode::PowerFlux, found)
+            });
+            checks.extend(check);
+            self.on_heat(&mut checks, (acting, brake), cases);
         }
         checks
+    }
+
+    fn on_rubbing(
+        &self,
+        checks: &mut Vec<Check>,
+        (acting, entry, brake): (usize, &Fitted, &Brake),
+        cases: &[DescentCase],
+    ) {
+        let speed = self.speeds(entry).shaft;
+        let found = of_cases(cases, |_| Some(Ok(brake.rubbing_speed(speed))));
+        checks.extend(self.bench.on_brake((acting, brake), CheckCode::RubbingSpeed, true, found));
+        let found = of_cases(cases, |case| {
+            let own = case.pressings.get(acting).copied().flatten()?;
+            Some(Ok(brake.pressure_velocity(speed, own.highest_clamp_force)))
+        });
+        let code = CheckCode::PressureVelocity;
+        checks.extend(self.bench.on_brake((acting, brake), code, false, found));
+    }
+
+    fn on_heat(
+        &self,
+        checks: &mut Vec<Check>,
+        (acting, brake): (usize, &Brake),
+        cases: &[DescentCase],
+    ) {
+        let missing = self.bench.missing_of_heat(acting, brake, true);
+        let peaks = |case: &DescentCase| {
+            let found = case.temperatures.get(acting).copied().flatten();
+            found.ok_or_else(|| missing.clone())
+        };
+        let bulk = of_cases(cases, |case| Some(peaks(case).map(|(bulk, _)| bulk)));
+        let surface = of_cases(cases, |case| Some(peaks(case).map(|(_, surface)| surface)));
+        for (code, found) in
+            [(CheckCode::DiscBulkTemperature, bulk), (CheckCode::SurfaceTemperature, surface)]
+        {
+            checks.extend(self.bench.on_brake((acting, brake), code, true, found));
+        }
     }
 
     fn stops(&self, low: &DescentCase, cases: usize) -> Check {
@@ -278,8 +287,9 @@ impl Descended<'_> {
     }
 }
 
-/// What acts on an entry that is applied by a fraction of its force.
-pub(super) fn eased(entry: &Fitted, pressed: Option<&Pressed>, fraction: f64) -> Option<Pressing> {
-    let clamp_force = pressed?.pressing.clamp_force.si() * fraction.clamp(0.0, 1.0);
-    needed(entry, Force::from_si(clamp_force))
+fn of_cases(
+    cases: &[DescentCase],
+    value: impl Fn(&DescentCase) -> Option<Found>,
+) -> Vec<(FrictionCase, Found)> {
+    cases.iter().filter_map(|case| Some((case.friction_case, value(case)?))).collect()
 }

@@ -2,7 +2,6 @@
 
 use super::bench::Bench;
 use super::check::{Check, Compared, Judged};
-use super::descended::eased;
 use super::loads::Found;
 use crate::calc::actuation::Pressing;
 use crate::calc::brake::Brake;
@@ -10,7 +9,7 @@ use crate::calc::case::duty_cycle::{self, CaseOutcome, Event, FailureReason};
 use crate::calc::case::stopping::{brake_forces, full_torques, total};
 use crate::calc::fault::Faults;
 use crate::calc::finding::{CheckCode, Subject};
-use crate::calc::fitted::Fitted;
+use crate::calc::fitted::{Fitted, eased};
 use crate::calc::friction::FrictionCase;
 use crate::calc::motion::Forces;
 use crate::calc::quantity::{Dimension, ThermodynamicTemperature};
@@ -55,14 +54,7 @@ impl Followed<'_> {
         for (acting, entry, brake) in self.bench.brakes() {
             self.bench.on_pressing(&mut checks, acting, true, &pressings);
             self.on_rubbing(&mut checks, (acting, entry, brake), &pressings);
-            for code in [CheckCode::PowerFlux, CheckCode::EnergyFlux] {
-                let found = self.of_cases(|case| {
-                    let tracked = case.fitted.get(acting)?;
-                    let place = tracked.bounds.iter().position(|bound| bound.code == code)?;
-                    Some(Ok(*tracked.highest.get(place)?))
-                });
-                checks.extend(self.bench.on_brake((acting, brake), code, false, found));
-            }
+            self.on_flux(&mut checks, (acting, brake));
             self.on_heat(&mut checks, (acting, brake));
         }
         checks
@@ -94,6 +86,24 @@ impl Followed<'_> {
         });
         let code = CheckCode::PressureVelocity;
         checks.extend(self.bench.on_brake((acting, brake), code, false, found));
+    }
+
+    /// At high friction. The energy per area belongs to a stop: a descent has none.
+    fn on_flux(&self, checks: &mut Vec<Check>, (acting, brake): (usize, &Brake)) {
+        let Some(high) = self.cases().last() else { return };
+        let has_stops = self.events.iter().any(|event| matches!(event, Event::Stop { .. }));
+        let codes = [(true, CheckCode::PowerFlux), (has_stops, CheckCode::EnergyFlux)];
+        for (_, code) in codes.into_iter().filter(|(applies, _)| *applies) {
+            let highest = || {
+                let tracked = high.fitted.get(acting)?;
+                let place = tracked.bounds.iter().position(|bound| bound.code == code)?;
+                tracked.highest.get(place).copied()
+            };
+            let found = highest().map(|value| (high.friction_case, value));
+            checks.extend(
+                found.and_then(|found| self.bench.of_one_case((acting, brake), code, found)),
+            );
+        }
     }
 
     fn on_heat(&self, checks: &mut Vec<Check>, (acting, brake): (usize, &Brake)) {
@@ -145,7 +155,7 @@ impl Followed<'_> {
         let efforts = self.events.iter().filter_map(|event| {
             let (forces, speed) = self.weakest(low, event)?;
             let brake = forces.at(1.0, speed).brake;
-            Some(((-forces.system.retarding(speed)).max(0.0), brake[0] + brake[1]))
+            Some((forces.system.driving(speed), brake[0] + brake[1]))
         });
         let harder = |one: (f64, f64), other: (f64, f64)| {
             if other.0 * one.1 > one.0 * other.1 { other } else { one }
@@ -175,9 +185,9 @@ impl Followed<'_> {
             };
             Some(held.and_then(|held| forces.fraction_for(held, speed)).unwrap_or(1.0))
         });
-        let fraction = fractions.fold(0.0, f64::max);
+        let fraction = fractions.fold(0.0, f64::max).min(1.0);
         let acting = self.bench.acting;
         let entries = acting.fitted.iter().zip(&acting.pressed);
-        entries.map(|(entry, pressed)| eased(entry, pressed.as_ref(), fraction)).collect()
+        entries.map(|(entry, pressed)| eased(entry, pressed.as_ref()?, fraction)).collect()
     }
 }

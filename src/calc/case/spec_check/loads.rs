@@ -8,7 +8,7 @@ use crate::calc::brake::Brake;
 use crate::calc::case::stop_energy::{BrakeLoad, limits::hottest};
 use crate::calc::case::stopping::{self, CaseOutcome};
 use crate::calc::finding::{CheckCode, Subject};
-use crate::calc::fitted::{Fitted, operator_stroke};
+use crate::calc::fitted::{Fitted, friction_cases, operator_stroke};
 use crate::calc::friction::FrictionCase;
 use crate::calc::motion::Ending;
 use crate::calc::quantity::{Amount, Dimension, Si};
@@ -71,6 +71,18 @@ impl Bench<'_> {
             limit_at: bound.map(|bound| self.at_brake(acting, bound.input)).or(missing),
             ..self.check(code, judged)
         })
+    }
+
+    /// The same with the value of the one case that counts; the case is told where there are several.
+    pub(super) fn of_one_case(
+        &self,
+        at: (usize, &Brake),
+        code: CheckCode,
+        (case, value): (FrictionCase, f64),
+    ) -> Option<Check> {
+        let check = self.on_brake(at, code, false, [(case, Ok(value))])?;
+        let tells_case = friction_cases(&self.acting.fitted).len() > 1;
+        Some(Check { friction_case: tells_case.then_some(case), ..check })
     }
 
     /// The checks of what presses a brake: pad pressure, and the maxima of its actuation.
@@ -186,22 +198,21 @@ impl Stopped<'_> {
         (acting, entry, brake): (usize, &Fitted, &Brake),
         pressings: &[(FrictionCase, Vec<Option<Pressing>>)],
     ) {
-        let speed = |case: &CaseOutcome| {
-            // A stop that does not end still begins: its brakes rub at its first speed, at least.
-            let highest = stopping::highest_brake_speed(&self.input.stop, entry, &case.stop);
-            let parts = entry.parts();
-            let first = self.demand().initial_speed
-                * self.bench.machine.shaft_per_coordinate(parts.rolling_radius)
-                * parts.speed_ratio;
-            if is_over(case) { highest } else { highest.max(first) }
+        // A stop that does not end may go ever faster: its brakes are not judged.
+        let speed = |case: &CaseOutcome| -> Found {
+            let speed = stopping::highest_brake_speed(&self.input.stop, entry, &case.stop);
+            if is_over(case) { Ok(speed) } else { Err(Vec::new()) }
         };
-        let speeds: Vec<(FrictionCase, f64)> =
+        let speeds: Vec<(FrictionCase, Found)> =
             self.cases().iter().map(|case| (case.friction_case, speed(case))).collect();
-        let rubbing = speeds.iter().map(|(case, speed)| (*case, Ok(brake.rubbing_speed(*speed))));
+        let rubbing = speeds
+            .iter()
+            .map(|(case, speed)| (*case, speed.clone().map(|speed| brake.rubbing_speed(speed))));
         checks.extend(self.bench.on_brake((acting, brake), CheckCode::RubbingSpeed, true, rubbing));
         let products = speeds.iter().zip(pressings).filter_map(|((case, speed), (_, all))| {
             let own = all.get(acting).copied().flatten()?;
-            Some((*case, Ok(brake.pressure_velocity(*speed, own.highest_clamp_force))))
+            let product = |speed| brake.pressure_velocity(speed, own.highest_clamp_force);
+            Some((*case, speed.clone().map(product)))
         });
         let code = CheckCode::PressureVelocity;
         checks.extend(self.bench.on_brake((acting, brake), code, false, products));
@@ -222,12 +233,8 @@ impl Stopped<'_> {
             (CheckCode::PowerFlux, load.peak_power_flux.si()),
             (CheckCode::EnergyFlux, load.energy_flux.si()),
         ];
-        let tells_case = self.cases().len() > 1;
         for (code, value) in found {
-            let check = self.bench.on_brake((acting, brake), code, false, [(case, Ok(value))]);
-            checks.extend(
-                check.map(|check| Check { friction_case: tells_case.then_some(case), ..check }),
-            );
+            checks.extend(self.bench.of_one_case((acting, brake), code, (case, value)));
         }
     }
 
@@ -258,7 +265,7 @@ impl Stopped<'_> {
         let has_no_end = load
             .repeated
             .is_some_and(|repeated| repeated.steady.is_none() && self.input.stop_count.is_none());
-        if has_no_end {
+        if has_no_end || load.overheats {
             return Ok(f64::INFINITY);
         }
         let [(_, surface), (_, bulk)] = hottest(self.input, load);

@@ -3,7 +3,6 @@
 use super::{BrakeLoad, EntryEnergy, Input};
 use crate::calc::brake::Brake;
 use crate::calc::case::stopping;
-use crate::calc::fault::Faults;
 use crate::calc::fitted::Fitted;
 use crate::calc::heat::cooling::Speeds;
 use crate::calc::heat::disc_heat::{self, Heating, Warmth};
@@ -38,22 +37,21 @@ impl<'a> Load<'a> {
     }
 
     /// The brake's energy and what follows from it; `work` is that of all brakes of each axle.
-    pub(super) fn energy(&self, work: [f64; 2]) -> Result<EntryEnergy, Faults> {
+    pub(super) fn energy(&self, work: [f64; 2]) -> EntryEnergy {
         let energy = work[0] * self.shares[0] + work[1] * self.shares[1];
         let braking_time = self.braking_time();
         let mean_power = if braking_time > 0.0 { energy / braking_time } else { 0.0 };
         let peak_power = self.path().peak_brake_power(self.shares).max(mean_power);
-        let brake =
-            self.entry.brake().map(|brake| self.on_brake(brake, energy, peak_power)).transpose()?;
-        Ok(EntryEnergy {
+        let brake = self.entry.brake().map(|brake| self.on_brake(brake, energy, peak_power));
+        EntryEnergy {
             energy: Energy::from_si(energy),
             mean_power: Power::from_si(mean_power),
             peak_power: Power::from_si(peak_power),
             brake,
-        })
+        }
     }
 
-    fn on_brake(&self, brake: &Brake, energy: f64, peak_power: f64) -> Result<BrakeLoad, Faults> {
+    fn on_brake(&self, brake: &Brake, energy: f64, peak_power: f64) -> BrakeLoad {
         let parts = brake.parts();
         let faces = f64::from(parts.faces);
         let area = parts.pad.area().si();
@@ -61,15 +59,17 @@ impl<'a> Load<'a> {
             stopping::highest_brake_speed(&self.input.stop, self.entry, &self.case.stop);
         let power = self.power_course();
         let heating = self.heating(energy, &power);
-        Ok(BrakeLoad {
+        let heated = disc_heat::of_one_stop(brake, &heating);
+        BrakeLoad {
             energy_per_face: Energy::from_si(energy / faces),
             energy_flux: EnergyFlux::from_si(energy / faces / area),
             peak_power_flux: PowerFlux::from_si(peak_power / faces / area),
             rubbing_speed: Velocity::from_si(shaft_speed * parts.pad.largest_radius().si()),
-            disc: disc_heat::of_one_stop(brake, &heating)?,
+            overheats: heated.is_err(),
+            disc: heated.ok().flatten(),
             repeated: self.repeated(brake, &heating),
             pad_life_stops: brake.pad_life(energy / faces),
-        })
+        }
     }
 
     fn heating<'b>(&self, energy: f64, power: &'b [(f64, f64)]) -> Heating<'b> {

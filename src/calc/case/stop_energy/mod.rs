@@ -6,7 +6,7 @@ mod load;
 use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{Caution, Remarks};
 use crate::calc::friction::FrictionCase;
-use crate::calc::heat::disc_heat::{DiscHeat, Warmth};
+use crate::calc::heat::disc_heat::{self, DiscHeat, Warmth};
 use crate::calc::heat::disc_series::Repeated;
 use crate::calc::method::Method;
 use crate::calc::motion::{Coordinate, Ending, Path};
@@ -113,6 +113,8 @@ pub struct BrakeLoad {
     pub peak_power_flux: PowerFlux,
     /// Highest, at the pad's outer radius, while torque acts.
     pub rubbing_speed: Velocity,
+    /// Whether the heat would take its disc beyond any temperature a solid has.
+    pub overheats: bool,
     /// Temperatures of its disc, where they can be told.
     pub disc: Option<DiscHeat>,
     /// Temperatures of its disc under repeated stops, where they are asked for and can be told.
@@ -134,13 +136,14 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
     faults.require(holds, "stop_count", FaultCode::OutOfRange, detail);
     let Some(stop) = faults.part("", stopping::evaluate(&input.stop)) else { return Err(faults) };
     faults.into_result(())?;
-    evaluate_stopped(input, stop)
+    let outcome = evaluate_stopped(input, stop)?;
+    outcome.overheating().into_result(outcome)
 }
 
-/// Computes the energies of a stop that is known already.
+/// Computes the energies of a stop that is known already. A disc beyond any temperature is told as such.
 ///
 /// # Errors
-/// An interval that is shorter than the braking, or temperatures beyond any material.
+/// An interval that is shorter than the braking.
 pub fn evaluate_stopped(input: &Input, stop: stopping::Outcome) -> Result<Outcome, Faults> {
     let mut faults = Faults::new();
     faults.require(
@@ -159,12 +162,33 @@ pub fn evaluate_stopped(input: &Input, stop: stopping::Outcome) -> Result<Outcom
     let mut friction_cases = Vec::with_capacity(stop.friction_cases.len());
     for case in &stop.friction_cases {
         let energies = match case.stop.ending {
-            Ending::Reached(_) => faults.part("", energies(input, case, &mut remarks)),
+            Ending::Reached(_) => Some(energies(input, case, &mut remarks)),
             Ending::NotReached { .. } => None,
         };
         friction_cases.push(CaseOutcome { friction_case: case.friction_case, energies });
     }
     faults.into_result(Outcome { friction_cases, stop, remarks })
+}
+
+impl Outcome {
+    /// The discs whose heat goes beyond any temperature.
+    fn overheating(&self) -> Faults {
+        let mut faults = Faults::new();
+        let entries =
+            |case: &CaseOutcome| case.energies.as_ref().map_or(0, |energies| energies.fitted.len());
+        let most = self.friction_cases.iter().map(entries).max().unwrap_or(0);
+        let overheats = |index: usize, case: &CaseOutcome| {
+            let load =
+                case.energies.as_ref().and_then(|energies| energies.fitted.get(index)?.brake);
+            load.is_some_and(|load| load.overheats)
+        };
+        for index in 0..most {
+            if self.friction_cases.iter().any(|case| overheats(index, case)) {
+                faults.part(&format!("fitted/{index}/brake"), Err::<(), _>(disc_heat::too_hot()));
+            }
+        }
+        faults
+    }
 }
 
 impl Input {
@@ -204,23 +228,16 @@ pub fn course(
     Load::new(input, stop, (entry, fitted)).course(load, count)
 }
 
-fn energies(
-    input: &Input,
-    case: &stopping::CaseOutcome,
-    remarks: &mut Remarks,
-) -> Result<Energies, Faults> {
-    let mut faults = Faults::new();
+fn energies(input: &Input, case: &stopping::CaseOutcome, remarks: &mut Remarks) -> Energies {
     let path = &case.stop.path;
     let work = path.brake_work();
     let mut fitted = Vec::with_capacity(input.stop.fitted.len());
     for (index, entry) in input.stop.fitted.iter().enumerate() {
         let load = Load::new(input, case, (index, entry)).energy(work);
-        if let Some(load) = faults.part(&format!("fitted/{index}/brake"), load) {
-            limits::hold(remarks, input, (index, entry), &load, case.friction_case);
-            fitted.push(load);
-        }
+        limits::hold(remarks, input, (index, entry), &load, case.friction_case);
+        fitted.push(load);
     }
-    faults.into_result(balance(path, work, fitted))
+    balance(path, work, fitted)
 }
 
 /// The terms of the balance ([`ENERGY_BALANCE`]).
