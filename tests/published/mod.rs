@@ -11,5 +11,6 @@ mod pads;
 mod repeated;
 mod rules;
 mod sheets;
+mod spec_check;
 mod stops;
 mod units;
