@@ -1,0 +1,6 @@
+//! What keeps the program running beside its answers: connections, keys that change, the log, the signals.
+
+pub(crate) mod connections;
+pub(crate) mod key_watch;
+pub(crate) mod log;
+pub(crate) mod signals;
