@@ -28,7 +28,7 @@ const BUFFER: usize = 64 * 1024; // bytes
 const PAUSE: Duration = Duration::from_millis(250);
 
 /// Connections that may wait in the queue of a listener when it closes.
-const QUEUE: usize = 4096;
+const QUEUE: usize = 1024;
 
 /// Time for one that waits in that queue to be handed over, and for a request already sent on it to be seen.
 const MOMENT: Duration = Duration::from_millis(20);
@@ -78,7 +78,8 @@ impl Host {
                 }
             }
         }
-        // The system has opened these in our name: their clients may have sent already.
+        // The system has opened these in our name: their clients may have sent already. It is not to be seen which came
+        // late, so under a storm of clients the last ones find a closed door.
         for _ in 0..QUEUE {
             match tokio::time::timeout(MOMENT, listener.accept()).await {
                 Ok(Ok((stream, peer))) => self.begin(stream, peer),

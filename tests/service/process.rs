@@ -25,17 +25,47 @@ fn run(arguments: &[&str], settings: &[(&str, &str)]) -> Output {
 pub(super) struct Service {
     child: Child,
     pub(super) address: String,
+    observed: String,
 }
 
 impl Service {
+    /// On a free port of loopback.
     pub(super) fn start(settings: &[(&str, &str)]) -> Self {
+        Self::start_as_set(&[&[("BRAKEWRIGHT_LISTEN", "127.0.0.1:0")], settings].concat())
+    }
+
+    /// With metrics on another free port.
+    pub(super) fn start_observed(settings: &[(&str, &str)]) -> Self {
+        let free = std::net::TcpListener::bind("127.0.0.1:0").unwrap().local_addr().unwrap();
+        let observed = free.to_string();
+        let observe = [("BRAKEWRIGHT_METRICS_LISTEN", observed.as_str())];
+        let mut service = Self::start(&[&observe, settings].concat());
+        service.observed = observed;
+        service
+    }
+
+    pub(super) fn start_as_set(settings: &[(&str, &str)]) -> Self {
         let mut command = program(&[], settings);
-        command.env("BRAKEWRIGHT_LISTEN", "127.0.0.1:0");
         let mut child = command.stdout(Stdio::piped()).stderr(Stdio::piped()).spawn().unwrap();
         let mut line = String::new();
         BufReader::new(child.stdout.take().unwrap()).read_line(&mut line).unwrap();
         let address = line.trim_end().strip_prefix("listening on http://").unwrap().to_owned();
-        Self { child, address }
+        Self { child, address, observed: String::new() }
+    }
+
+    /// The value of a metric.
+    pub(super) fn metric(&self, series: &str) -> f64 {
+        let request = "GET /metrics HTTP/1.1\r\nHost: x\r\nConnection: close\r\n\r\n";
+        let text = exchange(&self.observed, request);
+        let line = text.lines().find_map(|line| line.strip_prefix(series)?.strip_prefix(' '));
+        line.unwrap_or_else(|| panic!("no {series} in\n{text}")).parse().unwrap()
+    }
+
+    /// The memory of the process that is in use.
+    pub(super) fn memory_kib(&self) -> u64 {
+        let status = std::fs::read_to_string(format!("/proc/{}/status", self.child.id())).unwrap();
+        let line = status.lines().find_map(|line| line.strip_prefix("VmRSS:")).unwrap();
+        line.trim().strip_suffix(" kB").unwrap().parse().unwrap()
     }
 
     pub(super) fn signal(&self, name: &str) {
