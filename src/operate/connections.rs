@@ -3,13 +3,14 @@
 use std::net::SocketAddr;
 use std::pin::pin;
 use std::sync::Arc;
+use std::sync::atomic::{AtomicBool, Ordering};
 use std::time::Duration;
 
 use axum::Router;
 use axum::body::Body;
 use axum::http::header::CONNECTION;
 use axum::http::{HeaderValue, Request, Response};
-use hyper::body::Incoming;
+use hyper::body::{Body as _, Incoming};
 use hyper::server::conn::http1;
 use hyper::service::service_fn;
 use hyper_util::rt::{TokioIo, TokioTimer};
@@ -18,6 +19,7 @@ use tokio::sync::{OwnedSemaphorePermit, Semaphore, watch};
 use tokio_io_timeout::TimeoutStream;
 use tower::ServiceExt as _;
 
+use super::lingering::Lingering;
 use crate::api::guard::client::Peer;
 use crate::api::metrics::{self, Present, Turned};
 
@@ -118,12 +120,14 @@ impl Host {
         let _ = stream.set_nodelay(true);
         let mut stream = TimeoutStream::new(stream);
         stream.set_write_timeout(Some(self.patience));
-        let service = service_fn(|request| self.answer(request, Peer(peer.ip())));
+        let unread = Arc::new(AtomicBool::new(false));
+        let stream = Lingering::new(Box::pin(stream), Arc::clone(&unread));
+        let service = service_fn(|request| self.answer(request, Peer(peer.ip()), &unread));
         let connection = http1::Builder::new()
             .timer(TokioTimer::new())
             .header_read_timeout(self.patience)
             .max_buf_size(BUFFER)
-            .serve_connection(TokioIo::new(Box::pin(stream)), service);
+            .serve_connection(TokioIo::new(stream), service);
         let mut connection = pin!(connection);
         let closing = async {
             // Fails if the host is gone, which comes to the same.
@@ -142,10 +146,15 @@ impl Host {
         &self,
         request: Request<Incoming>,
         peer: Peer,
+        unread: &AtomicBool,
     ) -> Result<Response<Body>, std::convert::Infallible> {
+        let has_body = !request.body().is_end_stream();
         let mut request = request.map(Body::new);
         request.extensions_mut().insert(peer);
         let mut response = self.routes.clone().oneshot(request).await?;
+        // Whoever is refused may still be sending.
+        let refused = response.status().is_client_error() || response.status().is_server_error();
+        unread.store(has_body && refused, Ordering::Relaxed);
         if *self.stage.borrow() >= Stage::Leaving {
             response.headers_mut().insert(CONNECTION, HeaderValue::from_static("close"));
         }

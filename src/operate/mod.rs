@@ -2,5 +2,6 @@
 
 pub(crate) mod connections;
 pub(crate) mod key_watch;
+mod lingering;
 pub(crate) mod log;
 pub(crate) mod signals;

@@ -82,7 +82,11 @@ fn a_head_that_comes_slowly_is_not_waited_for() {
     let begin = Instant::now();
     trickle(&mut stream, &head(10, &format!("X-Long: {}\r\n", "x".repeat(1000))));
     assert_eq!(rest(&mut stream), "");
-    assert!(begin.elapsed() >= PATIENCE && begin.elapsed() < 6 * PATIENCE, "{:?}", begin.elapsed());
+    assert!(
+        begin.elapsed() >= PATIENCE && begin.elapsed() < 10 * PATIENCE,
+        "{:?}",
+        begin.elapsed()
+    );
     assert_honest_request_is_served(&service);
 }
 
@@ -134,7 +138,7 @@ fn a_connection_that_is_closed_on_one_side_comes_to_its_end() {
         stream.shutdown(Shutdown::Write).unwrap();
         let begin = Instant::now();
         let answer = rest(&mut stream);
-        assert!(begin.elapsed() < 4 * PATIENCE, "{:?}", begin.elapsed());
+        assert!(begin.elapsed() < 10 * PATIENCE, "{:?}", begin.elapsed());
         assert!(answer.is_empty() || answer.starts_with("HTTP/1.1 "), "{answer}");
     }
     assert_honest_request_is_served(&service);
@@ -145,23 +149,20 @@ fn a_body_that_is_too_large_is_refused_readably_while_it_is_still_sent() {
     let service = service();
     let memory = service.memory_kib();
     let chunk = format!("{:x}\r\n{}\r\n", 65_536, " ".repeat(65_536));
-    let declared = head(64 << 20, "");
+    let declared = head(16 << 20, "");
     let chunked =
-        declared.replace(&format!("Content-Length: {}", 64 << 20), "Transfer-Encoding: chunked");
+        declared.replace(&format!("Content-Length: {}", 16 << 20), "Transfer-Encoding: chunked");
     for (head, piece) in [(&declared, &" ".repeat(65_536)), (&chunked, &chunk)] {
         let mut stream = connect(&service);
         stream.write_all(head.as_bytes()).unwrap();
         let mut sender = stream.try_clone().unwrap();
         let piece = piece.clone();
         let sending = std::thread::spawn(move || {
-            // Honest clients send on until they look for the answer.
-            for _ in 0..64 {
-                if sender.write_all(piece.as_bytes()).is_err() {
-                    return;
-                }
-            }
+            // Many clients look for the answer only when all is sent.
+            (0..256).all(|_| sender.write_all(piece.as_bytes()).is_ok())
         });
-        sending.join().unwrap();
+        assert!(sending.join().unwrap(), "the connection broke");
+        // The chunked body has no end: that of the connection must come anyway.
         let problem = problem(&rest(&mut stream), 413);
         assert_eq!(problem["type"], "/problems/payload_too_large");
         assert_honest_request_is_served(&service);
