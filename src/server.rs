@@ -55,16 +55,18 @@ pub async fn serve(settings: &Settings, log: &Log) -> Result<(), String> {
     writeln!(io::stdout(), "listening on http://{address}")
         .map_err(|error| cannot("write to standard output", &error))?;
 
+    let farewell = FAREWELL.min(settings.drain_timeout / 2);
     let told = async {
         stop.wait().await;
         tracing::info!("told to stop: finishing what is in progress");
         readiness.drain();
         host.leave();
         // Connections are still taken in this time.
-        tokio::time::sleep(FAREWELL.min(settings.drain_timeout / 2)).await;
+        tokio::time::sleep(farewell).await;
     };
     host.take_until(listener, told).await;
-    if tokio::time::timeout(settings.drain_timeout, host.finish()).await.is_err() {
+    let left = settings.drain_timeout.saturating_sub(farewell);
+    if tokio::time::timeout(left, host.finish()).await.is_err() {
         tracing::warn!("the drain time is over: requests in progress are cut off");
     }
     Ok(())

@@ -53,6 +53,9 @@ impl Default for LayerSettings {
     }
 }
 
+/// How much later than the request the body runs out of time, so that it is the request that is answered 408.
+const MARGIN: Duration = Duration::from_secs(1);
+
 /// Surrounds the routes; the first layer here is the innermost.
 pub fn wrap(routes: Router, settings: &LayerSettings) -> Router {
     let gate = Gate::new(settings.keys.clone(), settings.rate_limit, settings.max_concurrency);
@@ -63,7 +66,7 @@ pub fn wrap(routes: Router, settings: &LayerSettings) -> Router {
         // The limit above counts what arrives, so nothing that unfolds later may be let in.
         .layer(from_fn(refuse_compressed))
         // A body that is read while the answer is sent already may last, but not pause.
-        .layer(RequestBodyTimeoutLayer::new(time))
+        .layer(RequestBodyTimeoutLayer::new(time + MARGIN))
         // Reading any other body is part of the handler's time: a slow body is bounded, too.
         .layer(TimeoutLayer::with_status_code(StatusCode::REQUEST_TIMEOUT, time))
         .layer(from_fn_with_state(Arc::new(gate), admit))

@@ -10,7 +10,7 @@ use crate::api::metrics;
 use crate::setting_values::LogFormat;
 
 /// Lines that may wait to be written.
-const MOST_WAITING: usize = 8192;
+const MOST_WAITING: usize = 4096;
 
 /// The open log; dropping it writes what still waits.
 #[derive(Debug)]

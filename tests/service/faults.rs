@@ -58,13 +58,17 @@ fn trickle(stream: &mut TcpStream, text: &str) {
 
 /// What came until the end of the connection, however that was.
 fn rest(stream: &mut TcpStream) -> String {
+    rest_within(stream, LONGEST)
+}
+
+fn rest_within(stream: &mut TcpStream, longest: Duration) -> String {
     let begin = Instant::now();
     let mut bytes = Vec::new();
     let mut piece = vec![0; 64 * 1024];
     while let Ok(count @ 1..) = stream.read(&mut piece) {
         bytes.extend(&piece[..count]);
     }
-    assert!(begin.elapsed() < LONGEST, "the connection stays open");
+    assert!(begin.elapsed() < longest, "the connection stays open");
     String::from_utf8_lossy(&bytes).into_owned()
 }
 
@@ -255,7 +259,7 @@ fn a_log_that_nobody_reads_does_not_stop_the_service() {
     let mut stream = connect(&service);
     // The pipe takes some hundred lines, the program some thousand.
     let request = "GET /health/live HTTP/1.1\r\nHost: x\r\n\r\n";
-    let asked = 15_000;
+    let asked = 6_000;
     let mut sender = stream.try_clone().unwrap();
     let sending = std::thread::spawn(move || {
         for _ in 0..asked / 100 {
@@ -263,7 +267,7 @@ fn a_log_that_nobody_reads_does_not_stop_the_service() {
         }
         sender.shutdown(Shutdown::Write).unwrap();
     });
-    let answers = rest(&mut stream).matches("HTTP/1.1 200 ").count();
+    let answers = rest_within(&mut stream, 6 * LONGEST).matches("HTTP/1.1 200 ").count();
     sending.join().unwrap();
     assert!(answers > asked - 200, "{answers} answers");
     assert!(service.metric("brakewright_log_lines_lost_total") > 0.0);
