@@ -16,7 +16,7 @@ use crate::operate::log::Log;
 use crate::operate::signals::{Hangups, StopSignals};
 use crate::settings::Settings;
 
-/// Connections of clients at once; one more is closed at once. Each holds a few kilobytes.
+/// Connections of clients at once; one more is closed at once. Each holds some 16 kilobytes, so all hold 260 megabytes.
 const MOST_CONNECTIONS: u32 = 16_384;
 
 /// Connections to the metrics at once, and their patience: their clients are few and near.
