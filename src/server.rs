@@ -10,7 +10,7 @@ use tokio::net::TcpListener;
 use crate::api;
 use crate::api::health::Readiness;
 use crate::api::metrics;
-use crate::operate::connections::Host;
+use crate::operate::connections::{Host, listen};
 use crate::operate::key_watch::KeyWatch;
 use crate::operate::log::Log;
 use crate::operate::signals::{Hangups, StopSignals};
@@ -41,7 +41,7 @@ pub async fn serve(settings: &Settings, log: &Log) -> Result<(), String> {
     let stop = StopSignals::listen().map_err(|error| cannot("take signals", &error))?;
     let hangups = Hangups::listen().map_err(|error| cannot("take signals", &error))?;
     allow_files();
-    let (listener, observed) = bind(settings).await?;
+    let (listener, observed) = bind(settings)?;
     let address = listener.local_addr().map_err(|error| cannot("serve", &error))?;
     warn_if_open(settings, address);
 
@@ -77,18 +77,13 @@ fn cannot(what: &str, error: &io::Error) -> String {
 }
 
 /// Binds all addresses, or says of each why not.
-async fn bind(settings: &Settings) -> Result<(TcpListener, Option<TcpListener>), String> {
-    let listener = TcpListener::bind(settings.listen).await;
-    let listener =
-        listener.map_err(|error| cannot(&format!("serve on {}", settings.listen), &error));
-    let observed = match settings.metrics_listen.address() {
-        None => Ok(None),
-        Some(address) => TcpListener::bind(address)
-            .await
-            .map(Some)
-            .map_err(|error| cannot(&format!("serve metrics on {address}"), &error)),
-    };
-    match (listener, observed) {
+fn bind(settings: &Settings) -> Result<(TcpListener, Option<TcpListener>), String> {
+    let listener = listen(settings.listen)
+        .map_err(|error| cannot(&format!("serve on {}", settings.listen), &error));
+    let observed = settings.metrics_listen.address().map(|address| {
+        listen(address).map_err(|error| cannot(&format!("serve metrics on {address}"), &error))
+    });
+    match (listener, observed.transpose()) {
         (Ok(listener), Ok(observed)) => Ok((listener, observed)),
         (listener, observed) => {
             Err(listener.err().unwrap_or_default() + &observed.err().unwrap_or_default())

@@ -1,5 +1,6 @@
 //! Connections: none may wait for ever, none may fill the memory, and none is dropped that was promised an answer.
 
+use std::io;
 use std::net::SocketAddr;
 use std::pin::pin;
 use std::sync::Arc;
@@ -14,7 +15,7 @@ use hyper::body::{Body as _, Incoming};
 use hyper::server::conn::http1;
 use hyper::service::service_fn;
 use hyper_util::rt::{TokioIo, TokioTimer};
-use tokio::net::{TcpListener, TcpStream};
+use tokio::net::{TcpListener, TcpSocket, TcpStream};
 use tokio::sync::{OwnedSemaphorePermit, Semaphore, watch};
 use tokio_io_timeout::TimeoutStream;
 use tower::ServiceExt as _;
@@ -29,11 +30,20 @@ const BUFFER: usize = 64 * 1024; // bytes
 /// The pause after the system could not hand over a connection, for example because it has no more files.
 const PAUSE: Duration = Duration::from_millis(250);
 
-/// Connections that may wait in the queue of a listener when it closes.
-const QUEUE: usize = 1024;
+/// Connections that may wait to be taken: the system makes clients of a full queue try again only after a second.
+const QUEUE: u16 = 4096;
 
 /// Time for one that waits in that queue to be handed over, and for a request already sent on it to be seen.
 const MOMENT: Duration = Duration::from_millis(20);
+
+/// Listens on an address.
+pub(crate) fn listen(address: SocketAddr) -> io::Result<TcpListener> {
+    let socket = if address.is_ipv4() { TcpSocket::new_v4() } else { TcpSocket::new_v6() }?;
+    // So that a new start need not wait until the connections of the last one are forgotten.
+    socket.set_reuseaddr(true)?;
+    socket.bind(address)?;
+    socket.listen(u32::from(QUEUE))
+}
 
 /// Serves routes over connections.
 #[derive(Debug, Clone)]
