@@ -3,6 +3,8 @@
 pub mod api;
 pub mod calc;
 pub mod data;
+mod operate;
 pub mod probe;
 pub mod server;
+mod setting_values;
 pub mod settings;

@@ -16,7 +16,7 @@ fn main() -> ExitCode {
         Ok(CommandLine { command, settings }) => {
             match run(command.unwrap_or(Command::Serve), &settings) {
                 Ok(()) => ExitCode::SUCCESS,
-                Err(sentence) => say(&format!("{sentence}\n"), ExitCode::FAILURE),
+                Err(sentences) => say(&sentences, ExitCode::FAILURE),
             }
         }
         Err(Stop { text, asked_for: true }) => match write!(io::stdout(), "{text}") {
@@ -29,23 +29,25 @@ fn main() -> ExitCode {
 
 fn run(command: Command, settings: &Settings) -> Result<(), String> {
     match command {
-        Command::Serve => serve(settings)
-            .map_err(|error| format!("error: cannot serve on {}: {error}", settings.listen)),
+        Command::Serve => serve(settings),
         Command::Openapi => match write!(io::stdout(), "{}", openapi_json()) {
             // Who reads only the beginning has what was wanted.
             Err(error) if error.kind() != io::ErrorKind::BrokenPipe => {
-                Err(format!("error: cannot write the description: {error}"))
+                Err(format!("error: cannot write the description: {error}\n"))
             }
             _ => Ok(()),
         },
-        Command::Probe => probe::probe(settings.listen),
+        Command::Probe => probe::probe(settings.listen).map_err(|sentence| sentence + "\n"),
     }
 }
 
-fn serve(settings: &Settings) -> io::Result<()> {
-    server::start_logging(settings);
-    let runtime = tokio::runtime::Builder::new_multi_thread().enable_all().build()?;
-    let result = runtime.block_on(server::serve(settings));
+fn serve(settings: &Settings) -> Result<(), String> {
+    let log = server::start_logging(settings);
+    let runtime = tokio::runtime::Builder::new_multi_thread()
+        .enable_all()
+        .build()
+        .map_err(|error| format!("error: cannot start threads: {error}\n"))?;
+    let result = runtime.block_on(server::serve(settings, &log));
     // Work that is still going on belongs to nobody any more.
     runtime.shutdown_timeout(Duration::ZERO);
     result

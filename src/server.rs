@@ -1,89 +1,132 @@
 //! Listens, announces, serves, drains.
 
-use std::future::IntoFuture as _;
-use std::io::{self, IsTerminal as _, Write as _};
+use std::future;
+use std::io::{self, Write as _};
+use std::net::SocketAddr;
+use std::time::Duration;
 
-use axum::serve::ListenerExt as _;
 use tokio::net::TcpListener;
-use tokio::signal::unix::{Signal, SignalKind, signal};
-use tokio::sync::oneshot;
-use tracing_subscriber::EnvFilter;
 
 use crate::api;
 use crate::api::health::Readiness;
-use crate::settings::{LogFormat, Settings};
+use crate::api::metrics;
+use crate::operate::connections::{Host, listen};
+use crate::operate::key_watch::KeyWatch;
+use crate::operate::log::Log;
+use crate::operate::signals::{Hangups, StopSignals};
+use crate::settings::Settings;
 
-/// Sends log lines to standard error from now on.
-pub fn start_logging(settings: &Settings) {
-    // The filter was checked when the settings were read.
-    let filter = EnvFilter::builder().parse_lossy(&settings.log);
-    let lines = tracing_subscriber::fmt()
-        .with_env_filter(filter)
-        .with_ansi(io::stderr().is_terminal())
-        .with_writer(io::stderr);
-    match settings.log_format {
-        LogFormat::Text => lines.init(),
-        LogFormat::Json => lines.json().flatten_event(true).init(),
-    }
+/// Connections of clients at once; one more is closed at once. Each holds some 16 kilobytes, so all hold 260 megabytes.
+const MOST_CONNECTIONS: u32 = 16_384;
+
+/// Connections to the metrics at once, and their patience: their clients are few and near.
+const MOST_OBSERVERS: u32 = 32;
+const PATIENCE_WITH_OBSERVERS: Duration = Duration::from_secs(10);
+
+/// How long a service that is told to stop goes on to answer what comes, at most: its clients and their balancer do
+/// not know yet.
+const FAREWELL: Duration = Duration::from_millis(200);
+
+/// Sends log lines to standard error from now on; dropping the log writes the last ones.
+#[must_use]
+pub fn start_logging(settings: &Settings) -> Log {
+    Log::start(&settings.log, settings.log_format)
 }
 
 /// Serves until SIGTERM or SIGINT, then finishes what is in progress, for the drain time at most.
 ///
 /// # Errors
-/// The address cannot be bound, or standard output cannot be written.
-pub async fn serve(settings: &Settings) -> io::Result<()> {
-    let stop = StopSignals::listen()?;
-    let listener = TcpListener::bind(settings.listen).await?;
-    let address = listener.local_addr()?;
-    if !address.ip().is_loopback() {
-        tracing::warn!(%address, "reachable from other machines, without keys or encryption: put a proxy in front");
-    }
+/// A sentence for each address that cannot be bound, or for whatever else the system refuses.
+pub async fn serve(settings: &Settings, log: &Log) -> Result<(), String> {
+    let stop = StopSignals::listen().map_err(|error| cannot("take signals", &error))?;
+    let hangups = Hangups::listen().map_err(|error| cannot("take signals", &error))?;
+    allow_files();
+    let (listener, observed) = bind(settings)?;
+    let address = listener.local_addr().map_err(|error| cannot("serve", &error))?;
+    warn_if_open(settings, address);
+
     let readiness = Readiness::default();
     let routes = api::router(&settings.layers(), readiness.clone());
-    writeln!(io::stdout(), "listening on http://{address}")?;
+    let host = Host::new(routes, settings.request_timeout, MOST_CONNECTIONS);
+    watch_keys(settings, hangups);
+    if let Some(observed) = observed {
+        observe(observed, log);
+    }
+    writeln!(io::stdout(), "listening on http://{address}")
+        .map_err(|error| cannot("write to standard output", &error))?;
 
-    let (tell, told) = oneshot::channel();
-    let listener = listener.tap_io(|stream| {
-        // Answers are short; without it they could wait for the client's acknowledgement.
-        let _ = stream.set_nodelay(true);
-    });
-    let until_told = async {
-        let _ = told.await;
-    };
-    let served = axum::serve(listener, routes).with_graceful_shutdown(until_told).into_future();
-    let drained = async {
+    let farewell = FAREWELL.min(settings.drain_timeout / 2);
+    let told = async {
         stop.wait().await;
         tracing::info!("told to stop: finishing what is in progress");
         readiness.drain();
-        let _ = tell.send(());
-        tokio::time::sleep(settings.drain_timeout).await;
+        host.leave();
+        // Connections are still taken in this time.
+        tokio::time::sleep(farewell).await;
     };
-    tokio::select! {
-        result = served => result,
-        () = drained => {
-            tracing::warn!("the drain time is over: requests in progress are cut off");
-            Ok(())
+    host.take_until(listener, told).await;
+    let left = settings.drain_timeout.saturating_sub(farewell);
+    if tokio::time::timeout(left, host.finish()).await.is_err() {
+        tracing::warn!("the drain time is over: requests in progress are cut off");
+    }
+    Ok(())
+}
+
+fn cannot(what: &str, error: &io::Error) -> String {
+    format!("error: cannot {what}: {error}\n")
+}
+
+/// Binds all addresses, or says of each why not.
+fn bind(settings: &Settings) -> Result<(TcpListener, Option<TcpListener>), String> {
+    let listener = listen(settings.listen)
+        .map_err(|error| cannot(&format!("serve on {}", settings.listen), &error));
+    let observed = settings.metrics_listen.address().map(|address| {
+        listen(address).map_err(|error| cannot(&format!("serve metrics on {address}"), &error))
+    });
+    match (listener, observed.transpose()) {
+        (Ok(listener), Ok(observed)) => Ok((listener, observed)),
+        (listener, observed) => {
+            Err(listener.err().unwrap_or_default() + &observed.err().unwrap_or_default())
         }
     }
 }
 
-/// The signals that ask the program to stop.
-struct StopSignals {
-    terminate: Signal,
-    interrupt: Signal,
+/// As many files, that is connections, as the system grants at all.
+fn allow_files() {
+    if let Err(error) = rlimit::increase_nofile_limit(u64::from(MOST_CONNECTIONS) + 1024) {
+        tracing::warn!(%error, "the limit of open files stays low");
+    }
 }
 
-impl StopSignals {
-    /// From now on the signals no longer end the process by themselves.
-    fn listen() -> io::Result<Self> {
-        let terminate = signal(SignalKind::terminate())?;
-        Ok(Self { terminate, interrupt: signal(SignalKind::interrupt())? })
+fn warn_if_open(settings: &Settings, address: SocketAddr) {
+    if !address.ip().is_loopback() && settings.api_keys_file.ring().is_none() {
+        tracing::warn!(%address, "open to whoever reaches this address: no API keys are set");
     }
+}
 
-    async fn wait(mut self) {
-        tokio::select! {
-            _ = self.terminate.recv() => {}
-            _ = self.interrupt.recv() => {}
+/// Follows the file of keys; without one a signal to read it again is only taken note of.
+fn watch_keys(settings: &Settings, mut hangups: Hangups) {
+    match settings.api_keys_file.watched() {
+        Some((path, ring)) => {
+            tokio::spawn(KeyWatch::new(path.to_owned(), ring.clone()).run(hangups));
+        }
+        None => {
+            tokio::spawn(async move {
+                loop {
+                    hangups.next().await;
+                    tracing::info!("no file of API keys is set: nothing to read again");
+                }
+            });
         }
     }
+}
+
+/// Shows the metrics as long as the process lives, so that its end is seen, too.
+fn observe(listener: TcpListener, log: &Log) {
+    if let Ok(address) = listener.local_addr() {
+        tracing::info!("metrics on http://{address}/metrics");
+    }
+    let routes = metrics::routes(log.reporter());
+    let host = Host::new(routes, PATIENCE_WITH_OBSERVERS, MOST_OBSERVERS);
+    tokio::spawn(async move { host.take_until(listener, future::pending()).await });
 }

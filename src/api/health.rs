@@ -22,7 +22,9 @@ impl Readiness {
         self.draining.store(true, Ordering::Relaxed);
     }
 
-    fn is_draining(&self) -> bool {
+    /// Whether [`Self::drain`] was called.
+    #[must_use]
+    pub fn is_draining(&self) -> bool {
         self.draining.load(Ordering::Relaxed)
     }
 }

@@ -5,7 +5,6 @@ use std::sync::LazyLock;
 use serde_json::Value;
 use utoipa::openapi::header::HeaderBuilder;
 use utoipa::openapi::path::Operation;
-use utoipa::openapi::security::SecurityRequirement;
 use utoipa::openapi::tag::TagBuilder;
 use utoipa::openapi::{
     ComponentsBuilder, ContactBuilder, ContentBuilder, InfoBuilder, LicenseBuilder, OpenApi,
@@ -15,7 +14,7 @@ use utoipa::{PartialSchema, ToSchema};
 
 use super::error_code::ErrorCode;
 use super::problem::{ErrorItem, PROBLEM_JSON, Problem};
-use super::{examples, openapi_30};
+use super::{examples, openapi_30, openapi_guard};
 
 /// The tag of the published data.
 const CATALOG: &str = "Catalog";
@@ -29,6 +28,8 @@ In requests a unit may also be given by its UCUM code or its UN/ECE Recommendati
 * Unknown members, `null` and repeated members are refused, so that a typo never becomes a silent default. \
 Answers may gain members.
 * A failure is a problem document (RFC 9457) that lists every fault found, each with its place.
+* A service may ask for a key, sent as `Authorization: Bearer`, and may give each client a share of requests; then \
+every answer says in `RateLimit-Policy` and `RateLimit` what the share is and what is left of it.
 
 **Cautions.** The results are calculations for selecting a brake, not proofs. Confirm them by test on the \
 machine. Local codes and licensed practice decide. Brakes protect people: have a competent engineer review \
@@ -51,12 +52,12 @@ pub(super) fn base() -> OpenApi {
         .schema(Problem::name(), Problem::schema())
         .schema(ErrorItem::name(), ErrorItem::schema())
         .schema(ErrorCode::name(), ErrorCode::schema());
+    let components = openapi_guard::add_to(components);
     OpenApiBuilder::new()
         .info(info.build())
         .servers(Some([ServerBuilder::new().url("/").description(Some("This service")).build()]))
         .components(Some(components.build()))
-        // No key is needed; said explicitly, so that tools need not guess.
-        .security(Some([SecurityRequirement::default()]))
+        .security(Some(openapi_guard::optional_key()))
         .tags(Some([
             tag("Calculations", "What the service computes. Nothing is stored."),
             tag(
@@ -111,7 +112,7 @@ fn add_caching(document: &mut OpenApi) {
     }
 }
 
-fn operations(item: &mut PathItem) -> impl Iterator<Item = &mut Operation> {
+pub(super) fn operations(item: &mut PathItem) -> impl Iterator<Item = &mut Operation> {
     [&mut item.get, &mut item.post].into_iter().filter_map(Option::as_mut)
 }
 
@@ -119,6 +120,7 @@ static DOCUMENT: LazyLock<(String, String)> = LazyLock::new(|| {
     let mut document = super::described_routes().split_for_parts().1;
     add_caching(&mut document);
     add_failures(&mut document);
+    document.paths.paths.iter_mut().for_each(|(path, item)| openapi_guard::describe(path, item));
     // Made of strings, lists and maps only: serialising cannot fail.
     let mut value = serde_json::to_value(document).unwrap_or_default();
     examples::insert(&mut value);

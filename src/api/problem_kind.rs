@@ -52,6 +52,8 @@ problem_kinds! {
         "The body could not be read as JSON text; `line` and `column` say where reading stopped.";
     DuplicateMember = "duplicate_member", BAD_REQUEST, "A member is given twice",
         "An object in the body names the member at `pointer` more than once, so its value would be a guess.";
+    Unauthorized = "unauthorized", UNAUTHORIZED, "A key is needed",
+        "The request carries no key in force; send one as `Authorization: Bearer` followed by the key.";
     NotFound = "not_found", NOT_FOUND, "Nothing is here",
         "No endpoint or catalog row has this address; `/openapi.json` lists the endpoints.";
     MethodNotAllowed = "method_not_allowed", METHOD_NOT_ALLOWED, "The method is not allowed here",

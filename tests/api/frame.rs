@@ -9,12 +9,15 @@ use axum::body::{Body, Bytes, HttpBody};
 use axum::http::{HeaderValue, Request};
 use axum::routing::{Router, get, post};
 use brakewright::api::extract::{Answer, Json};
+use brakewright::api::guard::body::{at_most, endless};
 use brakewright::api::health::Readiness;
 use brakewright::api::layers::{LayerSettings, wrap};
 use brakewright::api::problem::Problem;
 use http_body::Frame;
+use http_body_util::BodyExt as _;
 use serde::{Deserialize, Serialize};
 use serde_json::json;
+use tower::ServiceExt as _;
 use utoipa::ToSchema;
 
 use crate::support::client::{TestApp, settings};
@@ -82,7 +85,9 @@ async fn a_right_request_passes_all_layers() {
     assert_eq!(answer.header("cache-control"), "no-store");
     assert_eq!(answer.header("x-content-type-options"), "nosniff");
     assert_eq!(answer.header("referrer-policy"), "no-referrer");
-    assert!(answer.header("content-security-policy").starts_with("default-src 'self'"));
+    let policy = answer.header("content-security-policy");
+    assert!(policy.starts_with("default-src 'self'"), "{policy}");
+    assert!(policy.ends_with("frame-ancestors 'none'"), "{policy}");
 }
 
 #[tokio::test]
@@ -155,6 +160,39 @@ async fn a_body_at_the_limit_is_read() {
 }
 
 #[tokio::test]
+async fn a_route_may_take_a_larger_body_than_the_others() {
+    let settings = LayerSettings { max_body_bytes: 4096, ..settings() };
+    let routes = Router::new()
+        .route("/larger", post(echo).layer(at_most(8192)))
+        .route("/endless", post(echo).layer(endless()));
+    let app = TestApp::of(wrap(routes, &settings));
+    let sent = |path: &str, bytes: usize| {
+        let request = Request::post(path).header("content-type", "application/json");
+        request.body(Body::from(" ".repeat(bytes) + r#"{"word":"yes"}"#)).unwrap()
+    };
+    app.send(sent("/larger", 8000), 200).await;
+    app.send(sent("/larger", 8192), 413).await;
+    app.send(sent("/endless", 1_000_000), 200).await;
+}
+
+/// Answers with the rest of a body, while that still arrives.
+async fn handed_back(mut body: Body) -> Body {
+    assert!(body.frame().await.is_some_and(|piece| piece.is_ok()));
+    body
+}
+
+#[tokio::test]
+async fn a_streamed_body_may_last_but_not_pause() {
+    let settings = LayerSettings { request_timeout: Duration::from_millis(50), ..settings() };
+    let app = wrap(Router::new().route("/stream", post(handed_back)), &settings);
+    let request = Request::post("/stream").body(Body::new(Pieces { left: 3, ends: false }));
+    let answer = app.oneshot(request.unwrap()).await.unwrap();
+    assert_eq!(answer.status(), 200);
+    let read = tokio::time::timeout(Duration::from_secs(5), answer.into_body().collect());
+    assert!(read.await.unwrap().is_err(), "the pause was not noticed");
+}
+
+#[tokio::test]
 async fn a_body_that_never_ends_runs_out_of_time() {
     let settings = LayerSettings { request_timeout: Duration::from_millis(50), ..settings() };
     let stuck = json_request(Body::new(Pieces { left: 1, ends: false }));
@@ -170,9 +208,14 @@ async fn a_handler_that_takes_too_long_runs_out_of_time() {
 
 #[tokio::test]
 async fn a_panic_is_a_problem_and_keeps_its_secret() {
-    let answer = app(&settings()).get("/broken", 500).await;
-    assert!(!String::from_utf8_lossy(&answer.body).contains("secret"));
-    assert!(!answer.header("x-request-id").is_empty());
+    // One place only: a panic must give it back.
+    let app = app(&LayerSettings { max_concurrency: 1, ..settings() });
+    for _ in 0..3 {
+        let answer = app.get("/broken", 500).await;
+        assert!(!String::from_utf8_lossy(&answer.body).contains("secret"));
+        assert!(!answer.header("x-request-id").is_empty());
+        app.send(json_request(Body::from(r#"{"word":"yes"}"#)), 200).await;
+    }
 }
 
 #[tokio::test]
@@ -206,6 +249,42 @@ async fn an_unusable_request_id_is_replaced() {
         let id = answer.header("x-request-id");
         assert_eq!(id.len(), 36, "{id}");
         assert_eq!(answer.json()["instance"], format!("urn:uuid:{id}"));
+    }
+}
+
+#[tokio::test]
+async fn a_trace_is_gone_on_with_and_an_invalid_one_is_replaced() {
+    let trace = "0af7651916cd43dd8448eb211c80319c"; // the example of W3C Trace Context, seen
+    let parent = "b7ad6b7169203331";
+    let answered = |given: Option<String>| async {
+        let mut request = Request::get("/health/live");
+        if let Some(given) = given {
+            request = request.header("traceparent", given);
+        }
+        let answer = app(&settings()).send(request.body(Body::empty()).unwrap(), 200).await;
+        let text = answer.header("traceparent").to_owned();
+        let parts: Vec<String> = text.split('-').map(str::to_owned).collect();
+        let lengths: Vec<usize> = parts.iter().map(String::len).collect();
+        assert_eq!(lengths, [2, 32, 16, 2], "{text}");
+        parts
+    };
+    for given in [format!("00-{trace}-{parent}-01"), format!("cc-{trace}-{parent}-01-more")] {
+        let parts = answered(Some(given)).await;
+        assert_eq!((&*parts[0], &*parts[1], &*parts[3]), ("00", trace, "01"));
+        assert_ne!(parts[2], parent);
+    }
+    let zeros = "0".repeat(32);
+    for given in [
+        None,
+        Some(format!("00-{trace}-{parent}-01-more")),
+        Some(format!("ff-{trace}-{parent}-01")),
+        Some(format!("00-{zeros}-{parent}-01")),
+        Some(format!("00-{trace}-{}-01", &zeros[..16])),
+        Some(format!("00-{}-{parent}-01", trace.to_uppercase())),
+        Some(format!("00-{trace}-{parent}")),
+    ] {
+        let parts = answered(given.clone()).await;
+        assert!(parts[1] != trace && parts[1] != zeros, "{given:?}");
     }
 }
 

@@ -136,7 +136,31 @@ fn the_base_is_complete() {
     assert_eq!(document["openapi"], "3.1.0");
     assert_eq!(document["info"]["version"], env!("CARGO_PKG_VERSION"));
     assert_eq!(document["servers"][0]["url"], "/");
-    assert_eq!(document["security"], json!([{}]));
+    assert_eq!(document["security"], json!([{}, {"api_key": []}]));
+    let scheme = &document["components"]["securitySchemes"]["api_key"];
+    assert_eq!((&scheme["type"], &scheme["scheme"]), (&json!("http"), &json!("bearer")));
+}
+
+#[test]
+fn every_calculation_says_that_it_may_be_turned_away_and_health_does_not() {
+    let document = document();
+    for (path, item) in document["paths"].as_object().unwrap() {
+        for operation in item.as_object().unwrap().values() {
+            let responses = &operation["responses"];
+            for status in ["401", "429", "503"] {
+                let Some(reference) = responses[status]["$ref"].as_str() else {
+                    assert!(!path.starts_with("/v1/"), "{path}: {status}");
+                    continue;
+                };
+                let answer = document.pointer(reference.strip_prefix('#').unwrap()).unwrap();
+                assert!(answer["content"]["application/problem+json"].is_object(), "{answer}");
+                assert!(answer["headers"].is_object(), "{answer}");
+            }
+            assert_eq!(operation["security"] == json!([{}]), !path.starts_with("/v1/"), "{path}");
+        }
+    }
+    assert!(document["paths"]["/health/live"]["get"]["responses"].get("503").is_none());
+    assert!(document["paths"]["/health/ready"]["get"]["responses"]["503"].is_object());
 }
 
 #[tokio::test]

@@ -85,3 +85,21 @@ fn the_image_says_the_version_of_the_program() {
     let label = format!("org.opencontainers.image.version=\"{}\"", env!("CARGO_PKG_VERSION"));
     assert!(file("Dockerfile").contains(&label));
 }
+
+#[test]
+fn the_deployments_use_settings_that_exist_and_the_image_of_this_version() {
+    let program = CommandLine::command();
+    let known: BTreeSet<&str> =
+        program.get_arguments().filter_map(|argument| argument.get_env()?.to_str()).collect();
+    for name in ["compose.yaml", "kubernetes/deployment.yaml"] {
+        let text = file(&format!("examples/deploy/{name}"));
+        assert!(text.contains(&format!("image: brakewright:{}\n", env!("CARGO_PKG_VERSION"))));
+        let word = |character: char| !(character.is_ascii_uppercase() || character == '_');
+        let used: Vec<&str> =
+            text.split(word).filter(|word| word.starts_with("BRAKEWRIGHT_")).collect();
+        assert!(used.len() >= 3, "{name}: {used:?}");
+        for variable in used {
+            assert!(known.contains(variable), "{name}: {variable}");
+        }
+    }
+}

@@ -1,9 +1,5 @@
 //! One request through the router for each endpoint, each beside its floor.
 
-use std::fmt::Debug;
-use std::hint::black_box;
-use std::time::Duration;
-
 use axum::body::{Body, Bytes};
 use axum::http::header::CONTENT_TYPE;
 use axum::http::{Request, StatusCode};
@@ -23,6 +19,8 @@ use criterion::Criterion;
 use http_body_util::BodyExt as _;
 use serde::de::DeserializeOwned;
 use serde_json::Value;
+use std::fmt::Debug;
+use std::hint::black_box;
 use tokio::runtime::Runtime;
 use tower::ServiceExt as _;
 use utoipa::ToSchema;
@@ -46,12 +44,7 @@ pub(crate) fn all(criterion: &mut Criterion) {
 
 /// Layers with limits that nothing here meets.
 fn settings() -> LayerSettings {
-    LayerSettings {
-        max_body_bytes: 1024 * 1024,
-        request_timeout: Duration::from_secs(30),
-        max_concurrency: 64,
-        allowed_origins: Vec::new(),
-    }
+    LayerSettings { max_concurrency: 64, ..LayerSettings::default() }
 }
 
 /// The service and what runs it.

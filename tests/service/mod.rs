@@ -1,4 +1,7 @@
 //! The program as a process.
 
+mod drain;
+mod faults;
 mod heavy;
+mod keys;
 mod process;

@@ -25,26 +25,56 @@ fn run(arguments: &[&str], settings: &[(&str, &str)]) -> Output {
 pub(super) struct Service {
     child: Child,
     pub(super) address: String,
+    observed: String,
 }
 
 impl Service {
+    /// On a free port of loopback.
     pub(super) fn start(settings: &[(&str, &str)]) -> Self {
+        Self::start_as_set(&[&[("BRAKEWRIGHT_LISTEN", "127.0.0.1:0")], settings].concat())
+    }
+
+    /// With metrics on another free port.
+    pub(super) fn start_observed(settings: &[(&str, &str)]) -> Self {
+        let free = std::net::TcpListener::bind("127.0.0.1:0").unwrap().local_addr().unwrap();
+        let observed = free.to_string();
+        let observe = [("BRAKEWRIGHT_METRICS_LISTEN", observed.as_str())];
+        let mut service = Self::start(&[&observe, settings].concat());
+        service.observed = observed;
+        service
+    }
+
+    pub(super) fn start_as_set(settings: &[(&str, &str)]) -> Self {
         let mut command = program(&[], settings);
-        command.env("BRAKEWRIGHT_LISTEN", "127.0.0.1:0");
         let mut child = command.stdout(Stdio::piped()).stderr(Stdio::piped()).spawn().unwrap();
         let mut line = String::new();
         BufReader::new(child.stdout.take().unwrap()).read_line(&mut line).unwrap();
         let address = line.trim_end().strip_prefix("listening on http://").unwrap().to_owned();
-        Self { child, address }
+        Self { child, address, observed: String::new() }
     }
 
-    fn signal(&self, name: &str) {
+    /// The value of a metric.
+    pub(super) fn metric(&self, series: &str) -> f64 {
+        let request = "GET /metrics HTTP/1.1\r\nHost: x\r\nConnection: close\r\n\r\n";
+        let text = exchange(&self.observed, request);
+        let line = text.lines().find_map(|line| line.strip_prefix(series)?.strip_prefix(' '));
+        line.unwrap_or_else(|| panic!("no {series} in\n{text}")).parse().unwrap()
+    }
+
+    /// The memory of the process that is in use.
+    pub(super) fn memory_kib(&self) -> u64 {
+        let status = std::fs::read_to_string(format!("/proc/{}/status", self.child.id())).unwrap();
+        let line = status.lines().find_map(|line| line.strip_prefix("VmRSS:")).unwrap();
+        line.trim().strip_suffix(" kB").unwrap().parse().unwrap()
+    }
+
+    pub(super) fn signal(&self, name: &str) {
         let id = self.child.id().to_string();
         assert!(Command::new("kill").args(["-s", name, &id]).status().unwrap().success());
     }
 
     /// Waits for the end; gives the exit code and the log.
-    fn end(mut self) -> (Option<i32>, String) {
+    pub(super) fn end(mut self) -> (Option<i32>, String) {
         let deadline = Instant::now() + Duration::from_secs(10);
         while self.child.try_wait().unwrap().is_none() {
             assert!(Instant::now() < deadline, "the program does not stop");
@@ -64,7 +94,7 @@ impl Drop for Service {
     }
 }
 
-fn exchange(address: &str, request: &str) -> String {
+pub(super) fn exchange(address: &str, request: &str) -> String {
     let mut stream = TcpStream::connect(address).unwrap();
     stream.set_read_timeout(Some(Duration::from_secs(5))).unwrap();
     stream.write_all(request.as_bytes()).unwrap();
@@ -136,9 +166,11 @@ fn a_request_is_one_line_of_the_log() {
     let trace = "0af7651916cd43dd8448eb211c80319c"; // the example of W3C Trace Context, seen
     let request = format!(
         "GET /problems/internal?secret=1 HTTP/1.1\r\nHost: x\r\nx-request-id: r-1\r\n\
-         traceparent: 00-{trace}-b7ad6b7169203331-01\r\nConnection: close\r\n\r\n"
+         traceparent: 00-{trace}-b7ad6b7169203331-01\r\nAuthorization: Bearer my-secret\r\n\
+         Connection: close\r\n\r\n"
     );
-    assert!(exchange(&service.address, &request).starts_with("HTTP/1.1 200 "));
+    let answer = exchange(&service.address, &request);
+    assert!(answer.starts_with("HTTP/1.1 200 "));
     service.signal("TERM");
     let log = service.end().1;
     let lines: Vec<serde_json::Value> =
@@ -150,6 +182,8 @@ fn a_request_is_one_line_of_the_log() {
     assert_eq!(line["status"], 200);
     assert_eq!(line["request_id"], "r-1");
     assert_eq!(line["trace_id"], trace);
+    let span = line["span_id"].as_str().unwrap();
+    assert!(answer.contains(&format!("traceparent: 00-{trace}-{span}-01\r\n")), "{answer}");
     assert!(line["duration_ms"].is_number());
     assert!(!log.contains("secret"), "{log}");
 }
@@ -167,13 +201,12 @@ fn a_wrong_setting_stops_the_start_with_a_sentence() {
         ("BRAKEWRIGHT_REQUEST_TIMEOUT", "0s", "must be a time above 0"),
         ("BRAKEWRIGHT_MAX_CONCURRENCY", "-1", "invalid value"),
         ("BRAKEWRIGHT_DRAIN_TIMEOUT", "20m", "must be a time above 0"),
-        (
-            "BRAKEWRIGHT_API_KEYS_FILE",
-            "keys",
-            "BRAKEWRIGHT_API_KEYS_FILE is not a setting of this version",
-        ),
-        ("BRAKEWRIGHT_RATE_LIMIT", "5", "is not a setting of this version"),
-        ("BRAKEWRIGHT_METRICS_LISTEN", "", "is not a setting of this version"),
+        ("BRAKEWRIGHT_API_KEYS_FILE", "/nowhere/keys", "must be a file of API keys: it cannot be"),
+        ("BRAKEWRIGHT_API_KEYS_FILE", "/dev/null", "it holds no key"),
+        ("BRAKEWRIGHT_API_KEYS_FILE", "/dev/zero", "it is longer than 1048576 bytes"),
+        ("BRAKEWRIGHT_RATE_LIMIT", "5/s", "invalid digit"),
+        ("BRAKEWRIGHT_METRICS_LISTEN", "9090", "must be an IP address and a port"),
+        ("BRAKEWRIGHT_APIKEYS", "keys", "BRAKEWRIGHT_APIKEYS is not a setting of this version"),
     ];
     for (name, value, sentence) in cases {
         let output = run(&[], &[(name, value)]);
@@ -183,6 +216,32 @@ fn a_wrong_setting_stops_the_start_with_a_sentence() {
         assert!(said.contains(name), "{name}={value}: {said}");
         assert!(output.stdout.is_empty());
     }
+}
+
+#[test]
+fn all_wrong_settings_are_told_at_once() {
+    let wrong = [
+        ("BRAKEWRIGHT_LISTEN", "everywhere"),
+        ("BRAKEWRIGHT_RATE_LIMIT", "many"),
+        ("BRAKEWRIGHT_LOG_FORMAT", "xml"),
+        ("BRAKEWRIGHT_KEYS", "secret"),
+    ];
+    for arguments in [&["--drain-timeout", "0s"][..], &["--drain-timeout=0s", "serve"]] {
+        let output = run(arguments, &wrong);
+        let said = String::from_utf8_lossy(&output.stderr);
+        assert_eq!(output.status.code(), Some(2), "{said}");
+        for (name, _) in wrong {
+            assert_eq!(said.matches(name).count(), 1, "{name}: {said}");
+        }
+        assert!(said.contains("--drain-timeout") && !said.contains("DRAIN_TIMEOUT"), "{said}");
+        assert_eq!(said.matches("error: ").count(), 5, "{said}");
+    }
+}
+
+#[test]
+fn help_is_given_whatever_is_wrong() {
+    let output = run(&["--help"], &[("BRAKEWRIGHT_KEYS", "x"), ("BRAKEWRIGHT_RATE_LIMIT", "x")]);
+    assert_eq!(output.status.code(), Some(0));
 }
 
 #[test]
@@ -201,6 +260,10 @@ fn an_address_in_use_stops_the_start() {
     assert_eq!(output.status.code(), Some(1));
     let said = String::from_utf8_lossy(&output.stderr);
     assert!(said.contains(&format!("cannot serve on {address}")), "{said}");
+    let both = [("BRAKEWRIGHT_LISTEN", &*address), ("BRAKEWRIGHT_METRICS_LISTEN", &*address)];
+    let said = String::from_utf8_lossy(&run(&[], &both).stderr).into_owned();
+    assert!(said.contains(&format!("cannot serve on {address}")), "{said}");
+    assert!(said.contains(&format!("cannot serve metrics on {address}")), "{said}");
 }
 
 #[test]
@@ -216,6 +279,9 @@ fn help_lists_every_setting_with_its_default() {
         ("MAX_BODY_BYTES", "1048576"),
         ("REQUEST_TIMEOUT", "30s"),
         ("MAX_CONCURRENCY", "1024"),
+        ("RATE_LIMIT", "0"),
+        ("API_KEYS_FILE", ""),
+        ("METRICS_LISTEN", ""),
         ("DRAIN_TIMEOUT", "20s"),
     ] {
         assert!(text.contains(&format!("BRAKEWRIGHT_{name}")), "{name}: {text}");

@@ -1,7 +1,5 @@
 //! A front-door client without sockets: a request goes into the router, its answer comes out.
 
-use std::time::Duration;
-
 use axum::Router;
 use axum::body::{Body, Bytes};
 use axum::http::{HeaderMap, Request, StatusCode};
@@ -28,12 +26,7 @@ pub(crate) struct Answer {
 
 /// Generous limits that no test meets by accident.
 pub(crate) fn settings() -> LayerSettings {
-    LayerSettings {
-        max_body_bytes: 1024 * 1024,
-        request_timeout: Duration::from_secs(30),
-        max_concurrency: 64,
-        allowed_origins: Vec::new(),
-    }
+    LayerSettings { max_concurrency: 64, ..LayerSettings::default() }
 }
 
 impl TestApp {
