@@ -67,6 +67,47 @@ pub(crate) fn duty_cycle() -> Value {
     })
 }
 
+/// The same car, pressed by its pedal, with a stop and a hold and every limit that its lining and pedal can have.
+pub(crate) fn spec_check() -> Value {
+    let pedal = |force: f64| {
+        json!({
+            "kind": "hydraulic", "piston_diameter": quantity(54.0, "mm"), "efficiency": 0.97,
+            "max_line_pressure": quantity(100.0, "bar"), "running_clearance": quantity(0.15, "mm"),
+            "master_cylinder": {"bore": quantity(22.2, "mm"), "lever_ratio": 4.5, "efficiency": 0.9,
+                "operator_force": quantity(force, "N"), "max_operator_force": quantity(500.0, "N"),
+                "max_stroke": quantity(150.0, "mm")},
+        })
+    };
+    let fitted = |axle: &str| {
+        let mut brake = brake(&pedal(350.0));
+        brake["pad"]["wear_allowance"] = quantity(9.0, "mm");
+        brake["lining"] = json!({
+            "friction": {"low": 0.33, "nominal": 0.38, "high": 0.44}, "max_pressure": quantity(6.0, "MPa"),
+            "max_rubbing_speed": quantity(30.0, "m/s"), "max_pressure_velocity": quantity(90.0, "MPa.m/s"),
+            "max_power_flux": quantity(30.0, "W/mm2"), "max_energy_flux": quantity(60.0, "J/mm2"),
+            "max_temperature_continuous": quantity(350.0, "degC"), "max_temperature_peak": quantity(550.0, "degC"),
+            "specific_wear": quantity(120.0, "mm3/MJ"),
+        });
+        json!({"brake": brake, "axle": axle, "count": 2, "control": "pedal"})
+    };
+    json!({
+        "ref": "bench, invented", "machine": stop(0.0)["machine"],
+        "fitted": [fitted("front"), fitted("rear")],
+        "duties": [
+            {"kind": "stop", "name": "emergency stop", "initial_speed": quantity(80.0, "km/h"),
+                "response": {"reaction_time": quantity(0.7, "s"), "build_up_time": quantity(0.2, "s")},
+                "require": {"max_distance": quantity(60.0, "m"), "max_time": quantity(6.0, "s"),
+                    "min_mean_deceleration": quantity(4.0, "m/s2"),
+                    "min_mean_fully_developed_deceleration": quantity(4.5, "m/s2"),
+                    "min_peak_deceleration": quantity(5.0, "m/s2"), "max_deceleration": quantity(12.0, "m/s2"),
+                    "min_braking_ratio": 0.5, "min_pad_life_stops": 1000.0, "no_wheel_lock": true,
+                    "front_locks_first": true, "no_rear_wheel_lift": true}},
+            {"kind": "hold", "name": "on the ramp", "grade": quantity(20.0, "%"),
+                "require": {"min_holding_factor": 1.5}},
+        ],
+    })
+}
+
 /// A body with an unknown member, a unit of another dimension and a missing member.
 pub(crate) fn faulty_pad_capacity() -> Value {
     let mut body = pad_capacity();

@@ -13,6 +13,7 @@ use brakewright::api::router;
 use brakewright::api::v1::actuation_force::ActuationForceRequest;
 use brakewright::api::v1::duty_cycle::DutyCycleRequest;
 use brakewright::api::v1::pad_capacity::PadCapacityRequest;
+use brakewright::api::v1::spec_check::SpecCheckRequest;
 use brakewright::api::v1::stop_energy::StopEnergyRequest;
 use brakewright::api::v1::stopping::StoppingRequest;
 use criterion::Criterion;
@@ -38,6 +39,7 @@ pub(crate) fn all(criterion: &mut Criterion) {
     );
     bench.compare::<StoppingRequest>(criterion, "stopping", &request::stop(0.0));
     bench.compare::<StopEnergyRequest>(criterion, "stop-energy", &request::stop(0.0));
+    bench.compare::<SpecCheckRequest>(criterion, "spec-check", &request::spec_check());
     bench.compare::<DutyCycleRequest>(criterion, "duty-cycle", &request::duty_cycle());
     parts(criterion);
 }
@@ -100,6 +102,27 @@ where
 }
 
 fn parts(criterion: &mut Criterion) {
+    let whole = request::spec_check().to_string();
+    criterion.bench_function("decode/spec-check", |bench| {
+        bench.iter(|| decode::<SpecCheckRequest>(black_box(whole.as_bytes())).unwrap());
+    });
+    let read = decode::<SpecCheckRequest>(whole.as_bytes()).unwrap();
+    criterion.bench_function("judged/spec-check", |bench| {
+        bench.iter(|| black_box(&read).judged().unwrap());
+    });
+    let (input, outcome, defaults) = read.judged().unwrap();
+    criterion.bench_function("evaluate/spec-check", |bench| {
+        bench.iter(|| brakewright::calc::case::spec_check::evaluate(black_box(&input)).unwrap());
+    });
+    criterion.bench_function("answer/spec-check", |bench| {
+        bench.iter(|| {
+            let answer = read.answer(whole.as_bytes(), &input, &outcome, defaults.clone());
+            black_box(serde_json::to_vec(&answer).unwrap())
+        });
+    });
+    criterion.bench_function("digest/spec-check", |bench| {
+        bench.iter(|| input_digest(black_box(whole.as_bytes())));
+    });
     let body = request::stop(0.0).to_string();
     criterion.bench_function("decode/stop-energy", |bench| {
         bench.iter(|| decode::<StopEnergyRequest>(black_box(body.as_bytes())).unwrap());

@@ -21,6 +21,7 @@ use super::block::stop::stood_in;
 use crate::api::extract::{Answer, Json};
 use crate::api::heavy::off_thread;
 use crate::api::measure::{ReportUnits, Temperature};
+use crate::api::metrics::{Verdict, count_verdict};
 use crate::api::parse::{At, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, Recorded};
@@ -83,6 +84,7 @@ impl SpecCheckRequest {
 
     fn respond(&self, body: &[u8]) -> Result<Reply<Body>, Problem> {
         let (input, outcome, defaults) = self.judged()?;
+        count_verdict(counted(outcome.verdict));
         Ok(Answer(self.answer(body, &input, &outcome, defaults)).into_response())
     }
 
@@ -166,5 +168,14 @@ impl SpecCheckRequest {
                 waivers: waivers.map(|(waiver, effect)| waiver.recorded(*effect)).collect(),
             },
         }
+    }
+}
+
+/// The verdict as it is counted.
+const fn counted(verdict: spec_check::Verdict) -> Verdict {
+    match verdict {
+        spec_check::Verdict::Pass => Verdict::Pass,
+        spec_check::Verdict::Fail => Verdict::Fail,
+        spec_check::Verdict::Incomplete => Verdict::Incomplete,
     }
 }
