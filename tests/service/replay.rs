@@ -135,3 +135,20 @@ async fn a_service_that_is_not_there_and_cases_that_are_none_are_told() {
     });
     assert!(cases(&broken).unwrap_err().to_string().contains("has no response"));
 }
+
+#[tokio::test]
+async fn a_service_that_asks_for_a_key_gets_it() {
+    // SHA-256 of `abc`: FIPS 180-4, seen in its published test vectors.
+    const ABC: &str = "ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad";
+    let case = seeded("key", |_| ());
+    let keys = case.join("keys");
+    fs::write(&keys, ABC).unwrap();
+    let service = Service::start(&[("BRAKEWRIGHT_API_KEYS_FILE", keys.to_str().unwrap())]);
+    let base = format!("http://{}", service.address);
+    let stopping = case.join("stopping");
+    let keyed = Deployment::new(&base, Some("abc".to_owned()), 0.0).unwrap();
+    assert_eq!(found(&keyed, &stopping).await, Found::Same);
+    let rows = replayed(&deployment(&service, 0.0), &stopping).await;
+    assert_eq!(rows[0].status, Some(401));
+    assert!(!is_as_expected(&rows));
+}

@@ -69,6 +69,7 @@ async fn checks_come_duty_by_duty_with_the_names_that_were_given() {
         assert!(detail.len() > 20, "{detail}");
     }
     assert_eq!(duties[0]["duty_name"], "emergency stop");
+    assert!(!answer.to_string().contains(":-0.0"), "nobody wants to read of a zero below zero");
 }
 
 /// Contract: which checks apply to a duty without any limit of its own.
