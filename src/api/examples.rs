@@ -3,7 +3,7 @@
 use serde_json::{Map, Value, json};
 
 /// The example of each calculation: its path, the name of the file, and the file.
-const EXAMPLES: [(&str, &str, &str); 5] = [
+const EXAMPLES: [(&str, &str, &str); 6] = [
     (
         "/v1/pad-capacity",
         "hoist_caliper_at_its_limit",
@@ -28,6 +28,11 @@ const EXAMPLES: [(&str, &str, &str); 5] = [
         "/v1/duty-cycle",
         "tractor_round_trip",
         include_str!("../../examples/requests/duty-cycle/tractor_round_trip.json"),
+    ),
+    (
+        "/v1/spec-check",
+        "ore_conveyor_holding_brake",
+        include_str!("../../examples/requests/spec-check/ore_conveyor_holding_brake.json"),
     ),
 ];
 

@@ -92,7 +92,7 @@ fn every_example_has_the_same_members_and_says_that_its_data_is_invented() {
 #[test]
 fn every_calculation_has_examples_of_success_and_of_faults_in_both_unit_systems() {
     let examples = examples();
-    for endpoint in ["pad-capacity", "actuation-force", "stopping", "stop-energy"] {
+    for endpoint in ["pad-capacity", "actuation-force", "stopping", "stop-energy", "spec-check"] {
         let here = || examples.iter().filter(|example| example.endpoint == endpoint);
         let us = |example: &&Example| example.content["request"]["report_units"] == "us";
         assert!(here().any(|example| us(&example)), "{endpoint}: no example in us units");
@@ -105,6 +105,33 @@ fn every_calculation_has_examples_of_success_and_of_faults_in_both_unit_systems(
             warnings.into_iter().flatten().any(|warning| warning["severity"] == "exceeded")
         };
         assert!(here().any(exceeded), "{endpoint}: no example of a brake that is too weak");
+    }
+}
+
+/// What a configurator meets: each verdict, each kind of machine and duty, a waiver, and linings judged hot.
+#[test]
+fn the_specification_checks_show_every_verdict_machine_and_duty() {
+    let examples = examples();
+    let here = || examples.iter().filter(|example| example.endpoint == "spec-check");
+    let requests = || here().map(|example| &example.content["request"]);
+    let answers = || here().map(|example| &example.content["response"]);
+    for verdict in ["pass", "fail", "incomplete"] {
+        assert!(answers().any(|answer| answer["results"]["verdict"] == verdict), "{verdict}");
+    }
+    for kind in ["vehicle", "hoist", "conveyor", "shaft"] {
+        assert!(requests().any(|request| request["machine"]["kind"] == kind), "{kind}");
+    }
+    let duties = || requests().flat_map(|request| request["duties"].as_array().unwrap());
+    for kind in ["stop", "repeated_stops", "descent", "hold", "rule", "procedure"] {
+        assert!(duties().any(|duty| duty["kind"] == kind), "{kind}");
+    }
+    let checks = || answers().filter_map(|answer| answer["results"]["checks"].as_array()).flatten();
+    for status in ["met", "near_limit", "not_met", "not_assessed", "waived"] {
+        assert!(checks().any(|check| check["status"] == status), "{status}");
+    }
+    assert!(checks().any(|check| check["hot"] == true));
+    for request in requests() {
+        assert!(request["ref"].as_str().unwrap().starts_with("invented: "), "{request}");
     }
 }
 

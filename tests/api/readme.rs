@@ -5,6 +5,7 @@ use std::fs;
 use std::path::Path;
 
 use brakewright::api::openapi::openapi_json;
+use brakewright::calc::finding::CheckCode;
 use brakewright::settings::CommandLine;
 use clap::CommandFactory as _;
 use serde_json::Value;
@@ -59,6 +60,22 @@ fn the_readme_lists_the_endpoints_of_the_description() {
         .map(|name| name.trim_matches('`').to_owned())
         .collect();
     assert_eq!(listed, described);
+}
+
+#[test]
+fn the_readme_lists_every_check_once() {
+    let readme = file("README.md");
+    let section = between(&readme, "## Checking a choice\n", "\n## ");
+    let rows = section.lines().filter_map(|line| line.strip_prefix("| `"));
+    let listed: Vec<&str> = rows
+        .flat_map(|row| row.split_once(" |").unwrap().0.split(", "))
+        .map(|code| code.trim_matches('`'))
+        .collect();
+    let mut known: Vec<&str> = CheckCode::ALL.iter().map(|code| code.as_str()).collect();
+    let mut found = listed;
+    known.sort_unstable();
+    found.sort_unstable();
+    assert_eq!(found, known);
 }
 
 #[test]

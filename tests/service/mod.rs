@@ -5,3 +5,4 @@ mod faults;
 mod heavy;
 mod keys;
 mod process;
+mod replay;

@@ -15,16 +15,18 @@ pub(crate) const PAD_CAPACITY: &str = "/v1/pad-capacity";
 pub(crate) const ACTUATION_FORCE: &str = "/v1/actuation-force";
 pub(crate) const STOPPING: &str = "/v1/stopping";
 pub(crate) const STOP_ENERGY: &str = "/v1/stop-energy";
+pub(crate) const SPEC_CHECK: &str = "/v1/spec-check";
 
 /// Standard acceleration of free fall, m/s², exact by convention.
 pub(crate) const G: f64 = 9.806_65;
 
 /// The endpoints with the schemas of their answers.
-pub(crate) const ENDPOINTS: [(&str, &str); 4] = [
+pub(crate) const ENDPOINTS: [(&str, &str); 5] = [
     (PAD_CAPACITY, "PadCapacityAnswer"),
     (ACTUATION_FORCE, "ActuationForceAnswer"),
     (STOPPING, "StoppingAnswer"),
     (STOP_ENERGY, "StopEnergyAnswer"),
+    (SPEC_CHECK, "SpecCheckAnswer"),
 ];
 
 /// A quantity on the wire.

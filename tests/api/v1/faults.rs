@@ -3,17 +3,19 @@
 use serde_json::{Value, json};
 
 use super::common::{
-    ACTUATION_FORCE, PAD_CAPACITY, STOP_ENERGY, STOPPING, actuation_force, assert_faults, brake,
-    pad_capacity, problem, q, shaft, stopping, with, without,
+    ACTUATION_FORCE, PAD_CAPACITY, SPEC_CHECK, STOP_ENERGY, STOPPING, actuation_force,
+    assert_faults, brake, pad_capacity, problem, q, shaft, stopping, with, without,
 };
+use super::spec_check_requests::one_stop;
 
 /// A body of each endpoint with the place of one quantity in it.
-fn bodies() -> [(&'static str, Value, &'static str); 4] {
+fn bodies() -> [(&'static str, Value, &'static str); 5] {
     [
         (PAD_CAPACITY, pad_capacity(), "/pad/outer_radius"),
         (ACTUATION_FORCE, actuation_force(), "/brake/actuation/piston_diameter"),
         (STOPPING, stopping(), "/machine/rolling_radius"),
         (STOP_ENERGY, stopping(), "/machine/rolling_radius"),
+        (SPEC_CHECK, one_stop(), "/machine/rolling_radius"),
     ]
 }
 

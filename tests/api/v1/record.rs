@@ -4,16 +4,18 @@ use serde_json::{Value, json};
 use sha2::{Digest as _, Sha256};
 
 use super::common::{
-    ACTUATION_FORCE, ENDPOINTS, PAD_CAPACITY, STOP_ENERGY, STOPPING, actuation_force, answer,
-    assert_conforms, assert_is, bytes, case, of, pad_capacity, q, stopping, with,
+    ACTUATION_FORCE, ENDPOINTS, PAD_CAPACITY, SPEC_CHECK, STOP_ENERGY, STOPPING, actuation_force,
+    answer, assert_conforms, assert_is, bytes, case, of, pad_capacity, q, stopping, with,
 };
+use super::spec_check_requests::one_stop;
 
-fn bodies() -> [(&'static str, Value); 4] {
+fn bodies() -> [(&'static str, Value); 5] {
     [
         (PAD_CAPACITY, pad_capacity()),
         (ACTUATION_FORCE, actuation_force()),
         (STOPPING, stopping()),
         (STOP_ENERGY, stopping()),
+        (SPEC_CHECK, one_stop()),
     ]
 }
 
@@ -120,7 +122,7 @@ async fn every_answer_carries_the_cautions_that_always_travel() {
             assert!(codes.contains(&code), "{path}: {codes:?}");
         }
         assert!(cautions.iter().all(|caution| caution["text"].as_str().unwrap().len() > 40));
-        assert_eq!(codes.contains(&"hot_surfaces"), path == STOP_ENERGY);
+        assert_eq!(codes.contains(&"hot_surfaces"), [STOP_ENERGY, SPEC_CHECK].contains(&path));
     }
 }
 
@@ -195,6 +197,6 @@ async fn answers_use_the_first_unit_of_each_system() {
 }
 
 #[test]
-fn the_four_calculations_are_covered() {
+fn these_calculations_are_covered() {
     assert_eq!(bodies().map(|(path, _)| path), ENDPOINTS.map(|(path, _)| path));
 }

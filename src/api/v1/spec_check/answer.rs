@@ -9,6 +9,7 @@ use crate::api::measure::{
     Acceleration, Angle, AngularAcceleration, AnyAmount, Energy, Finite, Force, Grade, Length,
     Power, ReportUnits, RotationalSpeed, Speed, Temperature, Time, Torque,
 };
+use crate::api::parse::RecordedDefault;
 use crate::api::record::{CautionText, CheckName, FrictionCase, Record, Recorded, Warning};
 use crate::calc::case::spec_check::{
     self, Check as Judged, DescentNumbers, DutyNumbers, HoldNumbers, Outcome, Status, StopNumbers,
@@ -31,12 +32,32 @@ pub struct SpecCheckAnswer {
 /// How the answer was found, with what was waived.
 #[derive(Debug, Clone, PartialEq, Serialize, ToSchema)]
 pub struct SpecCheckRecord {
-    /// The record.
-    #[serde(flatten)]
-    pub record: Record,
+    /// Version of the service; numbers change only with it.
+    pub service_version: &'static str,
+    /// The caller's own reference.
+    #[serde(rename = "ref", skip_serializing_if = "Option::is_none")]
+    #[schema(nullable = false)]
+    pub reference: Option<String>,
+    /// SHA-256 over the RFC 8785 canonical form of the request without `ref`.
+    #[schema(example = "sha256:e3b0c44298fc1c149afbf4c8996fb92427ae41e4649b934ca495991b7852b855")]
+    pub input_digest: String,
+    /// The methods used; `GET /v1/methods` explains them.
+    pub methods: Vec<&'static str>,
+    /// Every value that was not in the request.
+    pub defaults: Vec<RecordedDefault>,
     /// The waivers of the request.
     #[serde(skip_serializing_if = "Vec::is_empty")]
     pub waivers: Vec<RecordedWaiver>,
+}
+
+impl SpecCheckRecord {
+    /// A record with the waivers of its request. Its members are told one by one, because a schema that is put together
+    /// of two cannot be closed by those who generate clients from it.
+    #[must_use]
+    pub fn new(record: Record, waivers: Vec<RecordedWaiver>) -> Self {
+        let Record { service_version, reference, input_digest, methods, defaults } = record;
+        Self { service_version, reference, input_digest, methods, defaults, waivers }
+    }
 }
 
 /// Every check, and what they come to.

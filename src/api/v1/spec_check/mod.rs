@@ -163,10 +163,10 @@ impl SpecCheckRequest {
             results: report.results(outcome),
             warnings: recorded.warnings(&outcome.remarks),
             cautions: record::cautions(&outcome.remarks),
-            record: SpecCheckRecord {
-                record: recorded.record(outcome.remarks.methods(), defaults),
-                waivers: waivers.map(|(waiver, effect)| waiver.recorded(*effect)).collect(),
-            },
+            record: SpecCheckRecord::new(
+                recorded.record(outcome.remarks.methods(), defaults),
+                waivers.map(|(waiver, effect)| waiver.recorded(*effect)).collect(),
+            ),
         }
     }
 }

@@ -8,7 +8,7 @@ use crate::calc::brake::Brake;
 use crate::calc::case::duty_cycle::{self, CaseOutcome, Event, FailureReason};
 use crate::calc::case::stopping::{brake_forces, full_torques, total};
 use crate::calc::fault::Faults;
-use crate::calc::finding::{CheckCode, Subject};
+use crate::calc::finding::{CheckCode, Finding, Notice, Remarks, Severity, Subject};
 use crate::calc::fitted::{Fitted, eased};
 use crate::calc::friction::FrictionCase;
 use crate::calc::motion::Forces;
@@ -58,6 +58,24 @@ impl Followed<'_> {
             self.on_heat(&mut checks, (acting, brake));
         }
         checks
+    }
+
+    /// Says where the brakes do not give the deceleration that the cycle is driven with.
+    pub(super) fn note(&self, remarks: &mut Remarks) {
+        let falls_short = |case: &CaseOutcome, event: &Event| {
+            let Event::Stop { demand, .. } = event else { return false };
+            let Some((forces, speed)) = self.weakest(case, event) else { return false };
+            demand.deceleration.is_some_and(|asked| forces.fraction_for(asked, speed).is_none())
+        };
+        for case in self.cases() {
+            if self.events.iter().any(|event| falls_short(case, event)) {
+                let detail = "the deceleration of the test cycle is more than brakes and tires give: full torque was taken, and the cycle is not the published one";
+                let code = Notice::DecelerationNotReached;
+                let subject = self.bench.at_duty("id");
+                let finding = Finding::notice(code, Severity::Exceeded, subject, detail);
+                remarks.find_once(finding.in_case(case.friction_case));
+            }
+        }
     }
 
     fn of_cases(

@@ -97,7 +97,8 @@ impl Held<'_> {
         })
     }
 
-    fn on_brakes(&self, checks: &mut Vec<Check>) {
+    /// The limits of what presses each brake.
+    pub(super) fn on_brakes(&self, checks: &mut Vec<Check>) {
         let pressed = self.bench.acting.pressed.iter();
         let pressings: Vec<_> = pressed
             .map(|pressed: &Option<Pressed>| pressed.map(|pressed| pressed.pressing))

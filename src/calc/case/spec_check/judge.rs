@@ -54,8 +54,9 @@ pub(super) fn judge(
         hot,
         ambient: input.ambient_temperature,
     };
-    let mut judgement =
-        Judgement { checks: Vec::new(), numbers: DutyNumbers::default(), remarks: Remarks::new() };
+    let fitted = acting.indices.iter().map(|&index| FittedNumbers::of(index)).collect();
+    let numbers = DutyNumbers { fitted, ..DutyNumbers::default() };
+    let mut judgement = Judgement { checks: Vec::new(), numbers, remarks: Remarks::new() };
     judgement.checks = judgement.of(&bench, duty)?;
     Ok(judgement)
 }
@@ -93,6 +94,7 @@ impl Judgement {
                 let outcome = follow(bench, events, start)?;
                 self.remarks.join(&outcome.remarks, |finding| Some(finding.clone()));
                 let followed = Followed { bench, events, outcome: &outcome };
+                followed.note(&mut self.remarks);
                 self.numbers.fitted = followed.fitted();
                 Ok(followed.checks())
             }

@@ -61,7 +61,7 @@ impl Ruled<'_> {
                     remarks.method(&HOLDING);
                     self.hold(&test, numbers)
                 }
-                Resolution::ForceOverWeight(least) => vec![self.force_over_weight(least)],
+                Resolution::ForceOverWeight(least) => self.force_over_weight(least),
                 Resolution::MaxSpeedNeeded => self.unknown_speed(test),
                 Resolution::NotApplicable(_) => Vec::new(),
             };
@@ -148,7 +148,7 @@ impl Ruled<'_> {
     }
 
     /// Brake force over weight, as a tester or a cable finds it: without what the tires hold.
-    fn force_over_weight(&self, least: f64) -> Check {
+    fn force_over_weight(&self, least: f64) -> Vec<Check> {
         let situation = Situation::level();
         let limits = HoldLimits::default();
         let limit_at = self.bench.at_duty("id");
@@ -161,11 +161,13 @@ impl Ruled<'_> {
             Judged::Compared(Compared::at_least((front + rear) / weight, limit))
         });
         let cases = friction_cases(&self.bench.acting.fitted);
-        Check {
+        let mut checks = vec![Check {
             friction_case: cases.first().copied().filter(|_| cases.len() > 1),
             limit_at: Some(self.bench.at_duty("id")),
             ..self.bench.check(CheckCode::BrakingRatio, judged)
-        }
+        }];
+        held.on_brakes(&mut checks);
+        checks
     }
 
     /// The checks of a stop whose speed is not known.

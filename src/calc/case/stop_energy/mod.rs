@@ -131,9 +131,7 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
     let mut faults = Faults::new();
     faults.not_negative("ambient_temperature", input.ambient_temperature);
     faults.not_negative("start_temperature", input.start_temperature);
-    let holds = input.stop_count.is_none_or(|count| (1..=input.most_stops()).contains(&count));
-    let detail = "must be 1 or more, and times the fitted entries not above 10000";
-    faults.require(holds, "stop_count", FaultCode::OutOfRange, detail);
+    input.require_count(&mut faults);
     let Some(stop) = faults.part("", stopping::evaluate(&input.stop)) else { return Err(faults) };
     faults.into_result(())?;
     let outcome = evaluate_stopped(input, stop)?;
@@ -143,9 +141,10 @@ pub fn evaluate(input: &Input) -> Result<Outcome, Faults> {
 /// Computes the energies of a stop that is known already. A disc beyond any temperature is told as such.
 ///
 /// # Errors
-/// An interval that is shorter than the braking.
+/// An interval that is shorter than the braking, too many stops or none.
 pub fn evaluate_stopped(input: &Input, stop: stopping::Outcome) -> Result<Outcome, Faults> {
     let mut faults = Faults::new();
+    input.require_count(&mut faults);
     faults.require(
         input.is_spaced(&stop),
         "interval",
@@ -196,6 +195,12 @@ impl Input {
     fn most_stops(&self) -> u32 {
         let entries = u32::try_from(self.stop.fitted.len()).unwrap_or(u32::MAX).max(1);
         (MOST_STOPS / entries).max(1)
+    }
+
+    fn require_count(&self, faults: &mut Faults) {
+        let holds = self.stop_count.is_none_or(|count| (1..=self.most_stops()).contains(&count));
+        let detail = "must be 1 or more, and times the fitted entries not above 10000";
+        faults.require(holds, "stop_count", FaultCode::OutOfRange, detail);
     }
 
     /// Whether each stop is over before the next one starts, in every friction case.
