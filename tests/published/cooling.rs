@@ -204,7 +204,7 @@ proptest! {
         let air = AirTable::new();
         let held = HeldSurface::in_air(surface, speeds, &air);
         let (quick, exact) = (held.conductance(temperature), surface.conductance(temperature, speeds));
-        prop_assert!((quick - exact).abs() <= 1e-7 * exact, "{quick} {exact}");
+        prop_assert!((quick - exact).abs() <= 3e-7 * exact, "{quick} {exact}");
     }
 }
 

@@ -72,7 +72,7 @@ impl Exponent {
 
 /// What the temperature of the air makes of a coefficient, k/ν^n, by cubics over [`WIDTH`]; beside it by the formula.
 ///
-/// A coefficient by the table is within 1e-7 of that by the formula, and several times as quick.
+/// A coefficient by the table is within 3e-7 of that by the formula, and several times as quick.
 #[derive(Debug, Clone, PartialEq)]
 pub struct AirTable {
     /// For each cell, for each exponent, the polynomial in the share of the cell.
