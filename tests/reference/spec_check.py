@@ -1029,6 +1029,13 @@ class SpecCheck:
                     "deceleration": as_measure(step["deceleration"]), "interval": as_measure(step["spacing"]), "stop_count": step["count"]}
             assert len(row["step"]) == 1 and "then" not in step and stop["interval"]["unit"] == "s"
             found += self.stops({**duty, **stop}, acting, case, factors)
+            # The deceleration of the cycle is what the brakes must give at least.
+            missing, limit = self.knows_wheels(), si(stop["deceleration"])
+            if missing:
+                found.append((Check("peak_deceleration_minimum", missing=missing, limit=limit), "low"))
+            else:
+                system, _ = self.system(duty, acting, case, factors)
+                found.append((at_least("peak_deceleration_minimum", system.balance(1.0, final)[0], limit), "low"))
         return found
 
     # Section 7: hold.

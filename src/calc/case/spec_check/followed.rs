@@ -8,11 +8,11 @@ use crate::calc::brake::Brake;
 use crate::calc::case::duty_cycle::{self, CaseOutcome, Event, FailureReason};
 use crate::calc::case::stopping::{brake_forces, full_torques, total};
 use crate::calc::fault::Faults;
-use crate::calc::finding::{CheckCode, Finding, Notice, Remarks, Severity, Subject};
+use crate::calc::finding::{CheckCode, Subject};
 use crate::calc::fitted::{Fitted, eased};
 use crate::calc::friction::FrictionCase;
 use crate::calc::motion::Forces;
-use crate::calc::quantity::{Dimension, ThermodynamicTemperature};
+use crate::calc::quantity::{Amount, Dimension, ThermodynamicTemperature};
 
 /// A test cycle and what it comes to.
 pub(super) struct Followed<'a> {
@@ -49,6 +49,7 @@ impl Followed<'_> {
     pub(super) fn checks(&self) -> Vec<Check> {
         let mut checks: Vec<Check> =
             self.cases().first().map(|low| self.stops(low)).into_iter().collect();
+        checks.extend(self.cases().first().and_then(|low| self.deceleration(low)));
         let pressings: Vec<_> =
             self.cases().iter().map(|case| (case.friction_case, self.pressings(case))).collect();
         for (acting, entry, brake) in self.bench.brakes() {
@@ -60,22 +61,35 @@ impl Followed<'_> {
         checks
     }
 
-    /// Says where the brakes do not give the deceleration that the cycle is driven with.
-    pub(super) fn note(&self, remarks: &mut Remarks) {
-        let falls_short = |case: &CaseOutcome, event: &Event| {
-            let Event::Stop { demand, .. } = event else { return false };
-            let Some((forces, speed)) = self.weakest(case, event) else { return false };
-            demand.deceleration.is_some_and(|asked| forces.fraction_for(asked, speed).is_none())
+    /// The deceleration that the brakes give at full application, at the lowest friction that the cycle brings them to,
+    /// against what the cycle is driven with; none if it holds no deceleration.
+    fn deceleration(&self, low: &CaseOutcome) -> Option<Check> {
+        let asked = |event: &Event| match event {
+            Event::Stop { demand, .. } => demand.deceleration,
+            Event::Run { .. }
+            | Event::Descent { .. }
+            | Event::Space { .. }
+            | Event::Stand { .. } => None,
         };
-        for case in self.cases() {
-            if self.events.iter().any(|event| falls_short(case, event)) {
-                let detail = "the deceleration of the test cycle is more than brakes and tires give: full torque was taken, and the cycle is not the published one";
-                let code = Notice::DecelerationNotReached;
-                let subject = self.bench.at_duty("id");
-                let finding = Finding::notice(code, Severity::Exceeded, subject, detail);
-                remarks.find_once(finding.in_case(case.friction_case));
+        let missing = self.bench.missing_of_tires(true, !self.bench.acts_on_all());
+        let stops = self.events.iter().filter_map(|event| {
+            let limit = Amount { dimension: Dimension::Acceleration, si: asked(event)? };
+            if !missing.is_empty() {
+                return Some(Judged::Lacking(missing.clone()));
             }
-        }
+            let (forces, speed) = self.weakest(low, event)?;
+            let actual = forces.at(1.0, speed).deceleration;
+            Some(Judged::Compared(Compared::at_least(actual, limit)))
+        });
+        let worse =
+            |one: Judged, other: Judged| if other.is_worse_than(&one) { other } else { one };
+        let judged = stops.reduce(worse)?;
+        Some(Check {
+            friction_case: (self.cases().len() > 1).then_some(low.friction_case),
+            hot: low.fitted.iter().any(|tracked| tracked.lowest_factor < 1.0),
+            limit_at: Some(self.bench.at_duty("id")),
+            ..self.bench.check(CheckCode::PeakDecelerationMinimum, judged)
+        })
     }
 
     fn of_cases(

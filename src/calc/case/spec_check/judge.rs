@@ -94,7 +94,6 @@ impl Judgement {
                 let outcome = follow(bench, events, start)?;
                 self.remarks.join(&outcome.remarks, |finding| Some(finding.clone()));
                 let followed = Followed { bench, events, outcome: &outcome };
-                followed.note(&mut self.remarks);
                 self.numbers.fitted = followed.fitted();
                 Ok(followed.checks())
             }
