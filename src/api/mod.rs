@@ -26,6 +26,7 @@ pub mod record;
 pub mod render;
 pub mod request_id;
 pub mod shape;
+pub mod sheet;
 pub mod tagged;
 mod trace;
 pub mod v1;

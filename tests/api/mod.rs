@@ -13,4 +13,6 @@ mod parse;
 mod problems;
 mod properties;
 mod readme;
+mod sheet;
+mod sheet_formulas;
 mod v1;

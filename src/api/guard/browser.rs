@@ -17,8 +17,8 @@ use super::rate::{RATE_LIMIT, RATE_LIMIT_POLICY};
 use crate::api::request_id::REQUEST_ID;
 use crate::api::trace::TRACEPARENT;
 
-/// Scripts and styles of the documentation page come from this service alone; its styles, and those of charts and
-/// sheets, are partly inline.
+/// Scripts and styles of the documentation page come from this service alone; its styles, and those of charts, are
+/// partly inline.
 const CONTENT_POLICY: HeaderValue = HeaderValue::from_static(
     "default-src 'self'; script-src 'self'; style-src 'self' 'unsafe-inline'; img-src 'self' data:; \
      connect-src 'self'; object-src 'none'; base-uri 'none'; form-action 'none'; frame-ancestors 'none'",
@@ -60,7 +60,8 @@ pub(in crate::api) async fn protect(request: Request, next: Next) -> Response<Bo
     let headers = response.headers_mut();
     headers.insert(X_CONTENT_TYPE_OPTIONS, HeaderValue::from_static("nosniff"));
     headers.insert(REFERRER_POLICY, HeaderValue::from_static("no-referrer"));
-    headers.insert(CONTENT_SECURITY_POLICY, CONTENT_POLICY);
+    // A page that knows what it needs sets its own, which is stricter.
+    headers.entry(CONTENT_SECURITY_POLICY).or_insert(CONTENT_POLICY);
     // The answer to a POST depends on its body, which is no cache's key.
     if is_post {
         headers.insert(CACHE_CONTROL, HeaderValue::from_static("no-store"));

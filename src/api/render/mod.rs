@@ -26,16 +26,26 @@ use utoipa_axum::router::OpenApiRouter;
 use super::accept::{JSON, Negotiated, Offers};
 use super::extract::Answer;
 use super::problem::{Problem, ProblemKind};
+use super::sheet::HTML;
 use chart::Chart;
 
 /// The media type of charts.
 pub const SVG: &str = "image/svg+xml";
 
-/// Lets routes answer with charts, too, and tells caches that the answer depends on what the client accepts.
+/// Lets routes answer with charts, too.
 pub(super) fn pictured(routes: OpenApiRouter) -> OpenApiRouter {
-    const FORMS: &[&str] = &[JSON, SVG];
+    in_forms(routes, &[JSON, SVG])
+}
+
+/// Lets routes answer with sheets, too.
+pub(super) fn printed(routes: OpenApiRouter) -> OpenApiRouter {
+    in_forms(routes, &[JSON, HTML])
+}
+
+/// Lets routes answer in several forms and tells caches that the answer depends on what the client accepts.
+fn in_forms(routes: OpenApiRouter, forms: &'static [&'static str]) -> OpenApiRouter {
     let vary = HeaderValue::from_static("accept");
-    routes.layer(Extension(Offers(FORMS))).layer(SetResponseHeaderLayer::appending(VARY, vary))
+    routes.layer(Extension(Offers(forms))).layer(SetResponseHeaderLayer::appending(VARY, vary))
 }
 
 impl Negotiated {
@@ -45,18 +55,18 @@ impl Negotiated {
         self.0 == SVG
     }
 
-    /// The answer in the form that the client prefers: as JSON, or the chart that `picture` makes of it.
+    /// The answer in the form that the client prefers: as JSON, or the chart or sheet that `show` makes of it.
     ///
-    /// The answer is written as JSON in either case: what JSON refuses, a chart must not show.
-    pub fn render<T: Serialize>(
+    /// The answer is written as JSON in either case: what JSON refuses, no other form must show.
+    pub fn render<T: Serialize, S: IntoResponse>(
         self,
         answer: T,
-        picture: impl FnOnce(&T) -> Chart,
+        show: impl FnOnce(&T) -> S,
     ) -> Response<Body> {
-        let chart = self.is_chart().then(|| picture(&answer));
+        let shown = (self.0 != JSON).then(|| show(&answer));
         let json = Answer(answer).into_response();
-        match chart {
-            Some(chart) if json.status().is_success() => chart.into_response(),
+        match shown {
+            Some(shown) if json.status().is_success() => shown.into_response(),
             _ => json,
         }
     }

@@ -12,7 +12,7 @@ pub mod stopping;
 use utoipa_axum::router::OpenApiRouter;
 use utoipa_axum::routes;
 
-use super::render::pictured;
+use super::render::{pictured, printed};
 
 /// The routes below `/v1`.
 pub(super) fn routes() -> OpenApiRouter {
@@ -23,7 +23,7 @@ pub(super) fn routes() -> OpenApiRouter {
     OpenApiRouter::default()
         .routes(routes!(pad_capacity::pad_capacity))
         .routes(routes!(actuation_force::actuation_force))
-        .routes(routes!(spec_check::spec_check))
+        .merge(printed(OpenApiRouter::default().routes(routes!(spec_check::spec_check))))
         .merge(pictured(pictures))
         .merge(catalog::routes())
 }

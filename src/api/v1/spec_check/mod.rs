@@ -7,7 +7,6 @@ pub mod require;
 
 use axum::body::Body;
 use axum::http::Response as Reply;
-use axum::response::IntoResponse;
 use serde::Deserialize;
 use utoipa::ToSchema;
 
@@ -18,15 +17,18 @@ use duty::Duty;
 use super::block::fitted::Fitted;
 use super::block::machine::Machine;
 use super::block::stop::stood_in;
-use crate::api::extract::{Answer, Json};
+use crate::api::accept::Negotiated;
+use crate::api::extract::Json;
 use crate::api::heavy::off_thread;
-use crate::api::measure::{ReportUnits, Temperature};
+use crate::api::measure::{AnyAmount, ReportUnits, Temperature};
 use crate::api::metrics::{Verdict, count_verdict};
 use crate::api::parse::{At, Reader, RecordedDefault};
 use crate::api::problem::Problem;
 use crate::api::record::{self, Recorded};
+use crate::api::sheet::{Page, Sheet};
 use crate::calc::case::spec_check::{self, Input, Outcome};
 use crate::calc::fault::Faults;
+use crate::calc::quantity::{Amount, Dimension, Si};
 
 /// A machine, its brakes and what they are put through.
 #[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
@@ -65,13 +67,20 @@ pub struct SpecCheckRequest {
 /// `incomplete` unless it is waived with a reason.
 #[utoipa::path(
     post, path = "/spec-check", tag = "Calculations", operation_id = "spec_check",
-    responses((status = OK, description = "Every check, and what they come to.", body = SpecCheckAnswer)),
+    responses((
+        status = OK,
+        description = "Every check, and what they come to; as a page: the calculation sheet, to print, sign and file.",
+        content((SpecCheckAnswer = "application/json"), (String = "text/html")),
+    )),
 )]
-pub(super) async fn spec_check(request: Json<SpecCheckRequest>) -> Result<Reply<Body>, Problem> {
+pub(super) async fn spec_check(
+    form: Negotiated,
+    request: Json<SpecCheckRequest>,
+) -> Result<Reply<Body>, Problem> {
     if request.value.is_heavy() {
-        return off_thread(move || request.value.respond(&request.body)).await?;
+        return off_thread(move || request.value.respond(form, &request.body)).await?;
     }
-    request.value.respond(&request.body)
+    request.value.respond(form, &request.body)
 }
 
 impl SpecCheckRequest {
@@ -82,10 +91,30 @@ impl SpecCheckRequest {
         self.duties.iter().any(is_heavy)
     }
 
-    fn respond(&self, body: &[u8]) -> Result<Reply<Body>, Problem> {
+    fn respond(&self, form: Negotiated, body: &[u8]) -> Result<Reply<Body>, Problem> {
         let (input, outcome, defaults) = self.judged()?;
         count_verdict(counted(outcome.verdict));
-        Ok(Answer(self.answer(body, &input, &outcome, defaults)).into_response())
+        let answer = self.answer(body, &input, &outcome, defaults);
+        Ok(form.render(answer, |answer| self.sheet(body, &input, &outcome, answer)))
+    }
+
+    fn sheet(
+        &self,
+        body: &[u8],
+        input: &Input,
+        outcome: &Outcome,
+        answer: &SpecCheckAnswer,
+    ) -> Page {
+        let air = Amount { dimension: Dimension::Temperature, si: input.ambient_temperature.si() };
+        let sheet = Sheet {
+            // It was read from these bytes: they are JSON.
+            request: &serde_json::from_slice(body).unwrap_or_default(),
+            answer,
+            methods: outcome.remarks.methods(),
+            ambient_temperature: &AnyAmount::report(air, self.report_units.unwrap_or_default()),
+            near_limit_from: input.near_limit_from,
+        };
+        sheet.page()
     }
 
     fn application(&self) -> Application<'_> {

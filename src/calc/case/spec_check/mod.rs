@@ -3,6 +3,7 @@
 mod acting;
 mod bench;
 mod check;
+mod criterion;
 pub mod descended;
 mod duty;
 mod followed;
@@ -18,6 +19,7 @@ mod words;
 
 pub use acting::Use;
 pub use check::{Check, Compared, Judged, Status};
+pub use criterion::{Criterion, Sense};
 pub use descended::METHODS;
 pub use duty::{
     DescentNumbers, Duty, DutyNumbers, FittedNumbers, HoldNumbers, Limb, StopNumbers, Task,
@@ -25,7 +27,7 @@ pub use duty::{
 pub use require::{Clock, HoldLimits, StopLimits};
 pub use ruled::{applies, has_a_test};
 pub use verdict::{Verdict, Waiver};
-pub use words::detail;
+pub use words::{detail, subject_of};
 
 use acting::Acting;
 use judge::{Judgement, judge, worse};

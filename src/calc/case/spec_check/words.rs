@@ -4,7 +4,8 @@ use super::check::{Check, Status};
 use crate::calc::finding::CheckCode;
 
 /// What a check holds against its limit, as the subject of a sentence.
-const fn subject_of(code: CheckCode) -> &'static str {
+#[must_use]
+pub const fn subject_of(code: CheckCode) -> &'static str {
     match code {
         CheckCode::Stops => "what drives the machine against its brakes",
         CheckCode::StoppingDistance => "the stopping distance",
