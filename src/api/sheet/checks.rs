@@ -89,7 +89,7 @@ fn row(sheet: &Sheet<'_>, check: &Check) -> Markup {
     let bound = match Criterion::of(check.code.0).sense {
         Sense::AtMost | Sense::RiseAtMost => "at most ",
         Sense::AtLeast => "at least ",
-        Sense::Effort => "available ",
+        Sense::Effort => "of ",
     };
     html! {
         tr class=(class(check.status)) {

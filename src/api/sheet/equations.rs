@@ -4,6 +4,7 @@ use maud::{Markup, html};
 
 use super::checks::{mark, status_words, worst_at};
 use super::closing::anchor;
+use super::summary::pointers;
 use super::value::{self, Figure};
 use super::{Sheet, mathml};
 use crate::api::measure::AnyAmount;
@@ -95,12 +96,7 @@ fn unfinished(criterion: &Criterion, check: &Check) -> Markup {
             } @else if missing.is_empty() {
                 (value::capitalized(&check.detail)) "."
             } @else {
-                "Missing: "
-                @for (place, pointer) in missing.iter().enumerate() {
-                    @if place > 0 { ", " }
-                    code { (pointer) }
-                }
-                "."
+                "Missing: " (pointers(missing)) "."
             }
         }
     }
@@ -165,15 +161,13 @@ fn holding(sheet: &Sheet<'_>, check: &Check) -> Option<Markup> {
     })
 }
 
-/// What is held and what must be, with their unit.
+/// What brakes hold and what they must, with the unit.
 fn forces(hold: &HoldResult) -> Option<([f64; 2], &'static str)> {
-    match (&hold.available_force, &hold.required_force) {
-        (Some(held), Some(needed)) => Some(([held.value(), needed.value()], held.unit().symbol)),
-        _ => {
-            let (held, needed) = (hold.available_torque.as_ref()?, hold.required_torque.as_ref()?);
-            Some(([held.value(), needed.value()], held.unit().symbol))
-        }
+    if let (Some(available), Some(required)) = (&hold.available_force, &hold.required_force) {
+        return Some(([available.value(), required.value()], available.unit().symbol));
     }
+    let (available, required) = (hold.available_torque.as_ref()?, hold.required_torque.as_ref()?);
+    Some(([available.value(), required.value()], available.unit().symbol))
 }
 
 /// The methods of this answer that find the value.

@@ -175,7 +175,8 @@ fn need(sheet: &Sheet<'_>, check: &Check) -> Markup {
     }
 }
 
-fn pointers(missing: &[String]) -> Markup {
+/// Places of a request.
+pub(super) fn pointers(missing: &[String]) -> Markup {
     html! {
         @for (place, pointer) in missing.iter().enumerate() {
             @if place > 0 { ", " }
