@@ -324,6 +324,8 @@ async fn numbers_are_in_the_units_asked_for() {
         let ending = format!(" {unit}");
         assert!(amounts.iter().all(|amount| !amount.ends_with(&ending)), "{unit}");
     }
+    let formulas: String = all(&page, ".formula").into_iter().map(words).collect();
+    assert!(formulas.contains("°F") && !formulas.contains("°C"));
 }
 
 #[tokio::test]
