@@ -123,6 +123,10 @@ pub(super) fn record(sheet: &Sheet<'_>) -> Markup {
                     tbody { @for waiver in waivers { (waived(sheet, waiver)) } }
                 }
             }
+            p.note {
+                "Numbers are rounded to " (value::DIGITS) " significant digits, or to as many as show a difference; \
+                 whole digits are all kept. The exact numbers are in the JSON answer to the same request."
+            }
             div.signatures {
                 @for role in ["Prepared by", "Reviewed by"] {
                     div.signature {

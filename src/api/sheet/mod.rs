@@ -94,11 +94,6 @@ impl Sheet<'_> {
                         (closing::cautions(self))
                         (closing::record(self))
                     }
-                    footer {
-                        "Numbers are rounded to " (value::DIGITS) " significant digits, or to as many as show a \
-                         difference; whole digits are all kept. The exact numbers are in the JSON answer to the same \
-                         request."
-                    }
                 }
             }
         })
