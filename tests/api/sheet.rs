@@ -215,9 +215,19 @@ async fn a_reader_with_ears_finds_the_way() {
     }
 }
 
+/// The requests of the examples that have an answer.
+fn examples() -> impl Iterator<Item = Value> {
+    let folder = concat!(env!("CARGO_MANIFEST_DIR"), "/examples/requests/spec-check");
+    let files = std::fs::read_dir(folder).unwrap().map(|entry| entry.unwrap().path());
+    let examples = files.map(|file| std::fs::read_to_string(file).unwrap());
+    let examples = examples.map(|text| serde_json::from_str::<Value>(&text).unwrap());
+    examples.filter(|example| example["status"] == 200).map(|example| example["request"].clone())
+}
+
 #[tokio::test]
 async fn every_check_is_on_the_page_with_its_state() {
-    for body in [failing(), incomplete(), waived()] {
+    let own = [failing(), incomplete(), waived()];
+    for body in examples().chain(own) {
         let (page, answer) = (sheet(&body).await, answer(&body).await);
         let rows = all(&page, ".checks tbody tr");
         let checks = answer["results"]["checks"].as_array().unwrap();
