@@ -118,7 +118,7 @@ impl Criterion {
                 Sense::AtLeast,
                 ["d_p", "d_min"],
                 "d_p = max(-dv/dt)",
-                "d_p is the highest deceleration while torque acts",
+                "d_p is the highest deceleration while torque acts; in a test cycle, that at full application where its brakes are weakest",
                 MOTION,
             ),
             CheckCode::PeakDeceleration => criterion(
