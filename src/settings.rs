@@ -61,7 +61,7 @@ pub struct Settings {
     /// Origins whose web pages may call the service, separated by commas; none if empty.
     #[arg(long, env = "BRAKEWRIGHT_ALLOWED_ORIGINS", global = true, value_name = "ORIGINS", default_value = "", value_parser = Origins::parse)]
     pub allowed_origins: Origins,
-    /// Largest request body in bytes.
+    /// Largest request body in bytes; a selection may have 16 MiB, a stream 1 MiB a line.
     #[arg(long, env = "BRAKEWRIGHT_MAX_BODY_BYTES", global = true, value_name = "BYTES", default_value = "1048576", value_parser = clap::value_parser!(u32).range(1..))]
     pub max_body_bytes: u32,
     /// Longest time for a request, in seconds (30, 30s) or milliseconds (500ms).

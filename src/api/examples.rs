@@ -3,7 +3,7 @@
 use serde_json::{Map, Value, json};
 
 /// The example of each calculation: its path, the name of the file, and the file.
-const EXAMPLES: [(&str, &str, &str); 6] = [
+const EXAMPLES: [(&str, &str, &str); 7] = [
     (
         "/v1/pad-capacity",
         "hoist_caliper_at_its_limit",
@@ -23,6 +23,11 @@ const EXAMPLES: [(&str, &str, &str); 6] = [
         "/v1/stop-energy",
         "tractor_on_a_ramp",
         include_str!("../../examples/requests/stop-energy/tractor_on_a_ramp.json"),
+    ),
+    (
+        "/v1/selection",
+        "tractor_front_calipers",
+        include_str!("../../examples/requests/selection/tractor_front_calipers.json"),
     ),
     (
         "/v1/duty-cycle",

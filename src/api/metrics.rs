@@ -184,6 +184,13 @@ pub fn count_turned_away(turned: Turned) {
     METRICS.turned_away.get_or_create(&turned.label()).inc();
 }
 
+/// Counts a request for which there is no place, and says so.
+#[must_use]
+pub(super) fn busy() -> Problem {
+    count_turned_away(Turned::Busy);
+    Problem::of_kind(ProblemKind::Overloaded)
+}
+
 /// Counts the verdict of a spec check.
 pub fn count_verdict(verdict: Verdict) {
     METRICS.verdicts.get_or_create(&verdict.label()).inc();

@@ -2,6 +2,7 @@
 
 pub mod accept;
 mod access_log;
+pub mod background;
 pub mod count;
 mod docs;
 pub mod error_code;

@@ -184,6 +184,16 @@ impl Problem {
         self
     }
 
+    /// The same problem, of a part of the body: its pointers start at `place`, such as `#/candidates/3`.
+    #[must_use]
+    pub fn below(mut self, place: &str) -> Self {
+        let pointers = self.0.errors.iter_mut().map(|item| &mut item.pointer);
+        for pointer in pointers.chain(&mut self.0.pointer) {
+            pointer.replace_range(..1, place);
+        }
+        self
+    }
+
     /// The HTTP status.
     #[must_use]
     pub fn status(&self) -> StatusCode {

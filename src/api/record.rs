@@ -65,9 +65,15 @@ impl From<Severity> for WarningSeverity {
 }
 
 /// What a warning says, for programs. A closed set: check codes for limits, notices for the rest.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Serialize)]
 #[serde(transparent)]
 pub struct WarningCode(&'static str);
+
+impl From<Notice> for WarningCode {
+    fn from(notice: Notice) -> Self {
+        Self(notice.as_str())
+    }
+}
 
 impl PartialSchema for WarningCode {
     fn schema() -> RefOr<Schema> {
@@ -302,9 +308,18 @@ pub fn input_digest(body: &[u8]) -> String {
     if let Value::Object(members) = &mut document {
         members.shift_remove("ref");
     }
+    digest_text(Sha256::new().chain_update(canonical(document)))
+}
+
+/// The canonical form of a part of a body.
+pub(super) fn canonical(mut document: Value) -> Vec<u8> {
     as_doubles(&mut document);
-    let canonical = serde_jcs::to_vec(&document).unwrap_or_default();
-    let digest = Sha256::digest(&canonical);
+    serde_jcs::to_vec(&document).unwrap_or_default()
+}
+
+/// The digest of what was hashed, as it goes on record.
+pub(super) fn digest_text(hashed: Sha256) -> String {
+    let digest = hashed.finalize();
     digest.iter().fold(String::from("sha256:"), |text, byte| text + &format!("{byte:02x}"))
 }
 

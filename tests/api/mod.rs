@@ -15,4 +15,4 @@ mod properties;
 mod readme;
 mod sheet;
 mod sheet_formulas;
-mod v1;
+pub(crate) mod v1;

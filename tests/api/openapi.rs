@@ -218,10 +218,11 @@ fn the_older_description_has_no_keyword_that_3_0_lacks() {
     let older: Value = serde_json::from_str(openapi_30_json()).unwrap();
     assert_eq!(older["openapi"], "3.0.3");
     assert!(older["info"]["license"].get("identifier").is_none());
-    assert_eq!(
-        older["paths"].as_object().unwrap().len(),
-        document()["paths"].as_object().unwrap().len()
-    );
+    let newer = document();
+    let paths = newer["paths"].as_object().unwrap().keys();
+    let left_out: Vec<&String> = paths.filter(|path| older["paths"].get(path).is_none()).collect();
+    // A stream: generators for 3.0 stumble over its media type.
+    assert_eq!(left_out, ["/v1/spec-checks"]);
     older["components"]["schemas"].as_object().unwrap().values().for_each(assert_3_0);
 }
 

@@ -9,8 +9,9 @@ mod calculation;
 mod parts;
 mod request;
 mod service;
+mod stream;
 
 use criterion::{criterion_group, criterion_main};
 
-criterion_group!(benches, calculation::all, service::all);
+criterion_group!(benches, calculation::all, service::all, stream::all);
 criterion_main!(benches);

@@ -108,6 +108,32 @@ pub(crate) fn spec_check() -> Value {
     })
 }
 
+/// The car judged for one stop: what a configurator asks for each of many choices.
+pub(crate) fn choice() -> Value {
+    let stop = stop(0.0);
+    json!({
+        "machine": stop["machine"], "fitted": stop["fitted"],
+        "duties": [{"kind": "stop", "initial_speed": quantity(108.0, "km/h"),
+            "response": {"build_up_time": quantity(0.2, "s")}, "require": {"max_distance": quantity(70.0, "m")}}],
+    })
+}
+
+/// Choices of the car's brakes, one clamp force each; every `wrong_every`-th has a unit of another dimension.
+pub(crate) fn selection(count: u32, wrong_every: Option<u32>) -> Value {
+    let asked = choice();
+    let candidate = |index: u32| {
+        let mut fitted = asked["fitted"].clone();
+        let force = &mut fitted[0]["brake"]["actuation"]["force"];
+        force["value"] = json!(9.0 + f64::from(index) / f64::from(count));
+        if wrong_every.is_some_and(|every| index.is_multiple_of(every)) {
+            force["unit"] = json!("kg");
+        }
+        json!({"ref": format!("candidate {index}"), "fitted": fitted})
+    };
+    let candidates: Vec<Value> = (0..count).map(candidate).collect();
+    json!({"application": {"machine": asked["machine"], "duties": asked["duties"]}, "candidates": candidates})
+}
+
 /// A body with an unknown member, a unit of another dimension and a missing member.
 pub(crate) fn faulty_pad_capacity() -> Value {
     let mut body = pad_capacity();

@@ -45,7 +45,7 @@ pub(crate) fn all(criterion: &mut Criterion) {
 }
 
 /// Layers with limits that nothing here meets.
-fn settings() -> LayerSettings {
+pub(crate) fn settings() -> LayerSettings {
     LayerSettings { max_concurrency: 64, ..LayerSettings::default() }
 }
 

@@ -6,3 +6,4 @@ mod heavy;
 mod keys;
 mod process;
 mod replay;
+mod stream;

@@ -68,6 +68,11 @@ impl Service {
         line.trim().strip_suffix(" kB").unwrap().parse().unwrap()
     }
 
+    /// The process, for `/proc`.
+    pub(super) fn id(&self) -> u32 {
+        self.child.id()
+    }
+
     pub(super) fn signal(&self, name: &str) {
         let id = self.child.id().to_string();
         assert!(Command::new("kill").args(["-s", name, &id]).status().unwrap().success());

@@ -19,7 +19,7 @@ use utoipa::ToSchema;
 
 use super::problem::Problem;
 
-pub use schema::{MoreUnits, accept_more_units, validation_schema};
+pub use schema::{EACH_ALONE, MoreUnits, accept_more_units, validation_schema};
 
 /// Decodes a body, or says everything that is wrong with it.
 ///

@@ -1,6 +1,6 @@
 //! The published schema of a request type, rewritten so that validating it names each fault once.
 //!
-//! The rewritten schema accepts what the published one accepts, and more units. Three things differ:
+//! The rewritten schema accepts what the published one accepts, and more units. Some things differ:
 //! a tagged union is decided by its tag, so that only the branch meant is searched; an `enum` stands
 //! without `type`, so that a wrong value is one fault; the items of a list are searched only if the
 //! list is not too long, so that an endless list is one fault.
@@ -13,6 +13,9 @@ pub type MoreUnits = fn(&[&str]) -> Vec<String>;
 
 /// The keyword under which a widened `enum` keeps what is published.
 pub(super) const PUBLISHED: &str = "x-published";
+
+/// The mark of a list in the description whose items are each refused alone.
+pub const EACH_ALONE: &str = "x-each-refused-alone";
 
 /// Where the schemas of a description are.
 const SCHEMAS: &str = "#/components/schemas/";
@@ -38,6 +41,9 @@ fn rewrite(schema: &mut Value, published: &Map<String, Value>, more_units: MoreU
     for_each_part(schema, &mut |part| rewrite(part, published, more_units));
     accept_more_units(schema, published, more_units);
     let Value::Object(schema) = schema else { return };
+    if schema.contains_key(EACH_ALONE) {
+        schema.shift_remove("items");
+    }
     if schema.contains_key("enum") || schema.contains_key("const") {
         schema.shift_remove("type");
     }

@@ -3,6 +3,7 @@
 pub mod actuation_force;
 pub mod duty_cycle;
 pub mod pad_capacity;
+pub mod selection;
 pub mod spec_check;
 pub mod stop_energy;
 pub mod stopping;

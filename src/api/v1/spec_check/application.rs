@@ -10,7 +10,7 @@ use crate::api::record::CheckName;
 use crate::api::v1::block::machine::Machine;
 use crate::api::v1::block::temperatures;
 use crate::calc::case::spec_check::{Duty as MeantDuty, Input, Waiver as MeantWaiver};
-use crate::calc::fault::FaultCode;
+use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::NEAR_LIMIT_FROM;
 use crate::calc::fitted::Fitted;
 use crate::calc::machine::Machine as Braked;
@@ -117,6 +117,12 @@ pub struct Meant {
 }
 
 impl Meant {
+    /// What is impossible about it, whatever brakes are fitted.
+    #[must_use]
+    pub fn faults(&self) -> Faults {
+        self.clone().with(Vec::new()).application_faults()
+    }
+
     /// The application with brakes to be judged for it.
     #[must_use]
     pub fn with(self, fitted: Vec<Fitted>) -> Input {
@@ -136,6 +142,28 @@ impl Application<'_> {
     #[must_use]
     pub const fn is_vehicle(&self) -> bool {
         matches!(self.machine, Machine::Vehicle(_))
+    }
+
+    /// Faults of an interval stand where the caller gave it as a frequency, those of a shaft's speed at its own member.
+    #[must_use]
+    pub fn as_given(&self, faults: Faults) -> Faults {
+        let moved = |faults: Faults, (index, duty): (usize, &Duty)| match duty {
+            Duty::RepeatedStops(duty) if duty.stop_frequency.is_some() => faults.moved(
+                &format!("duties/{index}/interval"),
+                &format!("duties/{index}/stop_frequency"),
+            ),
+            Duty::Rule(duty) if duty.max_rotational_speed.is_some() => faults.moved(
+                &format!("duties/{index}/max_speed"),
+                &format!("duties/{index}/max_rotational_speed"),
+            ),
+            Duty::Stop(_)
+            | Duty::RepeatedStops(_)
+            | Duty::Descent(_)
+            | Duty::Hold(_)
+            | Duty::Rule(_)
+            | Duty::Procedure(_) => faults,
+        };
+        self.duties.iter().enumerate().fold(faults, moved)
     }
 
     /// The application that is meant.

@@ -27,7 +27,6 @@ use crate::api::problem::Problem;
 use crate::api::record::{self, Recorded};
 use crate::api::sheet::{Page, Sheet};
 use crate::calc::case::spec_check::{self, Input, Outcome};
-use crate::calc::fault::Faults;
 use crate::calc::quantity::{Amount, Dimension, Si};
 
 /// A machine, its brakes and what they are put through.
@@ -142,29 +141,8 @@ impl SpecCheckRequest {
         let input = meant.zip(fitted).map(|(meant, fitted)| meant.with(fitted));
         let (input, defaults) = reader.finish(input)?;
         let outcome = spec_check::evaluate(&input)
-            .map_err(|faults| record::no_answer(&self.as_given(faults)))?;
+            .map_err(|faults| record::no_answer(&application.as_given(faults)))?;
         Ok((input, outcome, defaults))
-    }
-
-    /// Faults of an interval stand where the caller gave it as a frequency, those of a shaft's speed at its own member.
-    fn as_given(&self, faults: Faults) -> Faults {
-        let moved = |faults: Faults, (index, duty): (usize, &Duty)| match duty {
-            Duty::RepeatedStops(duty) if duty.stop_frequency.is_some() => faults.moved(
-                &format!("duties/{index}/interval"),
-                &format!("duties/{index}/stop_frequency"),
-            ),
-            Duty::Rule(duty) if duty.max_rotational_speed.is_some() => faults.moved(
-                &format!("duties/{index}/max_speed"),
-                &format!("duties/{index}/max_rotational_speed"),
-            ),
-            Duty::Stop(_)
-            | Duty::RepeatedStops(_)
-            | Duty::Descent(_)
-            | Duty::Hold(_)
-            | Duty::Rule(_)
-            | Duty::Procedure(_) => faults,
-        };
-        self.duties.iter().enumerate().fold(faults, moved)
     }
 
     /// The request as it goes on record.
@@ -201,7 +179,7 @@ impl SpecCheckRequest {
 }
 
 /// The verdict as it is counted.
-const fn counted(verdict: spec_check::Verdict) -> Verdict {
+pub(super) const fn counted(verdict: spec_check::Verdict) -> Verdict {
     match verdict {
         spec_check::Verdict::Pass => Verdict::Pass,
         spec_check::Verdict::Fail => Verdict::Fail,

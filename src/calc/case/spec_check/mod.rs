@@ -88,9 +88,22 @@ impl Input {
     /// What is impossible about the input. Members are those of the request.
     #[must_use]
     pub fn faults(&self) -> Faults {
-        let mut faults = Faults::new();
+        let mut faults = self.application_faults();
         let holds = (1..=100).contains(&self.fitted.len());
         faults.require(holds, "fitted", FaultCode::WrongCount, "must have 1 to 100 entries");
+        for (index, entry) in self.fitted.iter().enumerate() {
+            let detail = "is not enough here: a spec check judges the brake, so give brake";
+            let member = format!("fitted/{index}/torque");
+            faults.require(entry.brake().is_some(), &member, FaultCode::NotApplicable, detail);
+        }
+        stopping::place_faults(&self.machine, &self.fitted, &mut faults);
+        faults
+    }
+
+    /// What is impossible about the machine, its duties and the terms, whatever brakes are fitted.
+    #[must_use]
+    pub fn application_faults(&self) -> Faults {
+        let mut faults = Faults::new();
         let holds = (1..=MOST_DUTIES).contains(&self.duties.len());
         faults.require(holds, "duties", FaultCode::WrongCount, "must have 1 to 50 duties");
         let heating = self.duties.iter().filter(|duty| duty.task.heats()).count();
@@ -107,12 +120,6 @@ impl Input {
         let detail = "must lie above 0 and not above 1";
         faults.require(holds, "near_limit_from", FaultCode::OutOfRange, detail);
         faults.not_negative("ambient_temperature", self.ambient_temperature);
-        for (index, entry) in self.fitted.iter().enumerate() {
-            let detail = "is not enough here: a spec check judges the brake, so give brake";
-            let member = format!("fitted/{index}/torque");
-            faults.require(entry.brake().is_some(), &member, FaultCode::NotApplicable, detail);
-        }
-        stopping::place_faults(&self.machine, &self.fitted, &mut faults);
         for (index, duty) in self.duties.iter().enumerate() {
             faults.part(&format!("duties/{index}"), self.duty_faults(duty).into_result(()));
         }
@@ -297,7 +304,8 @@ fn note_checks(remarks: &mut Remarks, checks: &[Check], statuses: &[Status]) {
     }
 }
 
-fn note_waivers(remarks: &mut Remarks, effects: &[bool]) {
+/// A notice on each waiver that had no effect.
+pub fn note_waivers(remarks: &mut Remarks, effects: &[bool]) {
     for (index, _) in effects.iter().enumerate().filter(|(_, effect)| !**effect) {
         let subject = Subject::Waiver { index };
         let detail = "the waiver changes nothing: only a check that is not assessed can be waived";
