@@ -209,6 +209,22 @@ impl Lining {
     }
 }
 
+impl Lining {
+    /// The lowest and the highest factor on friction between two temperatures.
+    #[must_use]
+    pub fn fade_range(
+        &self,
+        from: ThermodynamicTemperature,
+        to: ThermodynamicTemperature,
+    ) -> (f64, f64) {
+        let within = |point: &&FadePoint| (from.si()..=to.si()).contains(&point.temperature.si());
+        let points = self.0.fade.iter().filter(within).map(|point| point.factor);
+        let ends = [self.fade_factor(from), self.fade_factor(to)];
+        let range = |(low, high): (f64, f64), factor: f64| (low.min(factor), high.max(factor));
+        points.chain(ends).fold((f64::INFINITY, f64::NEG_INFINITY), range)
+    }
+}
+
 fn between(below: &FadePoint, above: &FadePoint, temperature: f64) -> f64 {
     let (start, end) = (below.temperature.si(), above.temperature.si());
     below.factor + (above.factor - below.factor) * ((temperature - start) / (end - start))

@@ -92,7 +92,7 @@ fn numbers_are_of_a_sensible_size() {
                     assert!((0.17..0.30).contains(grade), "{}", row.id);
                     assert_eq!(row.machines, [MachineKind::Vehicle], "{}", row.id);
                 }
-                RuleTest::Hold(HoldTest::Load { load_factor, min_holding_factor }) => {
+                RuleTest::Hold(HoldTest::Load { load_factor, min_holding_factor, .. }) => {
                     let product = load_factor * min_holding_factor;
                     assert!((1.0..=1.25).contains(&product), "{}", row.id);
                     assert_eq!(row.machines, [MachineKind::Hoist], "{}", row.id);

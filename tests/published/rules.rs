@@ -422,7 +422,11 @@ fn parking_and_holding_rows_hold_their_figures() {
     }
     for (row, factor) in [("other", 1.25), ("mechanical", 1.0), ("two", 1.0)] {
         let row = format!("cfr29_1910_179_hoist_{row}");
-        let hold = rules::HoldTest::Load { load_factor: 1.0, min_holding_factor: factor };
+        let hold = rules::HoldTest::Load {
+            load_factor: 1.0,
+            min_holding_factor: factor,
+            is_of_hoisting_torque: true,
+        };
         assert_eq!(rules::find(&row).unwrap().resolve(None), [Resolution::Hold(hold)]);
     }
     let ratios = [
@@ -488,7 +492,11 @@ fn lifts_ropeways_and_machine_tools_count_from_their_own_speed() {
     for row in ["ilo_lift_b8_4_3", "wac_296_96_05150"] {
         assert_close(stop(row).load_factor, 1.25, 1e-15);
     }
-    let hold = rules::HoldTest::Load { load_factor: 1.25, min_holding_factor: 1.0 };
+    let hold = rules::HoldTest::Load {
+        load_factor: 1.25,
+        min_holding_factor: 1.0,
+        is_of_hoisting_torque: false,
+    };
     let resolved = rules::find("wac_296_96_05150").unwrap().resolve(Some(2.5));
     assert!(resolved.contains(&Resolution::Hold(hold)));
 }

@@ -886,7 +886,7 @@ class SpecCheck:
         found, lining = [], entry.lining
         for code, value, limit in (("power_flux", peak_power, lining.max_power_flux), ("energy_flux", energy, lining.max_energy_flux)):
             if limit is not None:
-                found.append((at_most(code, value / entry.faces / entry.pad.area, limit, entry=entry.index), "high"))
+                found.append((at_most(code, value / entry.faces / entry.pad.area, limit, entry=entry.index), "worst"))
         return found
 
     # Section 8: wear.

@@ -77,6 +77,10 @@ impl Hoist {
         self.0.gear_ratio * self.0.falls / self.0.drum_radius.si()
     }
 
+    pub(super) const fn efficiency(&self) -> f64 {
+        self.0.efficiency
+    }
+
     /// What gravity pulls down with, N; negative where the counterweight is heavier.
     pub(super) fn downward_force(&self) -> f64 {
         (self.0.load_mass.si() - self.0.counterweight_mass.si()) * STANDARD_GRAVITY

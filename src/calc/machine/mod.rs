@@ -84,6 +84,15 @@ impl Machine {
         }
     }
 
+    /// The torque that hoists a load over that of gravity: the losses of a hoist's drive, 1 elsewhere.
+    #[must_use]
+    pub fn hoisting_over_gravity(&self) -> f64 {
+        match self {
+            Self::Hoist(hoist) => 1.0 / hoist.efficiency(),
+            Self::Vehicle(_) | Self::Shaft(_) | Self::Conveyor(_) => 1.0,
+        }
+    }
+
     /// What must be held at rest, along the coordinate ([`HOLDING`]): resistances are not counted on.
     #[must_use]
     pub fn holding_force(&self, situation: &Situation) -> f64 {

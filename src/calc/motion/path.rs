@@ -377,8 +377,15 @@ impl Path {
                 forces(&self.instant(piece, time), speed).map(|force| force * speed)
             };
             // The force of a brake is what is left of a balance of all forces: it is known to a rounding of these.
-            let balance = system.outside.abs() + system.resistance + system.mass;
-            let pair = Pair { at, rounding: 1e-12 * balance * piece.speed_at(0.0).abs() };
+            let speed = piece.speed_at(0.0).abs();
+            let carried = system.tires.map_or(0.0, |tires| tires.normal_force);
+            let balance = system.outside.abs()
+                + system.resistance
+                + system.drag * speed * speed
+                + self.forces.demand[0]
+                + self.forces.demand[1]
+                + carried;
+            let pair = Pair { at, rounding: 1e-12 * balance * speed };
             let whole = pair.gauss(0.0, piece.duration);
             match piece.motion {
                 Motion::Polynomial { .. } => whole,

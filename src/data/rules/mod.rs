@@ -86,7 +86,7 @@ pub struct StopTest {
     pub max_speed_above: Option<f64>,
     /// Applies only to machines with a maximum speed of at most this, m/s.
     pub max_speed_up_to: Option<f64>,
-    /// The rated load is multiplied by this, 1 if nothing is said. Cage, hook and counterweight stay as they are.
+    /// The rated load is multiplied by this, 1 if nothing is said. The counterweight stays as it is.
     pub load_factor: f64,
     /// When distance and time start to count.
     pub clock: Clock,
@@ -168,11 +168,13 @@ pub enum HoldTest {
     },
     /// What hangs on the machine or drives it.
     Load {
-        /// The rated load is multiplied by this. Cage, hook and counterweight stay as they are: where they balance a part
+        /// The rated load is multiplied by this. The counterweight stays as it is: where they balance a part
         /// of the load, that is more than this factor on what the brake holds.
         load_factor: f64,
         /// Braking torque over the torque to be held.
         min_holding_factor: f64,
+        /// Whether that counts from the torque that hoists the load, the losses of the drive included.
+        is_of_hoisting_torque: bool,
     },
 }
 

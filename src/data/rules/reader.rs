@@ -162,6 +162,7 @@ impl TestEntry {
             Self::Load { load_factor, min_holding_factor } => RuleTest::Hold(HoldTest::Load {
                 load_factor: load_factor.unwrap_or(1.0),
                 min_holding_factor: min_holding_factor.unwrap_or(1.0),
+                is_of_hoisting_torque: min_holding_factor.is_some(),
             }),
             Self::ForceOverWeight { at_least } => RuleTest::ForceOverWeight(at_least),
         };

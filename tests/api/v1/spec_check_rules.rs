@@ -28,7 +28,10 @@ async fn every_requirement_for_vehicles_can_be_judged() {
     for row in rows {
         let mut judged = false;
         for speed in [150.0, 220.0, 60.0, 28.0, 20.0] {
-            let body = with(&against(&row.id), "/duties/0/max_speed", q(speed, "km/h"));
+            let limb =
+                if row.foot_force.is_none() && row.hand_force.is_some() { "hand" } else { "foot" };
+            let body = with(&against(&row.id), "/duties/0/operated_by", json!(limb));
+            let body = with(&body, "/duties/0/max_speed", q(speed, "km/h"));
             let (status, found) = bytes_or_problem(SPEC_CHECK, &body.to_string()).await;
             if status == 422 {
                 assert_eq!(found["errors"][0]["pointer"], "#/duties/0/max_speed", "{found}");
@@ -344,4 +347,11 @@ async fn a_test_cycle_needs_a_vehicle_and_the_speed_it_counts_from() {
     assert_faults(SPEC_CHECK, &body, &[("#/duties/0/max_speed", "missing")]).await;
     let body = with(&hoist(), "/duties", snubs()["duties"].clone());
     assert_faults(SPEC_CHECK, &body, &[("#/duties/0/kind", "not_applicable")]).await;
+}
+
+/// A limb that the requirement has no force for would leave the control unjudged.
+#[tokio::test]
+async fn a_limb_without_a_limit_is_refused() {
+    let body = with(&against("cfr49_571_135_s7_5"), "/duties/0/operated_by", json!("hand"));
+    assert_faults(SPEC_CHECK, &body, &[("#/duties/0/operated_by", "not_applicable")]).await;
 }

@@ -126,7 +126,7 @@ pub struct RuleTest {
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schema(nullable = false)]
     pub max_speed_up_to: Option<Speed>,
-    /// The rated load is multiplied by this. Cage, hook and counterweight stay as they are.
+    /// The rated load is multiplied by this. The counterweight stays as it is.
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schema(nullable = false, value_type = f64)]
     pub load_factor: Option<Finite>,
@@ -283,7 +283,7 @@ fn test(test: &Test) -> RuleTest {
             both_ways: Some(*is_both_ways),
             ..empty(RuleTestKind::HoldOnSlope)
         },
-        Test::Hold(HoldTest::Load { load_factor, min_holding_factor }) => RuleTest {
+        Test::Hold(HoldTest::Load { load_factor, min_holding_factor, .. }) => RuleTest {
             load_factor: not_one(*load_factor),
             min_holding_factor: Some(Finite(*min_holding_factor)),
             ..empty(RuleTestKind::HoldLoad)

@@ -113,7 +113,8 @@ pub struct StopDuty {
 }
 
 /// The same stop again and again, until nothing changes any more or as often as asked. It heats the brakes: stops,
-/// holds and rules are judged as hot as it makes them, too.
+/// holds and rules are judged as hot as it makes them, too. Its own requirements are judged at cold friction: give the
+/// stop as a duty of its own to have it judged hot.
 #[derive(Debug, Clone, PartialEq, Deserialize, ToSchema)]
 #[serde(deny_unknown_fields)]
 pub struct RepeatedStopsDuty {
@@ -216,6 +217,9 @@ pub struct HoldDuty {
     /// Which brakes act; all if left out.
     #[schema(nullable = false, min_items = 1, max_items = 100)]
     pub uses: Option<Vec<BrakeUse>>,
+    /// Temperature of the discs; that of the air if left out.
+    #[schema(nullable = false)]
+    pub start_temperature: Option<Temperature>,
     /// Slope that a vehicle stands on, positive facing uphill; level if left out.
     #[schema(nullable = false)]
     pub grade: Option<Grade>,
@@ -348,7 +352,7 @@ impl Duty {
             Self::Stop(duty) => duty.start_temperature.as_ref(),
             Self::RepeatedStops(duty) => duty.start_temperature.as_ref(),
             Self::Descent(duty) => duty.start_temperature.as_ref(),
-            Self::Hold(_) => None,
+            Self::Hold(duty) => duty.start_temperature.as_ref(),
             Self::Rule(duty) => duty.start_temperature.as_ref(),
             Self::Procedure(duty) => duty.start_temperature.as_ref(),
         }
@@ -357,17 +361,8 @@ impl Duty {
     /// The duty that is meant.
     pub fn read(&self, around: Around<'_>, at: &At<'_>, reader: &mut Reader) -> Option<Meant> {
         let uses = self.uses().map(|uses| uses.iter().map(BrakeUse::read).collect());
-        // At rest nothing heats: a hold has no start temperature.
-        let start_temperature = match self {
-            Self::Hold(_) => around.ambient,
-            Self::Stop(_)
-            | Self::RepeatedStops(_)
-            | Self::Descent(_)
-            | Self::Rule(_)
-            | Self::Procedure(_) => {
-                temperatures::start(self.start(), around.ambient, around.units, (at, reader))
-            }
-        };
+        let start_temperature =
+            temperatures::start(self.start(), around.ambient, around.units, (at, reader));
         let task = match self {
             Self::Stop(duty) => duty.read(around.machine, at, reader),
             Self::RepeatedStops(duty) => duty.read(around.machine, at, reader),

@@ -82,12 +82,15 @@ pub(super) async fn spec_check(
     request.value.respond(form, &request.body)
 }
 
+/// Duties times entries of fitted brakes that are judged at once, without a thread of their own.
+const FEW: usize = 12;
+
 impl SpecCheckRequest {
-    /// Whether a duty is followed stop by stop, which takes long.
+    /// Whether it takes long: a duty is followed stop by stop, or there is much to judge.
     #[must_use]
     pub fn is_heavy(&self) -> bool {
         let is_heavy = |duty: &Duty| matches!(duty, Duty::RepeatedStops(_) | Duty::Procedure(_));
-        self.duties.iter().any(is_heavy)
+        self.duties.iter().any(is_heavy) || self.duties.len() * self.fitted.len() > FEW
     }
 
     fn respond(&self, form: Negotiated, body: &[u8]) -> Result<Reply<Body>, Problem> {

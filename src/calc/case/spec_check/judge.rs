@@ -57,6 +57,9 @@ pub(super) fn judge(
     let fitted = acting.indices.iter().map(|&index| FittedNumbers::of(index)).collect();
     let numbers = DutyNumbers { fitted, ..DutyNumbers::default() };
     let mut judgement = Judgement { checks: Vec::new(), numbers, remarks: Remarks::new() };
+    if matches!(input.machine, Machine::Hoist(_)) {
+        judgement.remarks.caution(Caution::SuspendedLoad);
+    }
     judgement.checks = judgement.of(&bench, duty)?;
     Ok(judgement)
 }
@@ -115,9 +118,6 @@ impl Judgement {
     fn hold(&mut self, bench: &Bench<'_>, situation: &Situation, limits: HoldLimits) -> Vec<Check> {
         self.note_brakes(bench);
         self.remarks.method(&HOLDING);
-        if matches!(bench.machine, Machine::Hoist(_)) {
-            self.remarks.caution(Caution::SuspendedLoad);
-        }
         let limit_at = bench.at_duty("require/min_holding_factor");
         let held = Held { bench, situation, limits: &limits, limit_at };
         self.numbers.holds.push(held.numbers());
@@ -238,6 +238,11 @@ impl Stopped<'_> {
         let of_brake = |acting: usize| {
             let mut found = FittedNumbers::of(self.bench.acting.index(acting));
             for (_, load) in self.loads(acting) {
+                let is_repeated = self.input.interval.is_some();
+                // The first of many stops does not tell how hot the last one gets.
+                if !self.has_an_end(&load) || (is_repeated && load.repeated.is_none()) {
+                    return FittedNumbers::of(self.bench.acting.index(acting));
+                }
                 let [(_, surface), (_, bulk)] = stop_energy::limits::hottest(self.input, &load);
                 found.peak_bulk = highest(found.peak_bulk, bulk);
                 found.peak_surface = highest(found.peak_surface, surface);

@@ -227,15 +227,14 @@ impl Stopped<'_> {
     }
 
     fn on_flux(&self, checks: &mut Vec<Check>, (acting, brake): (usize, &Brake)) {
-        // High friction does the most work in the least time.
-        let Some((case, load)) = self.loads(acting).last() else { return };
-        let found = [
-            (CheckCode::PowerFlux, load.peak_power_flux.si()),
-            (CheckCode::EnergyFlux, load.energy_flux.si()),
-        ];
-        for (code, value) in found {
-            checks.extend(self.bench.of_one_case((acting, brake), code, (case, value)));
-        }
+        // Where something drives, low friction takes up the most energy: each case counts.
+        let loads: Vec<(FrictionCase, BrakeLoad)> = self.loads(acting).collect();
+        let mut hold = |code, value: fn(&BrakeLoad) -> f64| {
+            let found = loads.iter().map(|(case, load)| (*case, Ok(value(load))));
+            checks.extend(self.bench.on_brake((acting, brake), code, false, found));
+        };
+        hold(CheckCode::PowerFlux, |load| load.peak_power_flux.si());
+        hold(CheckCode::EnergyFlux, |load| load.energy_flux.si());
     }
 
     fn on_heat(&self, checks: &mut Vec<Check>, (acting, brake): (usize, &Brake)) {
@@ -260,12 +259,17 @@ impl Stopped<'_> {
         }
     }
 
-    /// The highest temperature of bulk or surface, K; without end where stops heat a disc beyond any steady state.
-    fn temperature(&self, load: &BrakeLoad, is_surface: bool) -> Found {
-        let has_no_end = load
+    /// Whether the heat of a load ends at temperatures that are followed.
+    pub(super) fn has_an_end(&self, load: &BrakeLoad) -> bool {
+        let is_endless = load
             .repeated
             .is_some_and(|repeated| repeated.steady.is_none() && self.input.stop_count.is_none());
-        if has_no_end || load.overheats {
+        !is_endless && !load.overheats
+    }
+
+    /// The highest temperature of bulk or surface, K; without end where stops heat a disc beyond any steady state.
+    fn temperature(&self, load: &BrakeLoad, is_surface: bool) -> Found {
+        if !self.has_an_end(load) {
             return Ok(f64::INFINITY);
         }
         let [(_, surface), (_, bulk)] = hottest(self.input, load);

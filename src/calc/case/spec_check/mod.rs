@@ -8,6 +8,7 @@ pub mod descended;
 mod duty;
 mod followed;
 mod held;
+mod hot;
 mod judge;
 mod loads;
 mod place;
@@ -25,11 +26,12 @@ pub use duty::{
     DescentNumbers, Duty, DutyNumbers, FittedNumbers, HoldNumbers, Limb, StopNumbers, Task,
 };
 pub use require::{Clock, HoldLimits, StopLimits};
-pub use ruled::{applies, has_a_test};
+pub use ruled::{applies, has_a_test, has_force_for};
 pub use verdict::{Verdict, Waiver};
 pub use words::{detail, subject_of};
 
 use acting::Acting;
+use hot::Heat;
 use judge::{Judgement, judge, worse};
 
 use super::stopping;
@@ -37,12 +39,16 @@ use crate::calc::fault::{FaultCode, Faults};
 use crate::calc::finding::{Finding, Notice, Remarks, Severity, Subject, WarningCode};
 use crate::calc::fitted::{Fitted, Pressed, press};
 use crate::calc::machine::Machine;
-use crate::calc::quantity::{Si, ThermodynamicTemperature};
+use crate::calc::quantity::ThermodynamicTemperature;
 
 /// Duties of one spec check at most.
 pub const MOST_DUTIES: usize = 50;
 /// Duties that heat the brakes for the others, at most: each is followed stop by stop.
 pub const MOST_HEATING_DUTIES: usize = 10;
+/// Duties times entries of fitted brakes at most: each entry is judged in each duty.
+pub const MOST_JUDGED: usize = 500;
+/// Duties that heat times entries of fitted brakes at most.
+pub const MOST_HEATED: usize = 100;
 /// Waivers at most.
 pub const MOST_WAIVERS: usize = 100;
 
@@ -97,6 +103,15 @@ impl Input {
             faults.require(entry.brake().is_some(), &member, FaultCode::NotApplicable, detail);
         }
         stopping::place_faults(&self.machine, &self.fitted, &mut faults);
+        let entries = self.fitted.len();
+        let holds = entries.saturating_mul(self.duties.len()) <= MOST_JUDGED;
+        let detail = "entries of fitted times duties must not exceed 500";
+        faults.require(holds, "duties", FaultCode::WrongCount, detail);
+        let heating = self.duties.iter().filter(|duty| duty.task.heats()).count();
+        let holds = entries.saturating_mul(heating) <= MOST_HEATED;
+        let detail =
+            "entries of fitted times repeated stops, descents and procedures must not exceed 100";
+        faults.require(holds, "duties", FaultCode::WrongCount, detail);
         faults
     }
 
@@ -146,7 +161,10 @@ impl Input {
                 faults.part("", situation.faults().into_result(()));
                 faults.part("require", limits.faults().into_result(()));
             }
-            Task::Rule { row, max_speed, .. } => {
+            Task::Rule { row, max_speed, operated_by, .. } => {
+                let detail = "is not what the requirement has a control force for";
+                let holds = has_force_for(row, *operated_by);
+                faults.require(holds, "operated_by", FaultCode::NotApplicable, detail);
                 let detail = "is a requirement for other kinds of machines";
                 let is_meant = applies(row, &self.machine);
                 faults.require(is_meant, "id", FaultCode::NotApplicable, detail);
@@ -220,44 +238,23 @@ fn all_judged(input: &Input, actings: &[Acting]) -> Result<Vec<Judgement>, Fault
             duty.task.heats().then(|| judged(index, duty, acting, false)).flatten()
         })
         .collect();
-    let factors = hot_factors(input, &heating);
+    let heat = Heat::of(input, &heating);
     let mut judgements = Vec::with_capacity(input.duties.len());
     for (index, (duty, acting)) in duties() {
         if duty.task.heats() {
             judgements.extend(heating.get_mut(index).and_then(Option::take));
             continue;
         }
-        let cold = judged(index, duty, acting, false);
-        let hot = acting.hot(&factors).and_then(|acting| judged(index, duty, &acting, true));
-        judgements.extend(cold.map(|cold| {
-            let mut both = worse(cold, hot);
-            for one in &mut both.numbers.fitted {
-                let factor = factors.get(one.fitted_index).copied();
-                one.hot_factor = factor.filter(|factor| factor.to_bits() != 1.0_f64.to_bits());
-            }
-            both
-        }));
+        let Some(mut both) = judged(index, duty, acting, false) else { continue };
+        let sets = heat.factors(input, duty);
+        for factors in &sets {
+            let hot = acting.hot(factors).and_then(|acting| judged(index, duty, &acting, true));
+            both = worse(both, hot);
+        }
+        hot::note(&mut both.numbers.fitted, acting, sets.first());
+        judgements.push(both);
     }
     faults.into_result(judgements)
-}
-
-/// For each entry, its friction over that of the data sheet at the hottest bulk of the duties that heat it.
-fn hot_factors(input: &Input, heating: &[Option<Judgement>]) -> Vec<f64> {
-    let hottest = |entry: usize| {
-        let found = heating.iter().flatten().flat_map(|judgement| &judgement.numbers.fitted);
-        let found = found.filter(|one| one.fitted_index == entry).filter_map(|one| one.peak_bulk);
-        found.reduce(f64::max)
-    };
-    let entries = input.fitted.iter().enumerate();
-    entries
-        .map(|(index, entry)| match (entry.brake(), hottest(index)) {
-            (Some(brake), Some(peak)) => {
-                let peak = ThermodynamicTemperature::from_si(peak);
-                brake.parts().lining.fade_factor(peak)
-            }
-            _ => 1.0,
-        })
-        .collect()
 }
 
 /// Where duties heat the brakes, fade points are missed.

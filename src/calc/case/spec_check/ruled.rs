@@ -46,6 +46,17 @@ pub fn has_a_test(row: &RuleRow, max_speed: Option<f64>) -> bool {
     row.resolve(max_speed).iter().any(is_meant)
 }
 
+/// Whether a requirement that limits the control force has a limit for what moves the control, if that is said.
+#[must_use]
+pub fn has_force_for(row: &RuleRow, operated_by: Option<Limb>) -> bool {
+    let (hand, foot) = (row.hand_force.is_some(), row.foot_force.is_some());
+    match operated_by {
+        Some(Limb::Hand) => hand || !foot,
+        Some(Limb::Foot) => foot || !hand,
+        None => true,
+    }
+}
+
 impl Ruled<'_> {
     /// All checks of the requirement.
     pub(super) fn checks(
@@ -71,14 +82,35 @@ impl Ruled<'_> {
         Ok(checks)
     }
 
+    /// The machine as it is, and with the load that the requirement asks for: a counterweight may balance the larger one.
+    fn loaded(&self, factor: f64) -> Vec<Machine> {
+        let machine = self.bench.machine;
+        let loaded =
+            (factor.to_bits() != 1.0_f64.to_bits()).then(|| machine.with_load_factor(factor));
+        std::iter::once(machine.clone()).chain(loaded).collect()
+    }
+
     fn stop(
         &self,
         test: &ResolvedStop,
         numbers: &mut DutyNumbers,
         remarks: &mut Remarks,
     ) -> Result<Vec<Check>, Faults> {
-        let machine = self.bench.machine.with_load_factor(test.load_factor);
-        let bench = Bench { machine: &machine, ..*self.bench };
+        let mut checks = Vec::new();
+        for machine in self.loaded(test.load_factor) {
+            let bench = Bench { machine: &machine, ..*self.bench };
+            merge(&mut checks, self.stop_with(&bench, test, numbers, remarks)?);
+        }
+        Ok(checks)
+    }
+
+    fn stop_with(
+        &self,
+        bench: &Bench<'_>,
+        test: &ResolvedStop,
+        numbers: &mut DutyNumbers,
+        remarks: &mut Remarks,
+    ) -> Result<Vec<Check>, Faults> {
         let limits = StopLimits {
             max_distance: test.max_distance,
             max_time: test.limits.max_time,
@@ -109,7 +141,7 @@ impl Ruled<'_> {
             start: self.start,
             has_response: self.delays.is_some(),
         };
-        let mut checks = stop(&bench, &trial, numbers, remarks)?;
+        let mut checks = stop(bench, &trial, numbers, remarks)?;
         for check in &mut checks {
             self.limit_by_rule(check);
         }
@@ -131,18 +163,22 @@ impl Ruled<'_> {
                     if is_both_ways { vec![at(grade), at(-grade)] } else { vec![at(grade)] };
                 (situations, HoldLimits::default(), 1.0)
             }
-            HoldTest::Load { load_factor, min_holding_factor } => {
-                (vec![Situation::level()], HoldLimits { min_holding_factor }, load_factor)
+            HoldTest::Load { load_factor, min_holding_factor, is_of_hoisting_torque } => {
+                let losses = self.bench.machine.hoisting_over_gravity();
+                let losses = if is_of_hoisting_torque { losses } else { 1.0 };
+                let limits = HoldLimits { min_holding_factor: min_holding_factor * losses };
+                (vec![Situation::level()], limits, load_factor)
             }
         };
-        let machine = self.bench.machine.with_load_factor(load_factor);
-        let bench = Bench { machine: &machine, ..*self.bench };
         let mut checks = Vec::new();
-        for situation in &situations {
-            let limit_at = self.bench.at_duty("id");
-            let held = Held { bench: &bench, situation, limits: &limits, limit_at };
-            numbers.holds.push(held.numbers());
-            merge(&mut checks, held.checks());
+        for machine in self.loaded(load_factor) {
+            let bench = Bench { machine: &machine, ..*self.bench };
+            for situation in &situations {
+                let limit_at = self.bench.at_duty("id");
+                let held = Held { bench: &bench, situation, limits: &limits, limit_at };
+                numbers.holds.push(held.numbers());
+                merge(&mut checks, held.checks());
+            }
         }
         checks
     }
@@ -191,11 +227,25 @@ impl Ruled<'_> {
         let member = if is_shaft { "max_rotational_speed" } else { "max_speed" };
         let missing = vec![self.bench.at_duty(member)];
         let wanted = wanted.into_iter().filter(|(is_wanted, _)| *is_wanted);
-        let lacking = |(_, code)| Check {
+        let lacking = |code, fitted_index| Check {
+            fitted_index,
             limit_at: Some(self.bench.at_duty("id")),
             ..self.bench.check(code, Judged::Lacking(missing.clone()))
         };
-        wanted.map(lacking).collect()
+        let of_machine = wanted.map(|(_, code)| lacking(code, None));
+        let of_every_stop = [
+            CheckCode::PadPeakPressure,
+            CheckCode::RubbingSpeed,
+            CheckCode::DiscBulkTemperature,
+            CheckCode::SurfaceTemperature,
+        ];
+        let of_brakes = self
+            .bench
+            .acting
+            .indices
+            .iter()
+            .flat_map(|index| of_every_stop.map(|code| lacking(code, Some(*index))));
+        of_machine.chain(of_brakes).collect()
     }
 
     /// The operator's force on each control against what the requirement allows.

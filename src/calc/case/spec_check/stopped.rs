@@ -163,8 +163,11 @@ impl Stopped<'_> {
         let compared = match self.actual(code, case).filter(|_| is_over) {
             Some(actual) if is_maximum => Compared::at_most(actual, limit, 0.0),
             Some(actual) => Compared::at_least(actual, limit),
-            // Rest came without any torque: no deceleration was too high.
-            None if is_over && is_maximum => Compared::at_most(0.0, limit, 0.0),
+            // Rest came without any torque, by what resists alone.
+            None if is_over && is_maximum => {
+                let free = case.stop.path.forces().at(0.0, self.demand().initial_speed);
+                Compared::at_most(free.deceleration.max(0.0), limit, 0.0)
+            }
             None => Compared::beyond(Some(limit)),
         };
         (self.case_of(case), Judged::Compared(compared))
@@ -209,10 +212,7 @@ impl Stopped<'_> {
         let forces = case.stop.path.forces();
         let adhesion = forces.system.tires.and_then(|tires| tires.adhesion);
         let (Some((instant, fraction)), Some(adhesion)) = (case.hardest, adhesion) else {
-            return Judged::Compared(Compared::boundless(Amount {
-                dimension: Dimension::Force,
-                si: 0.0,
-            }));
+            return Judged::Compared(unasked());
         };
         let axles = forces.demand.into_iter().zip(instant.normal);
         let axles = axles.filter(|(demand, _)| *demand > 0.0).map(|(demand, normal)| {
@@ -227,9 +227,8 @@ impl Stopped<'_> {
     /// Ground force and rolling resistance, as if the wheel could not lift, over what lifts it.
     fn rear_wheel_lift(&self, case: &CaseOutcome) -> Judged {
         let forces = case.stop.path.forces();
-        let (Some((_, fraction)), Some(lift)) = (case.hardest, forces.lift_force()) else {
-            return Judged::Lacking(Vec::new());
-        };
+        let Some(lift) = forces.lift_force() else { return Judged::Lacking(Vec::new()) };
+        let Some((_, fraction)) = case.hardest else { return Judged::Compared(unasked()) };
         let speed =
             case.stop.path.hardest().map_or(self.demand().initial_speed, |(.., speed)| speed);
         let resistance = forces.system.resistance;
@@ -253,4 +252,10 @@ impl Stopped<'_> {
         let mixed = judge(self.outcome.stop.mixed_lock);
         if mixed.is_worse_than(&found.1) { (None, mixed) } else { found }
     }
+}
+
+/// Rest came without any torque: nothing was asked of the tires.
+const fn unasked() -> Compared {
+    let nothing = Amount { dimension: Dimension::Force, si: 0.0 };
+    Compared { actual: Some(nothing), limit: None, utilization: Some(0.0), is_within: true }
 }
