@@ -69,6 +69,7 @@ pub struct StopDuty {
     /// The kind.
     pub kind: StopDutyKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -120,6 +121,7 @@ pub struct RepeatedStopsDuty {
     /// The kind.
     pub kind: RepeatedStopsKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -181,6 +183,7 @@ pub struct DescentDuty {
     /// The kind.
     pub kind: DescentDutyKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -211,6 +214,7 @@ pub struct HoldDuty {
     /// The kind.
     pub kind: HoldKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -231,6 +235,7 @@ pub struct RuleDuty {
     /// The kind.
     pub kind: RuleKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -274,6 +279,7 @@ pub struct ProcedureDuty {
     /// The kind.
     pub kind: ProcedureDutyKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
