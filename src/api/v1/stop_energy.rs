@@ -295,6 +295,7 @@ impl StopEnergyRequest {
             start_temperature,
             interval,
             stop_count,
+            finds_limit: true,
         }))
     }
 

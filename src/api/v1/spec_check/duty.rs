@@ -136,7 +136,8 @@ pub struct RepeatedStopsDuty {
     /// The same as stops per time.
     #[schema(nullable = false)]
     pub stop_frequency: Option<StopFrequency>,
-    /// How many, 1 or more, and times the fitted entries at most 10000; until steady if left out.
+    /// How many, 1 or more, and times the fitted entries at most 10000, in all duties together; until steady if left
+    /// out.
     #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub stop_count: Option<u32>,

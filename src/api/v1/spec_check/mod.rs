@@ -46,7 +46,8 @@ pub struct SpecCheckRequest {
     /// Its brakes, each in all its parts.
     #[schema(min_items = 1, max_items = 100)]
     pub fitted: Vec<Fitted>,
-    /// What they are put through.
+    /// What they are put through. At most 10 repeated stops, descents and procedures, which times their fitted entries
+    /// come to at most 100.
     #[schema(min_items = 1, max_items = 50)]
     pub duties: Vec<Duty>,
     /// Temperature of the air, 20 degC if left out.
