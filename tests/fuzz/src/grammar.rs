@@ -219,6 +219,12 @@ fn seeds(endpoints: &[Endpoint]) -> Vec<(String, Node)> {
         let cases = document["cases"].as_array().into_iter().flatten();
         seeds.extend(cases.map(|case| ("/v1/spec-check".to_owned(), Node::of(&case["request"]))));
     }
+    // A stream of one line; the mutator adds others.
+    for endpoint in endpoints.iter().filter(|endpoint| endpoint.takes_lines()) {
+        let single = seeds.iter().filter(|(path, _)| path == "/v1/spec-check");
+        let lines: Vec<_> = single.map(|(_, seed)| (endpoint.path.clone(), seed.clone())).collect();
+        seeds.extend(lines);
+    }
     for case in documents(&root.join("tests/fuzz/cases")) {
         let path = case["path"].as_str().unwrap_or_default().to_owned();
         seeds.push((path, Node::of(&case["request"])));
