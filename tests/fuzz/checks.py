@@ -1,6 +1,10 @@
-"""Demands beside those that the tester brings along."""
+"""Demands beside those that the tester brings along, and how it writes and reads lines of JSON."""
+
+import json
 
 import schemathesis
+
+LINES = "application/x-ndjson"
 
 # The codes of `ShapeCode` in src/api/error_code.rs: what a schema can say.
 SHAPE = {
@@ -32,3 +36,29 @@ def a_refusal_says_where(context, response, case):
     assert problem["errors"], "refused without a reason"
     assert problem["error_count"] >= len(problem["errors"])
     assert all(error["pointer"].startswith("#") for error in problem["errors"])
+
+
+@schemathesis.serializer(LINES)
+def one_line(context, value):
+    """A stream of one request."""
+    return value if isinstance(value, bytes) else json.dumps(value).encode() + b"\n"
+
+
+@schemathesis.deserializer(LINES)
+def first_line(context, response):
+    """The answer to it; the description tells what a line is."""
+    return json.loads(response.content.splitlines()[0])
+
+
+@schemathesis.check
+def a_wrong_part_is_rejected_by_itself(context, response, case):
+    """Where a wrong line or candidate does not disturb the others, it must still not be taken."""
+    if response.status_code != 200 or case.meta is None or not case.meta.generation.mode.is_negative:
+        return
+    if "body" not in {component.value for component in case.meta.components}:
+        return
+    if case.path == "/v1/spec-checks":
+        end = json.loads(response.content.splitlines()[-1])["end"]
+        assert end["rejected"] == end["lines"], f"a wrong line was taken: {end}"
+    if case.path == "/v1/selection":
+        assert response.json()["results"]["rejected"], "a wrong candidate was taken"
