@@ -32,23 +32,32 @@ static ROUTER: LazyLock<Router> =
     LazyLock::new(|| brakewright::api::router(&LayerSettings::default(), Readiness::default()));
 
 /// Schemas of the requests and of the answers by status, for every endpoint.
-static SHAPES: LazyLock<HashMap<String, (Validator, Vec<(String, Validator)>)>> = LazyLock::new(|| {
-    let shapes = |endpoint: &Endpoint| {
-        let responses = endpoint.operation["responses"].as_object().expect("it has responses");
-        let answers = responses.iter().filter_map(|(status, response)| {
-            let content = response["content"].as_object()?;
-            let body = content.iter().find(|(kind, _)| kind.ends_with("json")).map_or(&Value::Null, |(_, body)| body);
-            Some((status.clone(), validator(&complete(&body["schema"]))))
-        });
-        (endpoint.path.clone(), (validator(&with_any_unit(complete(endpoint.request()))), answers.collect()))
-    };
-    GRAMMAR.endpoints.iter().map(shapes).collect()
-});
+static SHAPES: LazyLock<HashMap<String, (Validator, Vec<(String, Validator)>)>> =
+    LazyLock::new(|| {
+        let shapes = |endpoint: &Endpoint| {
+            let responses = endpoint.operation["responses"].as_object().expect("it has responses");
+            let answers = responses.iter().filter_map(|(status, response)| {
+                let content = response["content"].as_object()?;
+                let body = content
+                    .iter()
+                    .find(|(kind, _)| kind.ends_with("json"))
+                    .map_or(&Value::Null, |(_, body)| body);
+                Some((status.clone(), validator(&complete(&body["schema"]))))
+            });
+            (
+                endpoint.path.clone(),
+                (validator(&with_any_unit(complete(endpoint.request()))), answers.collect()),
+            )
+        };
+        GRAMMAR.endpoints.iter().map(shapes).collect()
+    });
 
 /// A schema with the components that it refers to.
 fn complete(schema: &Value) -> Value {
     let mut schema = schema.clone();
-    if let (Some(object), Some(components)) = (schema.as_object_mut(), GRAMMAR.document.get("components")) {
+    if let (Some(object), Some(components)) =
+        (schema.as_object_mut(), GRAMMAR.document.get("components"))
+    {
         object.insert("components".to_owned(), components.clone());
     }
     schema
@@ -64,7 +73,8 @@ fn with_any_unit(mut schema: Value) -> Value {
         Value::Object(members) => {
             for (name, member) in members.iter_mut() {
                 let is_unit = name == "unit" && member.is_object();
-                *member = if is_unit { json!({"type": "string"}) } else { with_any_unit(member.take()) };
+                *member =
+                    if is_unit { json!({"type": "string"}) } else { with_any_unit(member.take()) };
             }
         }
         Value::Array(items) => items.iter_mut().for_each(|item| *item = with_any_unit(item.take())),
@@ -110,16 +120,23 @@ pub fn check(bytes: &[u8]) -> bool {
 fn longest(endpoint: &Endpoint, body: &[u8]) -> Duration {
     let request: Value = serde_json::from_slice(body).unwrap_or_default();
     let length = |name: &str| request[name].as_array().map_or(1, Vec::len).max(1);
-    let repeats = request["repeats"].as_u64().and_then(|repeats| usize::try_from(repeats).ok()).unwrap_or(1);
-    let events = length("events").saturating_mul(length("fitted")).saturating_mul(repeats).min(20_000);
-    let lines = if endpoint.takes_lines() { body.split(|byte| *byte == b'\n').count() } else { length("candidates") };
+    let repeats =
+        request["repeats"].as_u64().and_then(|repeats| usize::try_from(repeats).ok()).unwrap_or(1);
+    let events =
+        length("events").saturating_mul(length("fitted")).saturating_mul(repeats).min(20_000);
+    let lines = if endpoint.takes_lines() {
+        body.split(|byte| *byte == b'\n').count()
+    } else {
+        length("candidates")
+    };
     let times = |count: usize| u32::try_from(count).unwrap_or(u32::MAX);
     LONGEST * times(lines) + LONGEST_OF_EVENT * times(events)
 }
 
 fn post(endpoint: &Endpoint, input: &Input) -> (StatusCode, Bytes) {
     let request = Request::post(&endpoint.path).header("content-type", &endpoint.media_type);
-    let accept = if endpoint.forms().contains(&input.accept.as_str()) { &input.accept } else { "*/*" };
+    let accept =
+        if endpoint.forms().contains(&input.accept.as_str()) { &input.accept } else { "*/*" };
     let request = request.header("accept", accept);
     send(request.body(Body::from(input.body.clone())).expect("a request"))
 }
@@ -136,7 +153,8 @@ fn same(answer: &[u8]) -> String {
 fn answer_of_lines(input: &Input, status: StatusCode, answer: &[u8]) {
     assert_eq!(status, StatusCode::OK);
     let text = std::str::from_utf8(answer).expect("text");
-    let lines: Vec<Value> = text.lines().map(|line| serde_json::from_str(line).expect("lines of JSON")).collect();
+    let lines: Vec<Value> =
+        text.lines().map(|line| serde_json::from_str(line).expect("lines of JSON")).collect();
     let (end, answers) = lines.split_last().expect("a last line");
     let counts = &end["end"];
     assert_eq!(counts["lines"], answers.len(), "lines are lost: {end}");
@@ -147,7 +165,10 @@ fn answer_of_lines(input: &Input, status: StatusCode, answer: &[u8]) {
     let asked = String::from_utf8_lossy(&input.body);
     for answer in answers {
         let number = answer["line"].as_u64().expect("its number");
-        let line = asked.split('\n').nth(usize::try_from(number).expect("few lines") - 1).expect("that line");
+        let line = asked
+            .split('\n')
+            .nth(usize::try_from(number).expect("few lines") - 1)
+            .expect("that line");
         assert!(answer["problem"]["status"] != 500, "{answer}");
         if let Ok(request) = serde_json::from_str(line) {
             pointers_lead_somewhere(&answer["problem"], &request);
@@ -160,9 +181,15 @@ fn single_answer(endpoint: &Endpoint, input: &Input, status: StatusCode, answer:
     let code = status.as_str();
     assert!(!status.is_server_error(), "{code}: {}", String::from_utf8_lossy(answer));
     let kind = format!("{}XX", &code[..1]);
-    let shape = shapes.iter().find(|(status, _)| status == code).or_else(|| shapes.iter().find(|(status, _)| *status == kind));
+    let shape = shapes
+        .iter()
+        .find(|(status, _)| status == code)
+        .or_else(|| shapes.iter().find(|(status, _)| *status == kind));
     let (_, shape) = shape.unwrap_or_else(|| panic!("{code} is not documented"));
-    if status == StatusCode::OK && !input.accept.ends_with("json") && endpoint.forms().contains(&input.accept.as_str()) {
+    if status == StatusCode::OK
+        && !input.accept.ends_with("json")
+        && endpoint.forms().contains(&input.accept.as_str())
+    {
         return shown(answer);
     }
     let answer: Value = serde_json::from_slice(answer).expect("JSON");
@@ -224,7 +251,10 @@ fn decoded(text: &str) -> String {
     let mut bytes = Vec::new();
     let mut rest = text.as_bytes();
     while let [first, after @ ..] = rest {
-        let code = after.get(..2).filter(|_| *first == b'%').and_then(|digits| std::str::from_utf8(digits).ok());
+        let code = after
+            .get(..2)
+            .filter(|_| *first == b'%')
+            .and_then(|digits| std::str::from_utf8(digits).ok());
         let code = code.and_then(|digits| u8::from_str_radix(digits, 16).ok());
         bytes.push(code.unwrap_or(*first));
         rest = if code.is_some() { &after[2..] } else { after };

@@ -57,7 +57,8 @@ const DEEPEST: usize = 12;
 
 impl Grammar {
     fn new() -> Self {
-        let document: Value = serde_json::from_str(openapi_json()).expect("the description is JSON");
+        let document: Value =
+            serde_json::from_str(openapi_json()).expect("the description is JSON");
         let paths = document["paths"].as_object().expect("it has paths");
         let endpoints: Vec<Endpoint> = paths
             .iter()
@@ -118,7 +119,8 @@ impl Grammar {
             Some("array") => {
                 let least = schema["minItems"].as_u64().unwrap_or(0);
                 let most = schema["maxItems"].as_u64().unwrap_or(least + 3).min(least + 3);
-                let items = (0..rng.u64(least..=most)).map(|_| self.instance(&schema["items"], rng, depth + 1));
+                let items = (0..rng.u64(least..=most))
+                    .map(|_| self.instance(&schema["items"], rng, depth + 1));
                 Node::List(items.collect())
             }
             Some("boolean") => Node::Leaf(rng.bool().to_string()),
@@ -132,7 +134,8 @@ impl Grammar {
     }
 
     fn object(&self, schema: &Value, rng: &mut Rng, depth: usize) -> Node {
-        let required: Vec<&str> = schema["required"].as_array().into_iter().flatten().filter_map(Value::as_str).collect();
+        let required: Vec<&str> =
+            schema["required"].as_array().into_iter().flatten().filter_map(Value::as_str).collect();
         let mut members = Vec::new();
         for (name, member) in schema["properties"].as_object().into_iter().flatten() {
             let is_required = required.contains(&name.as_str());
@@ -145,7 +148,10 @@ impl Grammar {
 
     /// A value for a member: one that a seed gives to it, or one that is made up.
     fn value(&self, name: &str, schema: &Value, rng: &mut Rng, depth: usize) -> Node {
-        let donors = self.donors.get(name).filter(|_| !matches!(name, "value" | "unit") && rng.u8(0..4) == 0);
+        let donors = self
+            .donors
+            .get(name)
+            .filter(|_| !matches!(name, "value" | "unit") && rng.u8(0..4) == 0);
         let donor = donors.and_then(|donors| rng.choice(donors)).cloned();
         donor.unwrap_or_else(|| self.instance(schema, rng, depth))
     }
@@ -157,9 +163,15 @@ impl Grammar {
             .values()
             .filter(|schema| schema["additionalProperties"] == false)
             .filter_map(|schema| schema["properties"].as_object())
-            .filter(|known| names.len() < known.len() && names.iter().all(|name| known.contains_key(*name)))
+            .filter(|known| {
+                names.len() < known.len() && names.iter().all(|name| known.contains_key(*name))
+            })
             .collect();
-        let open: Vec<_> = rng.choice(fitting)?.iter().filter(|(name, _)| !names.contains(&name.as_str())).collect();
+        let open: Vec<_> = rng
+            .choice(fitting)?
+            .iter()
+            .filter(|(name, _)| !names.contains(&name.as_str()))
+            .collect();
         let (name, schema) = rng.choice(open)?;
         Some((name.clone(), self.value(name, schema, rng, 4)))
     }
@@ -172,9 +184,30 @@ fn choice<'a>(list: Option<&'a Value>, rng: &mut Rng) -> Option<&'a Value> {
 /// A number of any size, mostly of the size that quantities have.
 pub fn number(rng: &mut Rng) -> String {
     const EDGES: [&str; 24] = [
-        "0", "-0.0", "1", "-1", "2", "0.5", "0.1", "1.0000000000000002", "0.9999999999999999", "1e-9", "1e-12", "5e-324",
-        "1e-300", "2.2250738585072014e-308", "1e9", "1e12", "1e15", "9007199254740993", "4294967295", "4294967296",
-        "18446744073709551616", "1e300", "1.7976931348623157e308", "1e309",
+        "0",
+        "-0.0",
+        "1",
+        "-1",
+        "2",
+        "0.5",
+        "0.1",
+        "1.0000000000000002",
+        "0.9999999999999999",
+        "1e-9",
+        "1e-12",
+        "5e-324",
+        "1e-300",
+        "2.2250738585072014e-308",
+        "1e9",
+        "1e12",
+        "1e15",
+        "9007199254740993",
+        "4294967295",
+        "4294967296",
+        "18446744073709551616",
+        "1e300",
+        "1.7976931348623157e308",
+        "1e309",
     ];
     match rng.u8(0..8) {
         0 => EDGES[rng.usize(0..EDGES.len())].to_owned(),
@@ -188,7 +221,9 @@ pub fn number(rng: &mut Rng) -> String {
 fn collect_words(part: &Value, words: &mut Vec<String>) {
     for (name, member) in part.as_object().into_iter().flatten() {
         match member.as_array() {
-            Some(values) if name == "enum" => words.extend(values.iter().filter_map(Value::as_str).map(str::to_owned)),
+            Some(values) if name == "enum" => {
+                words.extend(values.iter().filter_map(Value::as_str).map(str::to_owned))
+            }
             _ => collect_words(member, words),
         }
     }
@@ -196,10 +231,18 @@ fn collect_words(part: &Value, words: &mut Vec<String>) {
 
 /// Asks the service itself for its catalogs.
 fn collect_identifiers(paths: &serde_json::Map<String, Value>, words: &mut Vec<String>) {
-    for path in paths.keys().filter(|path| path.starts_with("/v1/") && paths.contains_key(&format!("{path}/{{id}}"))) {
+    for path in paths
+        .keys()
+        .filter(|path| path.starts_with("/v1/") && paths.contains_key(&format!("{path}/{{id}}")))
+    {
         let catalog: Value = serde_json::from_slice(&check::get(path)).unwrap_or_default();
         for item in catalog["items"].as_array().into_iter().flatten() {
-            words.extend(["id", "ucum", "common_code"].iter().filter_map(|name| item[name].as_str()).map(str::to_owned));
+            words.extend(
+                ["id", "ucum", "common_code"]
+                    .iter()
+                    .filter_map(|name| item[name].as_str())
+                    .map(str::to_owned),
+            );
         }
     }
 }

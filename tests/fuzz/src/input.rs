@@ -14,7 +14,11 @@ impl Input {
     pub fn read(bytes: &[u8]) -> Option<Self> {
         let end = bytes.iter().position(|byte| *byte == b'\n')?;
         let (path, accept) = std::str::from_utf8(&bytes[..end]).ok()?.split_once(' ')?;
-        Some(Self { path: path.to_owned(), accept: accept.to_owned(), body: bytes[end + 1..].to_owned() })
+        Some(Self {
+            path: path.to_owned(),
+            accept: accept.to_owned(),
+            body: bytes[end + 1..].to_owned(),
+        })
     }
 
     /// The body as JSON, or each line of it; none if it is not.

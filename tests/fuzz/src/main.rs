@@ -25,7 +25,8 @@ fuzz_target!(
 );
 
 fuzz_mutator!(|data: &mut [u8], size: usize, max_size: usize, seed: u32| {
-    let mutated = if seed % BLIND == 0 { None } else { mutate::mutated(&data[..size], max_size, seed) };
+    let mutated =
+        if seed % BLIND == 0 { None } else { mutate::mutated(&data[..size], max_size, seed) };
     match mutated {
         Some(bytes) => {
             data[..bytes.len()].copy_from_slice(&bytes);
@@ -43,7 +44,8 @@ fn write_seeds() {
         let Some(endpoint) = GRAMMAR.endpoint(path) else { continue };
         for (form, accept) in endpoint.forms().into_iter().enumerate() {
             let bytes = input::bytes(path, accept, std::slice::from_ref(seed));
-            fs::write(folder.join(format!("seed-{index}-{form}")), bytes).expect("a folder for seeds");
+            fs::write(folder.join(format!("seed-{index}-{form}")), bytes)
+                .expect("a folder for seeds");
         }
     }
 }

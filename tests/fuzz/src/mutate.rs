@@ -89,7 +89,13 @@ fn leaf(text: &str, grammar: &Grammar, rng: &mut Rng) -> String {
             _ => format!("{}", value * 10_f64.powf(rng.f64() * 2.0 - 1.0)),
         },
         Err(_) if text == "true" || text == "false" => (text != "true").to_string(),
-        Err(_) => if rng.u8(0..16) == 0 { number(rng) } else { word(rng) },
+        Err(_) => {
+            if rng.u8(0..16) == 0 {
+                number(rng)
+            } else {
+                word(rng)
+            }
+        }
     }
 }
 

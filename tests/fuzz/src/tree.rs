@@ -45,13 +45,18 @@ impl Node {
             '{' => {
                 let Members(members) = serde_json::from_str(text).ok()?;
                 let members = members.into_iter();
-                members.map(|(name, raw)| Some((name, Self::read(raw.get())?))).collect::<Option<_>>().map(Self::Object)
+                members
+                    .map(|(name, raw)| Some((name, Self::read(raw.get())?)))
+                    .collect::<Option<_>>()
+                    .map(Self::Object)
             }
             '[' => {
                 let items: Vec<Box<RawValue>> = serde_json::from_str(text).ok()?;
                 items.iter().map(|raw| Self::read(raw.get())).collect::<Option<_>>().map(Self::List)
             }
-            _ => serde_json::from_str::<&RawValue>(text).ok().map(|raw| Self::Leaf(raw.get().to_owned())),
+            _ => serde_json::from_str::<&RawValue>(text)
+                .ok()
+                .map(|raw| Self::Leaf(raw.get().to_owned())),
         }
     }
 
@@ -94,7 +99,8 @@ impl Node {
             Self::Leaf(_) => false,
             Self::List(items) => items.iter().any(Self::repeats_a_member),
             Self::Object(members) => members.iter().enumerate().any(|(index, (name, member))| {
-                members[..index].iter().any(|(earlier, _)| earlier == name) || member.repeats_a_member()
+                members[..index].iter().any(|(earlier, _)| earlier == name)
+                    || member.repeats_a_member()
             }),
         }
     }
@@ -109,7 +115,11 @@ impl Node {
     }
 
     /// Its part number `index`, in reading order, with the name of the member it belongs to.
-    pub fn part<'a>(&'a mut self, index: &mut usize, name: &'a str) -> Option<(&'a str, &'a mut Self)> {
+    pub fn part<'a>(
+        &'a mut self,
+        index: &mut usize,
+        name: &'a str,
+    ) -> Option<(&'a str, &'a mut Self)> {
         if *index == 0 {
             return Some((name, self));
         }
@@ -117,7 +127,9 @@ impl Node {
         match self {
             Self::Leaf(_) => None,
             Self::List(items) => items.iter_mut().find_map(|item| item.part(index, name)),
-            Self::Object(members) => members.iter_mut().find_map(|(name, member)| member.part(index, name)),
+            Self::Object(members) => {
+                members.iter_mut().find_map(|(name, member)| member.part(index, name))
+            }
         }
     }
 
