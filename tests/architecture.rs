@@ -1,7 +1,8 @@
 //! Who may import whom, and other rules that no compiler checks. They match text: a fence, not a wall.
 
+use std::ffi::OsStr;
 use std::fs;
-use std::path::{Path, PathBuf};
+use std::path::{Component, Path, PathBuf};
 
 /// A line of code with its place, as a fault is reported.
 #[derive(Clone)]
@@ -201,8 +202,10 @@ fn is_declared(parent: &[Line], name: &str) -> bool {
 #[test]
 fn every_test_file_is_compiled() {
     for file in files("tests") {
-        // The benchmarks are programs of their own.
-        if file.ends_with("main.rs") || file.components().any(|part| part.as_os_str() == "bench") {
+        // The benchmarks and the fuzzer are programs of their own.
+        let is_apart =
+            |part: Component<'_>| ["bench", "fuzz"].map(OsStr::new).contains(&part.as_os_str());
+        if file.ends_with("main.rs") || file.components().any(is_apart) {
             continue;
         }
         let (parent, name) = declaration(&file);

@@ -1,4 +1,6 @@
 //! Counts in requests: whole numbers, also when written as `2.0`. To JSON, and to the schema, that is the same number.
+//!
+//! A count beyond `u32` reads as the largest one: both lie beyond every limit, and the limit is what is to be told.
 
 use std::fmt;
 
@@ -8,7 +10,7 @@ use serde::de::{Error, Unexpected, Visitor};
 /// Reads a count.
 ///
 /// # Errors
-/// Anything but a whole number between 0 and the largest `u32`.
+/// Anything but a whole number from 0 on.
 pub fn required<'de, D: Deserializer<'de>>(deserializer: D) -> Result<u32, D::Error> {
     deserializer.deserialize_any(CountVisitor)
 }
@@ -16,7 +18,7 @@ pub fn required<'de, D: Deserializer<'de>>(deserializer: D) -> Result<u32, D::Er
 /// Reads a count that may be left out.
 ///
 /// # Errors
-/// Anything but a whole number between 0 and the largest `u32`. `null` reads as absence; the schema refuses it.
+/// Anything but a whole number from 0 on. `null` reads as absence; the schema refuses it.
 pub fn optional<'de, D: Deserializer<'de>>(deserializer: D) -> Result<Option<u32>, D::Error> {
     deserializer.deserialize_option(OptionalVisitor)
 }
@@ -31,7 +33,7 @@ impl Visitor<'_> for CountVisitor {
     }
 
     fn visit_u64<E: Error>(self, number: u64) -> Result<u32, E> {
-        u32::try_from(number).map_err(|_| E::invalid_value(Unexpected::Unsigned(number), &self))
+        Ok(u32::try_from(number).unwrap_or(u32::MAX))
     }
 
     fn visit_i64<E: Error>(self, number: i64) -> Result<u32, E> {
@@ -39,14 +41,13 @@ impl Visitor<'_> for CountVisitor {
     }
 
     fn visit_f64<E: Error>(self, number: f64) -> Result<u32, E> {
-        let is_count = (0.0..=f64::from(u32::MAX)).contains(&number) && number.fract() == 0.0;
-        if !is_count {
+        if number < 0.0 || number.fract() != 0.0 {
             return Err(E::invalid_value(Unexpected::Float(number), &self));
         }
         #[expect(
             clippy::cast_possible_truncation,
             clippy::cast_sign_loss,
-            reason = "checked above"
+            reason = "checked above; a larger one becomes the largest"
         )]
         let count = number as u32;
         Ok(count)

@@ -92,7 +92,10 @@ pub(super) struct ProblemPage {
 /// The `type` of every failure's answer is the address of its explanation here.
 #[utoipa::path(
     get, path = "/problems/{kind}", tag = "Service", operation_id = "problem_kind",
-    params(("kind" = String, Path, description = "The last segment of a problem's `type`, such as `invalid_request`.")),
+    params((
+        "kind" = String, Path, example = "invalid_request",
+        description = "The last segment of a problem's `type`, such as `invalid_request`.",
+    )),
     responses((status = OK, description = "What such problems mean.", body = ProblemPage)),
 )]
 pub(super) async fn problem_kind(Path(kind): Path<String>) -> Result<Answer<ProblemPage>, Problem> {

@@ -29,6 +29,7 @@ pub mod request_id;
 pub mod shape;
 pub mod sheet;
 pub mod tagged;
+pub mod text;
 mod trace;
 pub mod v1;
 

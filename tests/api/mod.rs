@@ -5,6 +5,7 @@ mod catalog;
 mod charts;
 mod examples;
 mod frame;
+mod fuzzed;
 mod guard;
 mod measure;
 mod metrics;

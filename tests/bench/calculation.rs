@@ -84,6 +84,7 @@ fn stops(criterion: &mut Criterion) {
             start_temperature: room,
             interval: None,
             stop_count: None,
+            finds_limit: true,
         };
         criterion.bench_function(&format!("stop_energy/{name}_two_discs"), |bench| {
             bench.iter(|| stop_energy::evaluate(black_box(&input)));

@@ -159,6 +159,7 @@ fn single_stop(brake: Brake, demand: Demand) -> stop_energy::Outcome {
         start_temperature: kelvins(AMBIENT),
         interval: None,
         stop_count: None,
+        finds_limit: true,
     })
     .unwrap()
 }
@@ -263,6 +264,7 @@ fn repeats_converge_to_the_steady_values() {
         start_temperature: kelvins(AMBIENT),
         interval: Some(Time::from_si(60.0)),
         stop_count: None,
+        finds_limit: true,
     };
     let steady =
         stop_energy::evaluate(&input).unwrap().friction_cases[0].energies.as_ref().unwrap().fitted

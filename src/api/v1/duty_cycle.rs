@@ -37,6 +37,7 @@ use crate::data::procedures;
 pub struct DutyCycleRequest {
     /// The caller's own reference, echoed in `record.ref` and left out of the digest.
     #[serde(rename = "ref")]
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 1000>")]
     #[schema(nullable = false, max_length = 1000)]
     pub reference: Option<String>,
     /// Units of the answer, `si` if left out.
@@ -51,6 +52,7 @@ pub struct DutyCycleRequest {
     #[schema(min_items = 1, max_items = 1000)]
     pub events: Vec<Event>,
     /// How often the events happen, 1 if left out; events times repeats must not exceed 20000, and times entries of `fitted` 20000.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub repeats: Option<u32>,
     /// Temperature of the air, 20 degC if left out.
@@ -69,6 +71,7 @@ pub struct DutyCycleRequest {
 #[serde(deny_unknown_fields)]
 pub struct CourseRequest {
     /// Points at most, 2 to 2000, spread over the duty; where they are thinned out, the hotter ones are kept.
+    #[serde(deserialize_with = "crate::api::count::required")]
     pub points: u32,
 }
 

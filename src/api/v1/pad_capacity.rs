@@ -19,6 +19,7 @@ use crate::calc::case::pad_capacity::{self, CaseOutcome, Input, Outcome};
 pub struct PadCapacityRequest {
     /// The caller's own reference, echoed in `record.ref` and left out of the digest.
     #[serde(rename = "ref")]
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 1000>")]
     #[schema(nullable = false, max_length = 1000)]
     pub reference: Option<String>,
     /// Units of the answer, `si` if left out.

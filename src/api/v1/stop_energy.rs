@@ -31,6 +31,7 @@ use crate::calc::case::stop_energy::{self, CaseOutcome, Energies, EntryEnergy, I
 pub struct StopEnergyRequest {
     /// The caller's own reference, echoed in `record.ref` and left out of the digest.
     #[serde(rename = "ref")]
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 1000>")]
     #[schema(nullable = false, max_length = 1000)]
     pub reference: Option<String>,
     /// Units of the answer, `si` if left out.
@@ -85,6 +86,7 @@ pub struct StopEnergyRequest {
     pub stop_frequency: Option<StopFrequency>,
     /// How many repeated stops to follow, 1 or more, and times the fitted entries at most 10000; until steady if left
     /// out.
+    #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub stop_count: Option<u32>,
 }
@@ -293,6 +295,7 @@ impl StopEnergyRequest {
             start_temperature,
             interval,
             stop_count,
+            finds_limit: true,
         }))
     }
 

@@ -23,6 +23,8 @@ pub struct Repeating<'a> {
     pub ambient: ThermodynamicTemperature,
     /// How many stops to follow.
     pub stop_count: Option<u32>,
+    /// Whether to go on to the stop that first reaches the lining's continuous limit.
+    pub finds_limit: bool,
     /// How many to follow at most, also in search of a limit.
     pub most_stops: u32,
 }
@@ -79,7 +81,7 @@ pub fn of_repeated_stops(brake: &Brake, repeating: &Repeating<'_>) -> Option<Rep
     // The way to the steady state is monotone: a limit above both ends of it is never reached.
     let is_reached =
         |limit: &f64| steady.is_none_or(|steady| steady.peak.max(first_peak) >= *limit);
-    let limit = limit.filter(is_reached);
+    let limit = limit.filter(|limit| repeating.finds_limit && is_reached(limit));
     let series = interval.series(&disc, start, repeating.stop_count, limit, repeating.most_stops);
     let surface_peak = |start: f64| {
         let start = ThermodynamicTemperature::from_si(start);

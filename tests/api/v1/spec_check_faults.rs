@@ -107,6 +107,18 @@ async fn a_shaft_has_no_distance_and_others_do_not_turn() {
 }
 
 #[tokio::test]
+async fn heating_duties_are_bounded_together_too() {
+    let entry = one_stop()["fitted"][0].clone();
+    let entries = |count: usize| vec![entry.clone(); count];
+    let heating = |fitted: usize, duties: usize| {
+        with(&with(&one_stop(), "/fitted", entries(fitted)), "/duties", vec![repeated(); duties])
+    };
+    assert_faults(SPEC_CHECK, &heating(11, 10), &[("#/duties", "wrong_count")]).await;
+    // One alone may have them all.
+    super::common::answer(SPEC_CHECK, &heating(100, 1)).await;
+}
+
+#[tokio::test]
 async fn the_brakes_that_act_must_be_there() {
     let at = "/duties/0/uses";
     for (uses, below, code) in [

@@ -41,6 +41,7 @@ pub struct Fitted {
     #[schema(nullable = false)]
     pub rolling_radius: Option<Length>,
     /// Name of the control that presses them. Entries with the same name share one operator force.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 100>")]
     #[schema(nullable = false, max_length = 100)]
     pub control: Option<String>,
     /// Part of the operator's force that reaches each of these brakes, above 0 and not above 1 (the default).

@@ -51,6 +51,7 @@ static PLACES: LazyLock<Semaphore> = LazyLock::new(|| Semaphore::new(MOST_AT_ONC
 pub struct SelectionRequest {
     /// The caller's own reference, echoed in `record.ref` and left out of the digest.
     #[serde(rename = "ref")]
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 1000>")]
     #[schema(nullable = false, max_length = 1000)]
     pub reference: Option<String>,
     /// Units of the answer, `si` if left out.
@@ -71,7 +72,8 @@ pub struct SelectionRequest {
 pub struct SelectionApplication {
     /// What is braked.
     pub machine: Machine,
-    /// What the brakes are put through.
+    /// What the brakes are put through. At most 10 repeated stops, descents and procedures, which times their fitted
+    /// entries come to at most 100.
     #[schema(min_items = 1, max_items = 50)]
     pub duties: Vec<Duty>,
     /// Temperature of the air, 20 degC if left out.
@@ -91,6 +93,7 @@ pub struct SelectionApplication {
 pub struct Candidate {
     /// The caller's own reference, echoed; two candidates may have the same.
     #[serde(rename = "ref")]
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 1000>")]
     #[schema(nullable = false, max_length = 1000)]
     pub reference: Option<String>,
     /// Its brakes, each in all its parts.

@@ -31,6 +31,7 @@ pub struct Waiver {
     #[schema(nullable = false)]
     pub fitted_index: Option<u32>,
     /// Why, for the record.
+    #[serde(deserialize_with = "crate::api::text::required::<_, 1000>")]
     #[schema(min_length = 1, max_length = 1000)]
     pub reason: String,
 }

@@ -69,6 +69,7 @@ pub struct StopDuty {
     /// The kind.
     pub kind: StopDutyKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -121,6 +122,7 @@ pub struct RepeatedStopsDuty {
     /// The kind.
     pub kind: RepeatedStopsKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -135,7 +137,8 @@ pub struct RepeatedStopsDuty {
     /// The same as stops per time.
     #[schema(nullable = false)]
     pub stop_frequency: Option<StopFrequency>,
-    /// How many, 1 or more, and times the fitted entries at most 10000; until steady if left out.
+    /// How many, 1 or more, and times the fitted entries at most 10000, in all duties together; until steady if left
+    /// out.
     #[serde(default, deserialize_with = "crate::api::count::optional")]
     #[schema(nullable = false)]
     pub stop_count: Option<u32>,
@@ -182,6 +185,7 @@ pub struct DescentDuty {
     /// The kind.
     pub kind: DescentDutyKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -212,6 +216,7 @@ pub struct HoldDuty {
     /// The kind.
     pub kind: HoldKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -235,6 +240,7 @@ pub struct RuleDuty {
     /// The kind.
     pub kind: RuleKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.
@@ -278,6 +284,7 @@ pub struct ProcedureDuty {
     /// The kind.
     pub kind: ProcedureDutyKind,
     /// The caller's name for it.
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 200>")]
     #[schema(nullable = false, max_length = 200)]
     pub name: Option<String>,
     /// Which brakes act; all if left out.

@@ -35,6 +35,7 @@ use crate::calc::quantity::{Amount, Dimension, Si};
 pub struct SpecCheckRequest {
     /// The caller's own reference, echoed in `record.ref` and left out of the digest.
     #[serde(rename = "ref")]
+    #[serde(default, deserialize_with = "crate::api::text::optional::<_, 1000>")]
     #[schema(nullable = false, max_length = 1000)]
     pub reference: Option<String>,
     /// Units of the answer, `si` if left out.
@@ -45,7 +46,8 @@ pub struct SpecCheckRequest {
     /// Its brakes, each in all its parts.
     #[schema(min_items = 1, max_items = 100)]
     pub fitted: Vec<Fitted>,
-    /// What they are put through.
+    /// What they are put through. At most 10 repeated stops, descents and procedures, which times their fitted entries
+    /// come to at most 100.
     #[schema(min_items = 1, max_items = 50)]
     pub duties: Vec<Duty>,
     /// Temperature of the air, 20 degC if left out.

@@ -172,6 +172,7 @@ pub(super) fn stop(
         start_temperature: trial.start,
         interval: trial.repeating.map(|(interval, _)| interval),
         stop_count: trial.repeating.and_then(|(_, count)| count),
+        finds_limit: false,
     };
     let stopped = stopping::evaluate_pressed(&input.stop, bench.acting.pressed.clone())?;
     let outcome = stop_energy::evaluate_stopped(&input, stopped)?;

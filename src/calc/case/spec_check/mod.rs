@@ -47,8 +47,10 @@ pub const MOST_DUTIES: usize = 50;
 pub const MOST_HEATING_DUTIES: usize = 10;
 /// Duties times entries of fitted brakes at most: each entry is judged in each duty.
 pub const MOST_JUDGED: usize = 500;
-/// Duties that heat times entries of fitted brakes at most.
+/// Entries that act in such duties, all duties together, at most: each is followed on its own.
 pub const MOST_HEATED: usize = 100;
+/// Repeated stops that are followed, times the entries that act in them, all duties together, at most.
+pub const MOST_STOPS: usize = 10_000;
 /// Waivers at most.
 pub const MOST_WAIVERS: usize = 100;
 
@@ -107,11 +109,6 @@ impl Input {
         let holds = entries.saturating_mul(self.duties.len()) <= MOST_JUDGED;
         let detail = "entries of fitted times duties must not exceed 500";
         faults.require(holds, "duties", FaultCode::WrongCount, detail);
-        let heating = self.duties.iter().filter(|duty| duty.task.heats()).count();
-        let holds = entries.saturating_mul(heating) <= MOST_HEATED;
-        let detail =
-            "entries of fitted times repeated stops, descents and procedures must not exceed 100";
-        faults.require(holds, "duties", FaultCode::WrongCount, detail);
         faults
     }
 
@@ -124,6 +121,7 @@ impl Input {
         let heating = self.duties.iter().filter(|duty| duty.task.heats()).count();
         let detail = "must not have more than 10 repeated stops, descents and procedures together";
         faults.require(heating <= MOST_HEATING_DUTIES, "duties", FaultCode::WrongCount, detail);
+        self.amount_faults(&mut faults);
         let holds = self.waivers.len() <= MOST_WAIVERS;
         faults.require(
             holds,
@@ -139,6 +137,31 @@ impl Input {
             faults.part(&format!("duties/{index}"), self.duty_faults(duty).into_result(()));
         }
         faults
+    }
+
+    /// What would take too long: each duty by itself is bounded, and so are all of them.
+    fn amount_faults(&self, faults: &mut Faults) {
+        let acting = |duty: &Duty| duty.uses.as_ref().map_or(self.fitted.len(), Vec::len);
+        let heating = self.duties.iter().filter(|duty| duty.task.heats());
+        let heated: usize = heating.clone().map(acting).sum();
+        let detail = "repeated stops, descents and procedures, each times its fitted entries, must not come to more than 100 together";
+        let is_one = heating.clone().count() <= 1;
+        faults.require(is_one || heated <= MOST_HEATED, "duties", FaultCode::WrongCount, detail);
+        let stops = heating.filter_map(|duty| match duty.task {
+            Task::RepeatedStops { stop_count, .. } => {
+                usize::try_from(stop_count?).ok()?.checked_mul(acting(duty))
+            }
+            Task::Stop { .. }
+            | Task::Descent { .. }
+            | Task::Hold { .. }
+            | Task::Rule { .. }
+            | Task::Procedure { .. } => None,
+        });
+        // One duty with too many is told as such.
+        let stops: usize = stops.filter(|stops| *stops <= MOST_STOPS).sum();
+        let detail =
+            "repeated stops, times their fitted entries, must not be more than 10000 together";
+        faults.require(stops <= MOST_STOPS, "duties", FaultCode::OutOfRange, detail);
     }
 
     fn duty_faults(&self, duty: &Duty) -> Faults {

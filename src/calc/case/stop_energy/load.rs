@@ -113,6 +113,7 @@ impl<'a> Load<'a> {
             resting_speeds: self.speeds(between),
             ambient: self.input.ambient_temperature,
             stop_count: self.input.stop_count,
+            finds_limit: self.input.finds_limit,
             most_stops: self.input.most_stops(),
         };
         (self.braking_time() > 0.0)

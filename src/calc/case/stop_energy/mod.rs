@@ -50,6 +50,8 @@ pub struct Input {
     pub interval: Option<Time>,
     /// How many repeated stops to follow; times the fitted entries at most 10 000.
     pub stop_count: Option<u32>,
+    /// Whether to find the stop that first reaches the lining's continuous limit; it may take thousands.
+    pub finds_limit: bool,
 }
 
 /// The energies, once per friction case.
