@@ -5,6 +5,7 @@ use std::io::{self, Write as _};
 use std::net::SocketAddr;
 use std::time::Duration;
 
+use axum::Router;
 use tokio::net::TcpListener;
 
 use crate::api;
@@ -70,6 +71,11 @@ pub async fn serve(settings: &Settings, log: &Log) -> Result<(), String> {
         tracing::warn!("the drain time is over: requests in progress are cut off");
     }
     Ok(())
+}
+
+/// Serves routes within the bounds that the service sets to connections, as long as the process lives.
+pub async fn serve_routes(listener: TcpListener, routes: Router, patience: Duration) {
+    Host::new(routes, patience, MOST_CONNECTIONS).take_until(listener, future::pending()).await;
 }
 
 fn cannot(what: &str, error: &io::Error) -> String {

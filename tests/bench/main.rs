@@ -6,6 +6,7 @@
 #![allow(missing_docs, reason = "the macros of the bench library make undocumented functions")]
 
 mod calculation;
+mod floor;
 mod parts;
 mod request;
 mod service;

@@ -1,13 +1,9 @@
 //! One request through the router for each endpoint, each beside its floor.
 
-use axum::body::{Body, Bytes};
-use axum::http::header::CONTENT_TYPE;
-use axum::http::{Request, StatusCode};
-use axum::routing::post;
-use axum::{Extension, Router};
-use brakewright::api::extract::{Json, decode};
+use axum::Router;
+use axum::body::Bytes;
+use brakewright::api::extract::decode;
 use brakewright::api::health::Readiness;
-use brakewright::api::layers::{LayerSettings, wrap};
 use brakewright::api::record::input_digest;
 use brakewright::api::router;
 use brakewright::api::v1::actuation_force::ActuationForceRequest;
@@ -17,15 +13,14 @@ use brakewright::api::v1::spec_check::SpecCheckRequest;
 use brakewright::api::v1::stop_energy::StopEnergyRequest;
 use brakewright::api::v1::stopping::StoppingRequest;
 use criterion::Criterion;
-use http_body_util::BodyExt as _;
 use serde::de::DeserializeOwned;
 use serde_json::Value;
 use std::fmt::Debug;
 use std::hint::black_box;
 use tokio::runtime::Runtime;
-use tower::ServiceExt as _;
 use utoipa::ToSchema;
 
+use crate::floor::{floor, send, settings};
 use crate::request;
 
 /// Every endpoint, and the parts of a request that all share.
@@ -42,11 +37,6 @@ pub(crate) fn all(criterion: &mut Criterion) {
     bench.compare::<SpecCheckRequest>(criterion, "spec-check", &request::spec_check());
     bench.compare::<DutyCycleRequest>(criterion, "duty-cycle", &request::duty_cycle());
     parts(criterion);
-}
-
-/// Layers with limits that nothing here meets.
-pub(crate) fn settings() -> LayerSettings {
-    LayerSettings { max_concurrency: 64, ..LayerSettings::default() }
 }
 
 /// The service and what runs it.
@@ -77,28 +67,6 @@ impl Bench {
             });
         }
     }
-}
-
-async fn send(router: &Router, path: &str, body: &Bytes) -> Bytes {
-    let request = Request::post(path).header(CONTENT_TYPE, "application/json");
-    let request = request.body(Body::from(body.clone())).unwrap();
-    let answer = router.clone().oneshot(request).await.unwrap();
-    let (status, body) = (answer.status(), answer.into_body());
-    let body = body.collect().await.unwrap().to_bytes();
-    assert_eq!(status, StatusCode::OK, "{body:?}");
-    body
-}
-
-/// Reads a `T` and answers always the same.
-fn floor<T>(path: &str, answer: Bytes) -> Router
-where
-    T: DeserializeOwned + ToSchema + Debug + Send + 'static,
-{
-    let handler = |Extension(answer): Extension<Bytes>, request: Json<T>| async move {
-        black_box(request.value);
-        ([(CONTENT_TYPE, "application/json")], answer)
-    };
-    wrap(Router::new().route(path, post(handler)).layer(Extension(answer)), &settings())
 }
 
 fn parts(criterion: &mut Criterion) {

@@ -15,7 +15,7 @@ use http_body_util::BodyExt as _;
 use std::hint::black_box;
 use tower::ServiceExt as _;
 
-use crate::{request, service};
+use crate::{floor, request};
 
 const LINES: u32 = 2000;
 const CANDIDATES: u32 = 10_000;
@@ -23,7 +23,7 @@ const CANDIDATES: u32 = 10_000;
 /// A stream, selections, and what one line is made of.
 pub(crate) fn all(criterion: &mut Criterion) {
     let runtime = tokio::runtime::Builder::new_multi_thread().enable_all().build().unwrap();
-    let service = router(&service::settings(), Readiness::default());
+    let service = router(&floor::settings(), Readiness::default());
     let line = request::choice().to_string();
     let mut group = criterion.benchmark_group("many");
     // Each call takes seconds.

@@ -1,7 +1,8 @@
 //! The highest surface temperature over the whole history of a flux.
 //!
 //! The flux never being negative, no point is warmer than the heated face. So after the flux has ended
-//! the face only cools, and the peak lies between the first node and the last.
+//! the face only cools, and the peak lies between the first node and the last. As long as the flux has
+//! never fallen the face only warms, so the peak lies where it falls first, or later.
 
 use super::flux::{PiecewiseLinearFlux, Segment};
 use super::rise::{Course, Slab};
@@ -40,19 +41,35 @@ impl Slab {
         let diffusion_time = self.diffusion_time().si();
         let cuts = (CUTS / flux.changes().len()).clamp(FEWEST_CUTS, MOST_CUTS);
         let mut best = (0.0, 0.0);
-        for segment in flux.segments() {
+        for segment in after_growth(flux) {
             course.advance(segment.from.0);
-            let rise = |time: f64| course.rise(time);
             let places = places(&segment, cuts, diffusion_time).into_iter();
-            let looks: Vec<Look> = places.map(|at| (at, rise(at))).collect();
-            for_summits(&looks, |beside, top| best = higher(best, summit(&rise, beside, top)));
+            let looks: Vec<Look> = places.map(|at| (at, course.rise(at))).collect();
+            for_summits(&looks, |beside, top| {
+                // Told from here on, what happened long before costs little.
+                let mut course = course;
+                course.advance(beside.0.min(top.0));
+                best = higher(best, summit(&|time| course.rise(time), beside, top));
+            });
         }
+        let end = flux.end().si();
+        let best = higher(best, (end, course.rise(end)));
         (Time::from_si(best.0), TemperatureInterval::from_si(best.1))
     }
 }
 
 /// A time and the rise there.
 type Look = (f64, f64);
+
+/// The straight parts from where the flux falls first.
+fn after_growth(flux: &PiecewiseLinearFlux) -> impl Iterator<Item = Segment> + '_ {
+    let mut highest = 0.0;
+    flux.segments().skip_while(move |segment| {
+        let grows = highest <= segment.from.1 && segment.from.1 <= segment.to.1;
+        highest = segment.to.1;
+        grows
+    })
+}
 
 fn higher(one: Look, other: Look) -> Look {
     if other.1 > one.1 { other } else { one }
