@@ -42,7 +42,7 @@ impl Connection {
     pub(crate) fn take(&mut self) {
         self.read.clear();
         while self.missing() > 0 {
-            let mut piece = [0; 32 * 1024];
+            let mut piece = vec![0; 32 * 1024];
             let count = self.stream.read(&mut piece).unwrap();
             assert!(count > 0, "the connection was closed");
             self.read.extend_from_slice(&piece[..count]);

@@ -122,7 +122,7 @@ fn turn(
     let (before, begun) = (core_time(), Instant::now());
     let count = f64::from(drive(connections, request, time));
     let wall = count / begun.elapsed().as_secs_f64();
-    Rates { wall, core: count / (core_time() - before).as_secs_f64() }
+    Rates { wall, core: count / core_time().saturating_sub(before).as_secs_f64() }
 }
 
 fn against_floor<T>(endpoint: &str, body: &Value, goal: f64)
