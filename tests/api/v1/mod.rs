@@ -13,6 +13,7 @@ mod repeated_stops;
 mod selection;
 mod spec_check;
 mod spec_check_faults;
+mod spec_check_heat;
 mod spec_check_limits;
 mod spec_check_properties;
 mod spec_check_requests;
