@@ -63,10 +63,11 @@ impl Splitter {
         while lines.len() < MOST_LINES && bytes < ENOUGH_BYTES {
             let Some(text) = self.next(is_end) else { break };
             self.number += 1;
-            bytes += text.as_ref().map_or(0, String::len);
+            // Empty lines do not fill a slice: without lines there is none only if more bytes are needed.
             if text.as_ref().is_ok_and(|text| text.trim_ascii().is_empty()) {
                 continue;
             }
+            bytes += text.as_ref().map_or(0, String::len);
             lines.push(Line { number: self.number, text });
         }
         (!lines.is_empty()).then_some(lines)
