@@ -313,7 +313,7 @@ proptest! {
 /// Many large blank lines before a request do not swallow it.
 #[test]
 fn blank_lines_of_any_size_lose_no_line_after_them() {
-    let mut splitter = brakewright::api::v1::spec_checks::lines::Splitter::default();
+    let mut splitter = Splitter::default();
     let blank = format!("{}\n", " ".repeat(70_000)).repeat(6);
     splitter.feed(format!("{blank}{{}}\n").as_bytes());
     let lines = splitter.slice(true).unwrap();
